@@ -1,0 +1,15 @@
+//! Plain data that comes out: paths, critical points, limits, verdicts, the echo of the setup.
+//! Everything here is what `--format json` prints; `None` becomes `null` and means "never" or
+//! "does not apply".
+
+mod assessment;
+mod echo;
+mod path;
+
+pub use assessment::{
+    AbsoluteStability, Assessment, ClosedForm, ClosedFormCurve, Comparison, Computed, DeadLoad,
+    Failure, ImperfectColumn, Limit, Measure, Side, Southwell, StraightColumn, StressAtSolid,
+    Verdict,
+};
+pub use echo::{DutyEcho, ImperfectionEcho, SpringEcho, SupportEcho, SupportsEcho};
+pub use path::{Mark, Path, PathPoint};

@@ -1,0 +1,21 @@
+//! Names for `f64` in SI. Inside the program every quantity is SI; text becomes numbers in
+//! `case` and numbers become text in `report`, both by the table in this module.
+
+/// Length, m.
+pub type Metre = f64;
+/// Force, N.
+pub type Newton = f64;
+/// Stress or modulus, Pa.
+pub type Pascal = f64;
+/// Plane angle, rad.
+pub type Radian = f64;
+/// Temperature, °C in the setup (service temperature), K as a difference.
+pub type Celsius = f64;
+/// Translational stiffness, N/m.
+pub type NewtonPerMetre = f64;
+/// Rotational stiffness, N·m/rad.
+pub type NewtonMetrePerRadian = f64;
+/// Moment, N·m.
+pub type NewtonMetre = f64;
+/// Energy, J.
+pub type Joule = f64;
