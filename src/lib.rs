@@ -4,7 +4,10 @@
 //!
 //! Data goes one way: case file → [`setup`] → model → solve → [`result`] → report.
 
+pub mod column;
+pub mod criteria;
 pub mod result;
 pub mod setup;
+pub mod solve;
 pub mod spring;
 pub mod units;

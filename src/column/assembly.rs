@@ -1,0 +1,199 @@
+//! The column as a system to be solved: elements condensed and chained, ends held.
+
+use super::element::{Element, INNER};
+use super::layout::{Column, ColumnState, EndLaws, Hold};
+use crate::solve::{Assembled, SymmetricFactor, System};
+use nalgebra::{Matrix3, SMatrix, SVector, Vector3};
+
+/// Negative eigenvalues of an element's inner matrix in every stable state: its two forces,
+/// multipliers of the geometry.
+const ALWAYS_NEGATIVE: i64 = 2;
+
+impl System<3, INNER> for Column {
+    fn links(&self) -> usize {
+        self.elements.len()
+    }
+
+    fn assemble(&mut self, state: &ColumnState, load: f64, out: &mut Assembled<3>) {
+        out.inner_negatives = -ALWAYS_NEGATIVE * self.elements.len() as i64;
+        for (residual, pattern) in out.residual.iter_mut().zip(&self.pattern) {
+            *residual = pattern * -load;
+        }
+        out.tangent.diagonal.fill(Matrix3::zeros());
+        for (e, element) in self.elements.iter().enumerate() {
+            let (a, b, inner) = (&state.nodes[e], &state.nodes[e + 1], &state.inner[e]);
+            let forms = element.forms(&self.tables, a, b, inner);
+            let factor = SymmetricFactor::new(&forms.inner_matrix());
+            out.inner_negatives += i64::from(factor.negatives);
+            let coupling = forms.inner_to_outer();
+            let mut ahead = coupling;
+            factor.solve_columns(&mut ahead);
+            let mut step = forms.inner_residual();
+            factor.solve(&mut step);
+            let taken = lower_product(&coupling, &ahead);
+            let pulled = coupling.tr_mul(&step);
+            let (fx, fy) = (inner[3], inner[4]);
+            out.residual[e] += Vector3::new(
+                -fx - pulled[0],
+                -fy - pulled[1],
+                forms.moment[0] - pulled[2],
+            );
+            out.residual[e + 1] +=
+                Vector3::new(fx - pulled[3], fy - pulled[4], forms.moment[1] - pulled[5]);
+            let mut right = Matrix3::zeros();
+            for j in 0..3 {
+                for i in j..3 {
+                    out.tangent.diagonal[e][(i, j)] -= taken[(i, j)];
+                    out.tangent.diagonal[e + 1][(i, j)] -= taken[(3 + i, 3 + j)];
+                }
+                for i in 0..3 {
+                    right[(i, j)] = -taken[(3 + j, i)];
+                }
+            }
+            out.tangent.diagonal[e][(2, 2)] += forms.bending[0][0];
+            out.tangent.diagonal[e + 1][(2, 2)] += forms.bending[1][1];
+            right[(2, 2)] += forms.bending[1][0];
+            out.tangent.right[e] = right;
+            self.inner_ahead[e] = ahead;
+            self.inner_step[e] = step;
+        }
+        for block in &mut out.tangent.diagonal {
+            block[(0, 1)] = block[(1, 0)];
+            block[(0, 2)] = block[(2, 0)];
+            block[(1, 2)] = block[(2, 1)];
+        }
+        let last = self.elements.len();
+        hold_end(&self.bottom, 0, state, out);
+        hold_end(&self.top, last, state, out);
+    }
+
+    fn load_pattern(&self) -> &[Vector3<f64>] {
+        &self.pattern
+    }
+
+    fn recover(&self, step: &mut ColumnState, with_residual: bool) {
+        for e in 0..self.elements.len() {
+            let (a, b) = (&step.nodes[e], &step.nodes[e + 1]);
+            let outer = SVector::<f64, 6>::new(a[0], a[1], a[2], b[0], b[1], b[2]);
+            let mut inner = -(self.inner_ahead[e] * outer);
+            if with_residual {
+                inner -= self.inner_step[e];
+            }
+            step.inner[e] = inner;
+        }
+    }
+
+    fn load_scale(&self) -> f64 {
+        self.load_scale
+    }
+}
+
+/// Lower triangle of `aᵀ b`, which is symmetric.
+#[inline(always)]
+fn lower_product(a: &SMatrix<f64, INNER, 6>, b: &SMatrix<f64, INNER, 6>) -> SMatrix<f64, 6, 6> {
+    let mut product = SMatrix::zeros();
+    for j in 0..6 {
+        for i in j..6 {
+            let mut sum = 0.0;
+            for k in 0..INNER {
+                sum += a[(k, i)] * b[(k, j)];
+            }
+            product[(i, j)] = sum;
+        }
+    }
+    product
+}
+
+/// Adds the laws of an end: elastic ones to residual and tangent; held unknowns become identity
+/// rows that keep their value.
+fn hold_end(laws: &EndLaws, node: usize, state: &ColumnState, out: &mut Assembled<3>) {
+    for (k, hold) in laws.0.iter().enumerate() {
+        match *hold {
+            Hold::Free => {}
+            Hold::Elastic { stiffness, rest } => {
+                out.residual[node][k] += stiffness * (state.nodes[node][k] - rest);
+                out.tangent.diagonal[node][(k, k)] += stiffness;
+            }
+            Hold::Held(value) => {
+                out.residual[node][k] = state.nodes[node][k] - value;
+                for j in 0..3 {
+                    out.tangent.diagonal[node][(k, j)] = 0.0;
+                    out.tangent.diagonal[node][(j, k)] = 0.0;
+                    if node == 0 {
+                        out.tangent.right[0][(k, j)] = 0.0;
+                    } else {
+                        out.tangent.right[node - 1][(j, k)] = 0.0;
+                    }
+                }
+                out.tangent.diagonal[node][(k, k)] = 1.0;
+            }
+        }
+    }
+}
+
+impl Column {
+    /// Force and moment that the ends of the column get from outside at `state`, in the column's
+    /// units: bottom and top (F_x, F_y, M), load included. They balance.
+    pub fn end_actions(&self, state: &ColumnState) -> [Vector3<f64>; 2] {
+        let moment = |e: usize, end: usize| {
+            let element: &Element = &self.elements[e];
+            let forms = element.forms(
+                &self.tables,
+                &state.nodes[e],
+                &state.nodes[e + 1],
+                &state.inner[e],
+            );
+            forms.moment[end]
+        };
+        let last = self.elements.len() - 1;
+        let (first_force, last_force) = (&state.inner[0], &state.inner[last]);
+        [
+            Vector3::new(-first_force[3], -first_force[4], moment(0, 0)),
+            Vector3::new(last_force[3], last_force[4], moment(last, 1)),
+        ]
+    }
+
+    /// The uncondensed tangent at a state as a dense matrix, order node 0 (x, y, θ), element 0
+    /// (c_1, c_2, c_3, F_x, F_y), node 1, …: 8 rows an element and 3 more. Held rows are identity.
+    /// For checks against general solvers, and to hand the matrix out.
+    pub fn uncondensed(&self, state: &ColumnState) -> nalgebra::DMatrix<f64> {
+        let n = self.elements.len();
+        let mut matrix = nalgebra::DMatrix::zeros(8 * n + 3, 8 * n + 3);
+        for (e, element) in self.elements.iter().enumerate() {
+            let (a, b, inner) = (&state.nodes[e], &state.nodes[e + 1], &state.inner[e]);
+            let forms = element.forms(&self.tables, a, b, inner);
+            let (matrix_ii, matrix_io) = (forms.inner_matrix(), forms.inner_to_outer());
+            let base = 8 * e;
+            let outer = [base, base + 1, base + 2, base + 8, base + 9, base + 10];
+            for i in 0..INNER {
+                for j in 0..INNER {
+                    matrix[(base + 3 + i, base + 3 + j)] += matrix_ii[(i.max(j), i.min(j))];
+                }
+                for (j, column) in outer.iter().enumerate() {
+                    matrix[(base + 3 + i, *column)] += matrix_io[(i, j)];
+                    matrix[(*column, base + 3 + i)] += matrix_io[(i, j)];
+                }
+            }
+            let ends = [base + 2, base + 10];
+            for i in 0..2 {
+                for j in 0..2 {
+                    matrix[(ends[i], ends[j])] += forms.bending[i.max(j)][i.min(j)];
+                }
+            }
+        }
+        for (first, laws) in [(0, &self.bottom), (8 * n, &self.top)] {
+            for (k, hold) in laws.0.iter().enumerate() {
+                match *hold {
+                    Hold::Free => {}
+                    Hold::Elastic { stiffness, .. } => matrix[(first + k, first + k)] += stiffness,
+                    Hold::Held(_) => {
+                        matrix.row_mut(first + k).fill(0.0);
+                        matrix.column_mut(first + k).fill(0.0);
+                        matrix[(first + k, first + k)] = 1.0;
+                    }
+                }
+            }
+        }
+        matrix
+    }
+}

@@ -1,0 +1,17 @@
+//! The spring as an equivalent column: a planar beam that shortens, shears and bends by any
+//! amount, in its supports.
+
+mod assembly;
+mod basis;
+mod element;
+mod layout;
+mod profile;
+mod straight;
+mod support;
+
+pub use basis::GAUSS_POINTS;
+pub use element::{Element, ElementForms, Lever, PointLaw};
+pub use layout::{Column, ColumnState, EndLaws, Hold, NaturalShape, NodeLoad, Scale};
+pub use profile::{Peak, Station};
+pub use straight::{Buckling, StraightScan};
+pub use support::{Deviations, Idealisation};

@@ -1,0 +1,158 @@
+//! How supports and imperfections of a setup act on the column.
+
+use super::Peak;
+use super::element::Lever;
+use super::layout::{Column, ColumnState, EndLaws, Hold, NaturalShape};
+use crate::setup::{BowShape, Imperfections, Restraint, Setup, Support, TopPosition};
+use std::f64::consts::PI;
+
+/// What of the spring is taken as deformable.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Idealisation {
+    /// The whole free length, as the closed form does. Dead coils work like active ones.
+    WholeLength,
+    /// The active part between two rigid dead pieces of equal height.
+    AsBuilt,
+}
+
+/// The imperfections to build in.
+#[derive(Clone, Copy, Debug)]
+pub struct Deviations<'a> {
+    /// Their sizes.
+    pub sizes: &'a Imperfections,
+    /// Sign of the parallelism deviation, +1 or −1.
+    pub parallelism_sign: f64,
+    /// First mode on the same mesh, with its largest sideways motion of size one: needed for a
+    /// bow of that shape.
+    pub mode: Option<&'a ColumnState>,
+}
+
+impl Column {
+    /// The column of a setup, perfect if no deviations are given: then seats are without tilt and
+    /// offset too.
+    pub fn of_setup(
+        setup: &Setup,
+        idealisation: Idealisation,
+        elements: usize,
+        deviations: Option<&Deviations<'_>>,
+    ) -> Self {
+        let spring = &setup.spring;
+        let (length, dead) = match idealisation {
+            Idealisation::WholeLength => (spring.free_length, 0.0),
+            Idealisation::AsBuilt => (spring.deformable_length(), spring.dead_height() / 2.0),
+        };
+        let section = spring.section(length);
+        let bow = deviations
+            .filter(|d| d.sizes.bow_shape == BowShape::HalfSine)
+            .map_or(0.0, |d| d.sizes.bow / length);
+        let shape = NaturalShape {
+            angle: &|s| bow * PI * (PI * s).cos(),
+            curvature: &|s| -bow * PI * PI * (PI * s).sin(),
+        };
+        let across = deviations.map_or(0.0, |d| d.sizes.eccentricity);
+        let lever = |arm: f64, across: f64| Lever {
+            along: (dead + arm) / length,
+            across: across / length,
+        };
+        let mut column = Column::new(length, elements, &|_| section, &shape).with_levers(
+            lever(setup.bottom.arm, -across),
+            lever(setup.top.arm, across),
+        );
+        let (lean, wedge, landed) = deviations.map_or((0.0, 0.0, 0.0), |d| {
+            let landed = match d.sizes.top_position {
+                TopPosition::Piloted => 0.0,
+                TopPosition::Landed => d.sizes.squareness,
+            };
+            (
+                d.sizes.squareness / spring.free_length,
+                d.parallelism_sign * d.sizes.parallelism / spring.outer_diameter(),
+                landed,
+            )
+        });
+        let real = f64::from(deviations.is_some());
+        let scale = column.scale;
+        let laws = |support: &Support, axial: Hold, angle: f64, aside: f64| {
+            let hold = |restraint: Restraint, unit: f64, rest: f64| match restraint {
+                Restraint::Free => Hold::Free,
+                Restraint::Held => Hold::Held(rest),
+                Restraint::Elastic(stiffness) => Hold::Elastic {
+                    stiffness: stiffness / unit,
+                    rest,
+                },
+            };
+            EndLaws([
+                axial,
+                hold(
+                    support.sideways,
+                    scale.stiffness(),
+                    (real * support.offset + aside) / scale.length,
+                ),
+                hold(
+                    support.rotation,
+                    scale.moment(),
+                    real * support.tilt + angle,
+                ),
+            ])
+        };
+        let bottom = laws(&setup.bottom, Hold::Held(0.0), lean, 0.0);
+        let top = laws(&setup.top, Hold::Free, lean + wedge, landed);
+        column = column.held(bottom, top);
+        if let Some(d) = deviations
+            && d.sizes.bow_shape == BowShape::FirstMode
+            && let Some(mode) = d.mode
+        {
+            column.add_bow(mode, d.sizes.bow / length);
+        }
+        column
+    }
+
+    /// Adds a stress-free bow of the given height (share of the length) in the shape that the
+    /// rotations of `mode` give: its axis without shear, from chord to crown.
+    fn add_bow(&mut self, mode: &ColumnState, height: f64) {
+        // Sideways course of the rotations, node by node: ∫θ dS by the elements' own quadrature.
+        let mut course = vec![0.0];
+        for (e, element) in self.elements.iter().enumerate() {
+            let rotations =
+                super::Element::rotations(&mode.nodes[e], &mode.nodes[e + 1], &mode.inner[e]);
+            let step: f64 = self
+                .tables
+                .values
+                .iter()
+                .zip(super::basis::GAUSS_WEIGHT)
+                .map(|(values, weight)| {
+                    weight
+                        * 0.5
+                        * element.length
+                        * values
+                            .iter()
+                            .zip(rotations)
+                            .map(|(n, q)| n * q)
+                            .sum::<f64>()
+                })
+                .sum();
+            course.push(course[e] + step);
+        }
+        let last = self.elements() as f64;
+        let end = course[self.elements()];
+        // From the chord where both ends are held sideways, from the bottom's axis elsewhere.
+        let between =
+            matches!(self.top.0[1], Hold::Held(_)) && matches!(self.bottom.0[1], Hold::Held(_));
+        let chord = if between { end / last } else { 0.0 };
+        let heights = |sign: f64| {
+            Peak::of(
+                course
+                    .iter()
+                    .zip(&mode.nodes)
+                    .enumerate()
+                    .map(|(i, (y, node))| {
+                        let height = sign * (y - chord * i as f64);
+                        (i as f64 / last, height, sign * (node[2] - chord * last))
+                    }),
+            )
+            .value
+        };
+        let (left, right) = (heights(1.0), heights(-1.0));
+        let crown = if left >= right { left } else { -right };
+        self.add_natural_field(mode, height / crown);
+    }
+}

@@ -1,0 +1,22 @@
+//! Solving systems that come in a chain of blocks: factorisation with pivot count, bordered
+//! solve, Newton, arc length, events, branches. What the blocks stand for is not known here.
+
+mod bordered;
+mod branch;
+mod event;
+mod newton;
+mod path;
+mod pivots;
+mod system;
+mod tridiagonal;
+mod unknowns;
+
+pub use bordered::Bordered;
+pub use branch::{SingularPoint, null_direction, switch_at};
+pub use event::{Located, locate};
+pub use newton::{Newton, NotConverged};
+pub use path::{Outcome, PathPoint, PathSettings, Walk, follow, start};
+pub use pivots::SymmetricFactor;
+pub use system::{Assembled, System};
+pub use tridiagonal::{BlockTridiagonal, Factorisation};
+pub use unknowns::Unknowns;

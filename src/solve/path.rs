@@ -1,0 +1,214 @@
+//! Following a path of solutions by pseudo-arc-length through limit points.
+//!
+//! From a point (u, λ) with unit tangent (t, t_λ) the next one is found on the plane at distance h
+//! along the tangent: `t·(v − u)/n + t_λ (μ − λ)/λ_ref² = h`, with the norm
+//! `|(t, t_λ)|² = Σ|t_node|²/n + (t_λ/λ_ref)²` over the n nodes. The step adapts to the iterations
+//! taken and to the angle between successive tangents, and is halved where Newton fails.
+//!
+//! Source: Keller, in Applications of Bifurcation Theory (1977); Seydel, Practical Bifurcation and
+//! Stability Analysis (both from memory).
+
+use super::{Newton, NotConverged, System, Unknowns, newton::Constraint, unknowns::dot};
+use nalgebra::SVector;
+
+/// A point of a path with everything needed to go on from it.
+#[derive(Clone, Debug)]
+pub struct PathPoint<const B: usize, const I: usize> {
+    /// Unknowns.
+    pub state: Unknowns<B, I>,
+    /// Load λ.
+    pub load: f64,
+    /// Unit tangent, part of the unknowns.
+    pub direction: Unknowns<B, I>,
+    /// Unit tangent, part of the load.
+    pub load_direction: f64,
+    /// Negative eigenvalues of the tangent matrix.
+    pub negatives: u32,
+    /// Distance along this point's tangent at which the next point lies; 0 at the last.
+    pub distance: f64,
+}
+
+/// How to follow.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct PathSettings {
+    /// First step.
+    pub first_step: f64,
+    /// Largest step.
+    pub largest_step: f64,
+    /// Smallest step before giving up.
+    pub smallest_step: f64,
+    /// Largest angle between successive tangents, rad.
+    pub largest_turn: f64,
+    /// Points before giving up.
+    pub most_points: usize,
+}
+
+impl Default for PathSettings {
+    fn default() -> Self {
+        PathSettings {
+            first_step: 0.01,
+            largest_step: 0.03,
+            smallest_step: 1e-12,
+            largest_turn: 0.15,
+            most_points: 1500,
+        }
+    }
+}
+
+/// How following ended.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Outcome {
+    /// The stopping rule was met at the last point.
+    Stopped,
+    /// As many points as allowed, without meeting the stopping rule.
+    TooLong,
+    /// Newton failed down to the smallest step; the last point is good.
+    Lost(NotConverged),
+}
+
+/// What was done on the way: a silent slow-down shows here.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Walk {
+    /// Steps taken.
+    pub steps: usize,
+    /// Steps refused and halved.
+    pub refused: usize,
+    /// Newton iterations altogether.
+    pub iterations: usize,
+}
+
+/// Follows the path from the last of `points` (with its tangent) and appends to it, until `stop`
+/// says so or nothing more can be found.
+pub fn follow<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    points: &mut Vec<PathPoint<B, I>>,
+    settings: &PathSettings,
+    mut stop: impl FnMut(&[PathPoint<B, I>]) -> bool,
+) -> (Outcome, Walk) {
+    let mut walk = Walk::default();
+    let mut step = settings.first_step;
+    let mut trouble = NotConverged {
+        iterations: 0,
+        last_step: 0.0,
+    };
+    loop {
+        if stop(points) {
+            return (Outcome::Stopped, walk);
+        }
+        if points.len() >= settings.most_points {
+            return (Outcome::TooLong, walk);
+        }
+        let Some(base) = points.last_mut() else {
+            return (Outcome::Lost(trouble), walk);
+        };
+        let next = match at_distance(system, newton, base, step) {
+            Ok(next) => next,
+            Err(failed) => {
+                trouble = failed;
+                walk.iterations += failed.iterations;
+                walk.refused += 1;
+                step *= 0.5;
+                if step < settings.smallest_step {
+                    return (Outcome::Lost(trouble), walk);
+                }
+                continue;
+            }
+        };
+        walk.iterations += newton.iterations;
+        let turn = inner_product(system, base, &next).clamp(-1.0, 1.0).acos();
+        if turn > settings.largest_turn && step > 4.0 * settings.smallest_step {
+            walk.refused += 1;
+            step *= 0.5;
+            continue;
+        }
+        base.distance = step;
+        walk.steps += 1;
+        let by_iterations = 4.0 / newton.iterations.max(1) as f64;
+        let by_turn = 0.6 * settings.largest_turn / turn.max(1e-12);
+        step = (step * by_iterations.min(by_turn).clamp(0.5, 1.6)).min(settings.largest_step);
+        points.push(next);
+    }
+}
+
+/// The point on the plane at `distance` along the tangent of `base`, with its own tangent.
+///
+/// # Errors
+/// Where Newton does not converge.
+pub(super) fn at_distance<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    base: &PathPoint<B, I>,
+    distance: f64,
+) -> Result<PathPoint<B, I>, NotConverged> {
+    let mut state = base.state.clone();
+    state.add(distance, &base.direction);
+    let mut load = base.load + distance * base.load_direction;
+    let weight = 1.0 / base.state.nodes.len() as f64;
+    let row: Vec<SVector<f64, B>> = base.direction.nodes.iter().map(|t| t * weight).collect();
+    let d = base.load_direction / system.load_scale().powi(2);
+    let constraint = Constraint {
+        row: &row,
+        d,
+        from: &base.state,
+        from_load: base.load,
+        distance,
+    };
+    newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
+    Ok(complete(system, newton, state, load, &row, d))
+}
+
+/// Makes a path point of a solution: pivot count, and the unit tangent that points along the
+/// border row given.
+pub(super) fn complete<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    state: Unknowns<B, I>,
+    load: f64,
+    row: &[SVector<f64, B>],
+    d: f64,
+) -> PathPoint<B, I> {
+    let negatives = newton.evaluate(system, &state, load);
+    let mut direction = Unknowns::zero(system.links());
+    let mut load_direction = newton.tangent(system, row, d, &mut direction);
+    let weight = 1.0 / direction.nodes.len() as f64;
+    let length = (dot(&direction.nodes, &direction.nodes) * weight
+        + (load_direction / system.load_scale()).powi(2))
+    .sqrt();
+    direction.scale(1.0 / length);
+    load_direction /= length;
+    PathPoint {
+        state,
+        load,
+        direction,
+        load_direction,
+        negatives,
+        distance: 0.0,
+    }
+}
+
+/// The first point of a path: solves at `load` from `guess`, with the tangent towards more load.
+///
+/// # Errors
+/// Where Newton does not converge.
+pub fn start<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    guess: &Unknowns<B, I>,
+    load: f64,
+) -> Result<PathPoint<B, I>, NotConverged> {
+    let mut state = guess.clone();
+    newton.solve_at_load(system, &mut state, load)?;
+    let row = vec![SVector::zeros(); system.links() + 1];
+    let d = 1.0 / system.load_scale();
+    Ok(complete(system, newton, state, load, &row, d))
+}
+
+fn inner_product<const B: usize, const I: usize>(
+    system: &impl System<B, I>,
+    a: &PathPoint<B, I>,
+    b: &PathPoint<B, I>,
+) -> f64 {
+    dot(&a.direction.nodes, &b.direction.nodes) / a.direction.nodes.len() as f64
+        + a.load_direction * b.load_direction / system.load_scale().powi(2)
+}

@@ -1,0 +1,51 @@
+//! What a system must offer to be solved.
+
+use super::{BlockTridiagonal, Unknowns};
+use nalgebra::SVector;
+
+/// Residual `r(u, λ) = g(u) − λ q` and tangent `∂g/∂u` at a state, the links' inner unknowns
+/// already eliminated.
+#[derive(Clone, Debug)]
+pub struct Assembled<const B: usize> {
+    /// Condensed tangent, one block row a node.
+    pub tangent: BlockTridiagonal<B>,
+    /// Condensed residual.
+    pub residual: Vec<SVector<f64, B>>,
+    /// Negative eigenvalues that the eliminated inner unknowns take with them, less those they
+    /// have in every stable state.
+    pub inner_negatives: i64,
+}
+
+impl<const B: usize> Assembled<B> {
+    /// Zero, for a chain of `links` links.
+    pub fn zero(links: usize) -> Self {
+        Assembled {
+            tangent: BlockTridiagonal::zero(links + 1),
+            residual: vec![SVector::zeros(); links + 1],
+            inner_negatives: 0,
+        }
+    }
+}
+
+/// A system of equations `g(u) = λ q` along a chain of links, with a symmetric tangent, whose
+/// links keep `I` inner unknowns to themselves and share `B` at each node.
+///
+/// Unknowns are expected of order one, so that one norm fits them all.
+pub trait System<const B: usize, const I: usize> {
+    /// Number of links.
+    fn links(&self) -> usize;
+
+    /// Evaluates residual and tangent at `state` under the load `load`, and remembers what
+    /// [`System::recover`] needs. Does not allocate.
+    fn assemble(&mut self, state: &Unknowns<B, I>, load: f64, out: &mut Assembled<B>);
+
+    /// The load pattern q.
+    fn load_pattern(&self) -> &[SVector<f64, B>];
+
+    /// Fills the inner part of `step` that belongs to its node part: at the state last assembled,
+    /// with that state's inner residual (a Newton step) or without (a direction).
+    fn recover(&self, step: &mut Unknowns<B, I>, with_residual: bool);
+
+    /// A load of the size that matters: λ is measured in it along a path.
+    fn load_scale(&self) -> f64;
+}
