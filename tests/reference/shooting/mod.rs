@@ -15,6 +15,8 @@
 
 mod axis;
 mod problem;
+mod seat;
 
 pub use axis::{Rod, Station};
-pub use problem::{Failure, Parameter, Problem, Seat, State};
+pub use problem::{Failure, Parameter, Problem, State};
+pub use seat::Seat;

@@ -1,54 +1,8 @@
 //! The boundary value problem: supports, load, and the way along the path.
 
 use super::axis::{Axis, Rod, Section, Station};
+use super::seat::Seat;
 use nalgebra::{SMatrix, SVector};
-
-/// What holds an end. Its laws act at the pivot, which the rigid piece joins to the end plane.
-#[derive(Clone, Copy, Debug)]
-pub struct Seat {
-    /// Moment on the column per turn away from `angle`, 0 to infinity: M_on = −k_θ(θ − angle).
-    pub rotation: f64,
-    /// Force on the column per sideways motion away from `offset`, 0 to infinity.
-    pub sideways: f64,
-    /// Angle of the seat, rad.
-    pub angle: f64,
-    /// Sideways position of the seat.
-    pub offset: f64,
-    /// Length of the rigid piece from the end plane to the pivot, along the section's normal,
-    /// outward positive (dead coils, arms).
-    pub arm: f64,
-    /// Distance of the pivot from the axis, along the end plane, positive to +y.
-    pub eccentricity: f64,
-    /// Dead sideways force on the pivot.
-    pub force: f64,
-    /// Dead moment on the end.
-    pub moment: f64,
-}
-
-impl Seat {
-    /// Held in both.
-    pub const CLAMPED: Seat = Seat::elastic(f64::INFINITY, f64::INFINITY);
-    /// Free to turn.
-    pub const HINGED: Seat = Seat::elastic(0.0, f64::INFINITY);
-    /// Kept from turning, free sideways.
-    pub const SLIDING: Seat = Seat::elastic(f64::INFINITY, 0.0);
-    /// Not held.
-    pub const FREE: Seat = Seat::elastic(0.0, 0.0);
-
-    /// Elastic, at angle and offset 0, without a rigid piece or a load.
-    pub const fn elastic(rotation: f64, sideways: f64) -> Seat {
-        Seat {
-            rotation,
-            sideways,
-            angle: 0.0,
-            offset: 0.0,
-            arm: 0.0,
-            eccentricity: 0.0,
-            force: 0.0,
-            moment: 0.0,
-        }
-    }
-}
 
 /// A column in its seats.
 pub struct Problem {
@@ -317,15 +271,6 @@ impl Problem {
         let (force, moment) = (self.unit_force(), self.unit_moment());
         let length = self.rod.length;
         let (bottom, top) = (&self.bottom, &self.top);
-        // Force on the column: −H at the bottom, H at the top; moments alike.
-        let sideways = |seat: &Seat, on: f64, y: f64| {
-            let (of_force, of_motion) = weights(seat.sideways * length / force);
-            of_force * (on - seat.force) / force + of_motion * (y - seat.offset) / length
-        };
-        let turning = |seat: &Seat, on: f64, theta: f64| {
-            let (of_moment, of_turn) = weights(seat.rotation / moment);
-            of_moment * (on - seat.moment) / moment + of_turn * (theta - seat.angle)
-        };
         let set = match parameter {
             Parameter::Load => (state.load - value) / force,
             Parameter::Shortening => (state.shortening - value) / length,
@@ -337,11 +282,12 @@ impl Problem {
                 section[1] - value / length
             }
         };
+        // Force on the column: −H at the bottom, H at the top; moments alike.
         Some(Unknowns::new(
-            sideways(bottom, -state.side_force, state.pivots[0]),
-            turning(bottom, -state.pivot_moments[0], state.bottom.theta),
-            sideways(top, state.side_force, state.pivots[1]),
-            turning(top, state.pivot_moments[1], state.top.theta),
+            bottom.sideways_rest(-state.side_force, state.pivots[0], force, length),
+            bottom.turning_rest(-state.pivot_moments[0], state.bottom.theta, moment),
+            top.sideways_rest(state.side_force, state.pivots[1], force, length),
+            top.turning_rest(state.pivot_moments[1], state.top.theta, moment),
             set,
         ))
     }
@@ -352,7 +298,8 @@ impl Problem {
         let axis = self.axis(u);
         let first = self.bottom_section(u);
         let last = axis.carry(0.0, 1.0, first)?;
-        let (along, across) = piece(&self.top, length, last[2], 1.0);
+        let (along, across) = self.top.piece(last[2], 1.0);
+        let (along, across) = (along / length, across / length);
         let top_moment = last[3] - (along * axis.side + across * axis.load);
         let arms = (self.bottom.arm + self.top.arm) / length;
         Some(State {
@@ -370,9 +317,10 @@ impl Problem {
 
     /// The section at S = 0: from the pivot over the rigid piece.
     fn bottom_section(&self, u: &Unknowns) -> Section {
-        let (along, across) = piece(&self.bottom, self.rod.length, u[1], -1.0);
+        let (along, across) = self.bottom.piece(u[1], -1.0);
         // From the pivot to the end plane: the way back.
-        let (along, across) = (-along, -across);
+        let length = self.rod.length;
+        let (along, across) = (-along / length, -across / length);
         Section::new(
             along,
             u[0] + across,
@@ -407,23 +355,5 @@ impl Problem {
 
     fn unit_moment(&self) -> f64 {
         self.rod.bending / self.rod.length
-    }
-}
-
-/// From the end plane's centre to the pivot, in units of the length; `outward` is +1 at the top
-/// and −1 at the bottom.
-fn piece(seat: &Seat, length: f64, theta: f64, outward: f64) -> (f64, f64) {
-    let (sin, cos) = theta.sin_cos();
-    let (arm, aside) = (outward * seat.arm / length, seat.eccentricity / length);
-    (arm * cos - aside * sin, arm * sin + aside * cos)
-}
-
-/// Weights of force and of motion in (force on the column) + k·(motion) = 0, finite for every k
-/// from 0 to infinity.
-fn weights(stiffness: f64) -> (f64, f64) {
-    if stiffness.is_infinite() {
-        (0.0, 1.0)
-    } else {
-        (1.0 / (1.0 + stiffness), stiffness / (1.0 + stiffness))
     }
 }
