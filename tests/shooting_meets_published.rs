@@ -5,8 +5,6 @@
 mod reference;
 
 use approx::assert_relative_eq;
-use reference::after_buckling;
-use reference::closed_form::critical_share;
 use reference::elastic_ends::{self, Column, End};
 use reference::elastica;
 use reference::shooting::{Parameter, Problem, Rod, Seat, State};
@@ -26,7 +24,7 @@ fn shooting_meets_the_transverse_rate() {
                 ..Seat::CLAMPED
             },
         };
-        let state = follow(&problem, Parameter::Load, share);
+        let state = problem.loaded(Parameter::Load, share).expect("follows");
         assert_relative_eq!(
             state.side_force / shift,
             transverse_rate(2.6, slenderness, share),
@@ -57,7 +55,9 @@ fn elastica_meets_its_table() {
         top: Seat::FREE,
     };
     let critical = PI.powi(2) / 4.0;
-    let mut state = onto_branch(&problem, critical, Parameter::TopTurn, 1e-2);
+    let mut state = problem
+        .branch(critical, Parameter::TopTurn, 1e-2)
+        .expect("finds the branch");
     for (degrees, printed, digits) in table {
         let angle = f64::to_radians(degrees);
         let exact = elastica::cantilever(angle);
@@ -127,7 +127,9 @@ fn shooting_meets_the_column_that_may_shorten() {
             top: Seat::HINGED,
         };
         let critical = elastica::shortening_column_load(axial).expect("buckles");
-        let state = onto_branch(&problem, critical, Parameter::BottomTurn, 1e-4);
+        let state = problem
+            .branch(critical, Parameter::BottomTurn, 1e-4)
+            .expect("finds the branch");
         assert_relative_eq!(state.load, critical, max_relative = 1e-8);
     }
 }
@@ -163,114 +165,64 @@ fn shooting_meets_the_straight_column() {
                 bottom: seat(bottom),
                 top: seat(top),
             };
-            let state = onto_branch(&problem, share, Parameter::Height(0.5), 1e-5);
+            let state = problem
+                .branch(share, Parameter::Height(0.5), 1e-5)
+                .expect("finds the branch");
             assert_relative_eq!(state.load, share, max_relative = 1e-7);
         }
     }
 }
 
-/// Slopes after buckling, derived in the module and met by the shot branch: two small rotations,
-/// extrapolated. Figures for the limits and for the rate left, E/G = 2.6 and 206/81.5 [C].
+/// Units do not matter: the same column in millimetres and newtons, bowed, on elastic tilted
+/// seats with arms.
 #[test]
-fn slopes_after_buckling_meet_the_shot_branch() {
-    // End constant, ends, where the rotation is largest, and a place where the mode has a height.
-    let ends = [
-        (1.0, Seat::HINGED, Seat::HINGED, 0.0, 0.5),
-        (0.5, Seat::CLAMPED, Seat::CLAMPED, 0.25, 0.5),
-        (1.0, Seat::CLAMPED, Seat::SLIDING, 0.5, 1.0),
-        (2.0, Seat::CLAMPED, Seat::FREE, 1.0, 1.0),
-    ];
-    for effective in [2.7, 3.0, 4.0, 10.0] {
-        let critical = critical_share(2.6, effective).expect("buckles");
-        for (constant, bottom, top, place, high) in ends {
-            let problem = Problem {
-                rod: Rod::of_spring(2.6, effective / constant),
-                bottom,
-                top,
-            };
-            let slopes = |height: f64| {
-                let state = onto_branch(&problem, critical, Parameter::Height(high), height);
-                let turn = problem.profile(&state, &[place])[0].theta.powi(2);
-                [
-                    (state.load - critical) / turn,
-                    (state.shortening - critical) / turn,
-                ]
-            };
-            let (near, far) = (slopes(2e-3), slopes(4e-3));
-            let want = [
-                after_buckling::load_slope(2.6, critical),
-                after_buckling::share_slope(2.6, critical),
-            ];
-            for i in 0..2 {
-                let limit = (4.0 * near[i] - far[i]) / 3.0;
-                assert_relative_eq!(limit, want[i], max_relative = 6e-6, epsilon = 3e-7);
-            }
-        }
-    }
-    let share = |slenderness| critical_share(2.6, slenderness).expect("buckles");
-    assert!((after_buckling::rate_left(2.6, share(4.0)) - 0.082).abs() < 5e-4);
-    assert!((after_buckling::rate_left(2.6, share(10.0)) - 0.014).abs() < 5e-4);
-    for (r, load, shortening) in [(2.6, 3.0256, 2.7635), (206.0 / 81.5, 2.9799, 2.7231)] {
-        let (load_limit, share_limit) = (
-            after_buckling::load_falls_below(r),
-            after_buckling::share_falls_below(r),
-        );
-        assert!((load_limit - load).abs() < 5e-5, "{load_limit}");
-        assert!((share_limit - shortening).abs() < 5e-5, "{share_limit}");
-        // The limits are where the slopes change sign.
-        let slope = |f: fn(f64, f64) -> f64, at: f64| f(r, critical_share(r, at).expect("buckles"));
-        assert!(slope(after_buckling::load_slope, load_limit - 1e-6) < 0.0);
-        assert!(slope(after_buckling::load_slope, load_limit + 1e-6) > 0.0);
-        assert!(slope(after_buckling::share_slope, share_limit - 1e-6) < 0.0);
-        assert!(slope(after_buckling::share_slope, share_limit + 1e-6) > 0.0);
-    }
-}
-
-/// Hinged, Λ = 4, E/G = 2.6: a bow of 0.1 D is reached at 0.2002, not at 0.1986 [C].
-#[test]
-fn bow_limit_of_the_hinged_column_meets_its_figure() {
-    let problem = Problem {
-        rod: Rod::of_spring(2.6, 4.0),
-        bottom: Seat::HINGED,
-        top: Seat::HINGED,
+fn units_do_not_matter() {
+    let seats = |length: f64, force: f64| {
+        let bottom = Seat {
+            angle: 0.02,
+            arm: 0.05 * length,
+            eccentricity: 0.01 * length,
+            ..Seat::elastic(0.03 * force * length, 0.5 * force / length)
+        };
+        let top = Seat {
+            offset: 0.02 * length,
+            arm: 0.1 * length,
+            ..Seat::elastic(0.01 * force * length, 2.0 * force / length)
+        };
+        (bottom, top)
     };
-    let state = onto_branch(&problem, 0.198_599, Parameter::Height(0.5), 0.1 / 4.0);
-    assert_relative_eq!(problem.farthest(&state).y, 0.025, max_relative = 1e-9);
-    assert!(
-        (state.shortening - 0.2002).abs() < 5e-5,
-        "{}",
-        state.shortening
+    let plain = Rod::of_spring(2.6, 4.0);
+    let (length, force) = (120.0, 3500.0);
+    let large = Rod::straight(
+        force * plain.axial,
+        force * plain.shear,
+        force * length * length * plain.bending,
+        length,
     );
-}
-
-/// Southwell's line for a spring: with a free bow in the shape of the mode and H = 0 the rotations
-/// grow as q_cr/(q_cr − q_S) with q_S = ξ(1 − mξ), and the heights as 1 − mξ times that
-/// (Southwell 1932; derived for the spring) [C].
-#[test]
-fn small_bow_grows_as_southwell_says() {
-    let (height, m) = (1e-6, 1.0 - 1.0 / 2.6);
-    let problem = Problem {
-        rod: Rod::of_spring(2.6, 4.0).bowed(height),
-        bottom: Seat::HINGED,
-        top: Seat::HINGED,
+    let state = |rod: Rod, length: f64, force: f64| {
+        let (bottom, top) = seats(length, force);
+        let problem = Problem {
+            rod: rod.bowed(0.01 * length),
+            bottom,
+            top,
+        };
+        let state = problem
+            .loaded(Parameter::Shortening, 0.2 * length)
+            .expect("follows");
+        let bow = problem.farthest(&state);
+        [
+            state.load / force,
+            state.side_force / force,
+            state.travel / length,
+            state.top.y / length,
+            state.pivot_moments[1] / (force * length),
+            bow.y / length,
+            bow.theta,
+        ]
     };
-    let critical = critical_share(2.6, 4.0).expect("buckles");
-    let grown = |share: f64| share * (1.0 - m * share);
-    for part in [0.2, 0.5, 0.8, 0.95] {
-        let share = part * critical;
-        let state = follow(&problem, Parameter::Load, share);
-        let growth = grown(critical) / (grown(critical) - grown(share));
-        assert_relative_eq!(
-            state.bottom.theta,
-            height * PI * growth,
-            max_relative = 1e-6
-        );
-        let middle = problem.profile(&state, &[0.5])[0].y;
-        assert_relative_eq!(
-            middle,
-            (1.0 - m * share) * height * growth,
-            max_relative = 1e-6
-        );
+    let (plain, large) = (state(plain, 1.0, 1.0), state(large, length, force));
+    for (one, other) in plain.into_iter().zip(large) {
+        assert_relative_eq!(one, other, max_relative = 1e-9, epsilon = 1e-11);
     }
 }
 
@@ -370,19 +322,4 @@ fn energy(problem: &Problem, state: &State) -> f64 {
         + spring(top.sideways, state.pivots[1] - top.offset)
         + spring(bottom.rotation, state.bottom.theta - bottom.angle)
         + spring(top.rotation, state.top.theta - top.angle)
-}
-
-/// From no load to `value` of `parameter` in twenty steps.
-fn follow(problem: &Problem, parameter: Parameter, value: f64) -> State {
-    let start = problem.unloaded().expect("solves");
-    let values: Vec<f64> = (1..=20).map(|i| value * f64::from(i) / 20.0).collect();
-    problem.follow(parameter, &values, &start).expect("follows")[19]
-}
-
-/// The bowed branch of a perfect column with critical load `critical` where `parameter` has
-/// `value`.
-fn onto_branch(problem: &Problem, critical: f64, parameter: Parameter, value: f64) -> State {
-    problem
-        .branch(critical, parameter, value)
-        .expect("finds the branch")
 }

@@ -82,7 +82,8 @@ impl End {
 }
 
 /// Smallest ξ = s/L in (0, 1) at which the straight column on these ends stops being stable.
-/// `None`: never. A column that the ends do not hold at all gives 0.
+/// `None`: never. The ends must hold the column as a rigid body: neither may it shift sideways nor
+/// turn without being resisted.
 pub fn critical_share(column: &Column, bottom: &End, top: &End) -> Option<f64> {
     let m = 1.0 - column.axial / column.shear;
     first_loss(

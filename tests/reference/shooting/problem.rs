@@ -75,6 +75,19 @@ impl Problem {
         self.newton(Parameter::Load, 0.0, guess)
     }
 
+    /// The state where `parameter` has `value`, followed from the unloaded one in twenty steps or
+    /// more: for an imperfect column that is the physical path, up to its first turning point in
+    /// `parameter`.
+    pub fn loaded(&self, parameter: Parameter, value: f64) -> Result<State, Failure> {
+        let start = self.unloaded()?;
+        let at = self.value(parameter, &start);
+        let values: Vec<f64> = (1..20)
+            .map(|i| at + (value - at) * f64::from(i) / 20.0)
+            .chain([value])
+            .collect();
+        Ok(self.follow(parameter, &values, &start)?[19])
+    }
+
     /// The state where `parameter` has `value`, by Newton's method from `guess`.
     pub fn solve(&self, parameter: Parameter, value: f64, guess: &State) -> Result<State, Failure> {
         self.newton(parameter, value, guess.unknowns)
@@ -158,6 +171,46 @@ impl Problem {
             Parameter::BottomTurn => state.bottom.theta,
             Parameter::TopTurn => state.top.theta,
             Parameter::Height(share) => self.profile(state, &[share])[0].y,
+        }
+    }
+
+    /// The state where `quantity` first is largest while `along` grows by steps of a twentieth of
+    /// its own value, from `start` (where it must not be zero) to at most `limit`: a limit point
+    /// of the load, for instance. Golden section on the bracket; `quantity` there is good to about
+    /// 1e-12 of itself, `along` only to about 1e-6. `None`: it still rises at `limit`.
+    pub fn first_largest(
+        &self,
+        quantity: Parameter,
+        along: Parameter,
+        start: &State,
+        limit: f64,
+    ) -> Result<Option<State>, Failure> {
+        let reach = |value: f64, from: &State| Ok(self.follow(along, &[value], from)?[0]);
+        let mut before = *start;
+        let mut middle = *start;
+        loop {
+            let value = 1.05 * self.value(along, &middle);
+            if value > limit {
+                return Ok(None);
+            }
+            let after = reach(value, &middle)?;
+            if self.value(quantity, &after) < self.value(quantity, &middle) {
+                let (mut low, mut high) = (self.value(along, &before), value);
+                let golden = 0.5 * (5.0_f64.sqrt() - 1.0);
+                while high - low > 1e-7 * high {
+                    let span = golden * (high - low);
+                    let (left, right) = (reach(high - span, &middle)?, reach(low + span, &middle)?);
+                    if self.value(quantity, &left) > self.value(quantity, &right) {
+                        high = low + span;
+                        middle = left;
+                    } else {
+                        low = high - span;
+                        middle = right;
+                    }
+                }
+                return Ok(Some(middle));
+            }
+            (before, middle) = (middle, after);
         }
     }
 
