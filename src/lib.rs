@@ -4,6 +4,7 @@
 //!
 //! Data goes one way: case file → [`setup`] → model → solve → [`result`] → report.
 
+pub mod assess;
 pub mod column;
 pub mod criteria;
 pub mod result;

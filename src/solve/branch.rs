@@ -1,22 +1,12 @@
-//! Singular points and the branch that leaves there.
+//! Branch points: where another path crosses the one followed.
+//!
+//! Between two points of a path the sign of the tangent's determinant changes at a limit point,
+//! together with the sign of the load's direction, or at a branch point, without it. The other path
+//! leaves a branch point of a symmetric system along the null direction of the tangent.
+//!
+//! Source: Seydel, Practical Bifurcation and Stability Analysis, branch switching (from memory).
 
-use super::newton::Constraint;
-use super::path::complete;
-use super::{Newton, NotConverged, PathPoint, System, Unknowns, unknowns::dot};
-use nalgebra::SVector;
-
-/// A singular point with the direction in which it is singular.
-#[derive(Clone, Debug)]
-pub struct SingularPoint<const B: usize, const I: usize> {
-    /// Load at which the tangent is singular.
-    pub load: f64,
-    /// State there.
-    pub state: Unknowns<B, I>,
-    /// Null direction, of unit norm `Σ|node|²/n = 1`.
-    pub mode: Unknowns<B, I>,
-    /// Eigenvalue left over along the mode, against the largest entry of the tangent.
-    pub leftover: f64,
-}
+use super::{Located, Newton, PathPoint, System, Unknowns, locate, unknowns::dot};
 
 /// Direction in which the tangent at `state`, `load` is nearest to singular, with its eigenvalue
 /// `K φ = μ φ`: inverse iteration with the factor of the indefinite tangent. Unit norm
@@ -45,7 +35,7 @@ pub fn null_direction<const B: usize, const I: usize>(
         let length = (dot(&direction.nodes, &direction.nodes) / count).sqrt();
         direction.nodes.iter_mut().for_each(|v| *v /= length);
         let rayleigh = newton.assembled.tangent.quadratic(&direction.nodes) / count;
-        let settled = (rayleigh - eigenvalue).abs() <= 1e-12 * rayleigh.abs();
+        let settled = (rayleigh - eigenvalue).abs() <= 1e-9 * rayleigh.abs();
         eigenvalue = rayleigh;
         if settled {
             break;
@@ -55,29 +45,37 @@ pub fn null_direction<const B: usize, const I: usize>(
     (direction, eigenvalue)
 }
 
-/// The first point of the branch that leaves `from` along `mode`, at the signed `amplitude`.
-///
-/// # Errors
-/// Where Newton does not converge.
-pub fn switch_at<const B: usize, const I: usize>(
+/// Sign that changes at branch points only.
+fn side<const B: usize, const I: usize>(point: &PathPoint<B, I>) -> f64 {
+    let even = point.negatives.is_multiple_of(2);
+    if even == (point.load_direction >= 0.0) {
+        1.0
+    } else {
+        -1.0
+    }
+}
+
+/// Whether the path crosses another between these two points.
+pub fn crosses_another<const B: usize, const I: usize>(
+    before: &PathPoint<B, I>,
+    after: &PathPoint<B, I>,
+) -> bool {
+    side(before) != side(after)
+}
+
+/// The branch point between `points[after]` and the next, to `tolerance` along the path, with its
+/// direction turned onto the branch: unit null direction, so that following goes on from there
+/// along the other path. `None` where the two points lie on the same side.
+pub fn branch_point<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,
-    from: &PathPoint<B, I>,
-    mode: &Unknowns<B, I>,
-    amplitude: f64,
-) -> Result<PathPoint<B, I>, NotConverged> {
-    let weight = amplitude.signum() / from.state.nodes.len() as f64;
-    let row: Vec<SVector<f64, B>> = mode.nodes.iter().map(|t| t * weight).collect();
-    let mut state = from.state.clone();
-    state.add(amplitude, mode);
-    let mut load = from.load;
-    let constraint = Constraint {
-        row: &row,
-        d: 0.0,
-        from: &from.state,
-        from_load: from.load,
-        distance: amplitude.abs(),
-    };
-    newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
-    Ok(complete(system, newton, state, load, &row, 0.0))
+    points: &[PathPoint<B, I>],
+    after: usize,
+    tolerance: f64,
+) -> Option<Located<B, I>> {
+    let mut located = locate(system, newton, points, after, tolerance, side)?;
+    let (mode, _) = null_direction(system, newton, &located.point.state, located.point.load);
+    located.point.direction = mode;
+    located.point.load_direction = 0.0;
+    Some(located)
 }

@@ -13,6 +13,8 @@ pub struct Located<const B: usize, const I: usize> {
     pub point: PathPoint<B, I>,
     /// Index of the path point before it.
     pub after: usize,
+    /// Its distance along the tangent of that point.
+    pub distance: f64,
     /// Width of the last bracket along the path.
     pub bracket: f64,
     /// Whether the bracket shrank to the tolerance asked for.
@@ -57,7 +59,7 @@ pub fn locate<const B: usize, const I: usize>(
             break;
         }
         let Ok(point) = at_distance(system, newton, base, at) else {
-            return Some(located(best, after, high - low, tolerance));
+            return Some(located(best, after, high, high - low, tolerance));
         };
         let value = function(&point);
         if value * at_low > 0.0 {
@@ -76,12 +78,13 @@ pub fn locate<const B: usize, const I: usize>(
         }
     }
     let width = if at_high == 0.0 { 0.0 } else { high - low };
-    Some(located(best, after, width, tolerance))
+    Some(located(best, after, high, width, tolerance))
 }
 
 fn located<const B: usize, const I: usize>(
     mut point: PathPoint<B, I>,
     after: usize,
+    distance: f64,
     bracket: f64,
     tolerance: f64,
 ) -> Located<B, I> {
@@ -89,6 +92,7 @@ fn located<const B: usize, const I: usize>(
     Located {
         point,
         after,
+        distance,
         bracket,
         // A bracket of a few units in the last place of the distances themselves is all there is.
         converged: bracket <= tolerance.max(1e-14),

@@ -1,0 +1,53 @@
+//! What the handbook's formula says of the case.
+
+use super::straight::{is_beyond_solid, measure, seat_compliance};
+use crate::criteria::{critical_share, end_constants, stable_below};
+use crate::result::{ClosedForm, ClosedFormCurve};
+use crate::setup::Setup;
+
+const FORMULA: &str = "critical deflection C1(1 - sqrt(1 - C2/(alpha L0/D)^2)), EN 13906-1 \
+    buckling clause (from memory) and Shigley, Mechanical Engineering Design (seen)";
+const RECTANGULAR: &str = "; for rectangular wire with the stiffnesses from the energy of a turn \
+    (Haringx), which the handbooks do not print";
+
+pub(super) fn closed_form(setup: &Setup) -> ClosedForm {
+    let spring = &setup.spring;
+    let length = spring.free_length;
+    let section = spring.section(length);
+    let curves: Vec<ClosedFormCurve> = end_constants(&setup.bottom, &setup.top)
+        .into_iter()
+        .map(|constant| {
+            let critical = critical_share(&section, constant.value * length).map(|share| {
+                let force = spring.rate() * share * length;
+                measure(
+                    setup,
+                    share * length + force * seat_compliance(setup),
+                    force,
+                )
+            });
+            ClosedFormCurve {
+                end_constant: constant.value,
+                source: constant.source.to_owned(),
+                critical_deflection_m: critical.map(|m| m.deflection_m),
+                critical,
+                beyond_solid: critical
+                    .is_some_and(|m| is_beyond_solid(setup, m.deflection_m, m.force_n)),
+                absolute_stability_below_m: stable_below(&spring.turn_compliance(), constant.value),
+            }
+        })
+        .collect();
+    let round = matches!(spring.wire, crate::spring::Wire::Round { .. });
+    let note = if curves.is_empty() {
+        "no closed form covers this support".to_owned()
+    } else if round {
+        FORMULA.to_owned()
+    } else {
+        format!("{FORMULA}{RECTANGULAR}")
+    };
+    ClosedForm {
+        end_constant: curves.first().map(|c| c.end_constant),
+        critical_deflection_m: curves.first().and_then(|c| c.critical_deflection_m),
+        curves,
+        note,
+    }
+}

@@ -1,0 +1,58 @@
+//! The job: chooses the models, runs them, compares, and names the governing limit.
+
+mod absolute;
+mod compare;
+mod dead_load;
+mod echo;
+mod formula;
+mod imperfect;
+mod limits;
+mod observe;
+mod southwell;
+mod straight;
+mod verdict;
+
+use crate::result::Assessment;
+use crate::setup::Setup;
+
+/// Elements of the coarser and the finer mesh. Results are the finer's; the difference is the
+/// discretisation estimate.
+pub const MESHES: [usize; 2] = [16, 32];
+
+/// Answers one case. `file` is only passed on. Computations that fail are in the result.
+pub fn assess(setup: &Setup, file: &str) -> Assessment {
+    let closed_form = formula::closed_form(setup);
+    let straight = straight::idealised(setup);
+    let as_built = straight::as_built(setup);
+    let imperfect = imperfect::run(setup);
+    let limits = limits::collect(setup, as_built.as_ref(), &imperfect);
+    let comparisons = compare::all(setup, &closed_form, &straight);
+    let absolute_stability = absolute::stability(setup, &closed_form, &straight);
+    let dead_load = dead_load::describe(setup, &imperfect);
+    let decided = verdict::decide(setup, &limits, &imperfect);
+    let imperfect_column = imperfect.summary(setup, &decided.limits);
+    let mut warnings = setup.warnings.clone();
+    warnings.extend(limits::assumptions(setup, imperfect_column.as_ref()));
+    Assessment {
+        title: setup.title.clone(),
+        file: file.to_owned(),
+        verdict: decided.verdict,
+        governing: decided.governing,
+        sentence: decided.sentence,
+        spring: echo::spring(setup),
+        supports: echo::supports(setup),
+        imperfections: echo::imperfections(setup),
+        duty: echo::duty(setup),
+        defaulted: setup.defaulted.clone(),
+        closed_form,
+        straight_column: straight,
+        imperfect_column,
+        comparisons,
+        limits: decided.limits,
+        dead_load,
+        absolute_stability,
+        stress_at_solid: limits::stress_at_solid(setup),
+        failures: imperfect.failures,
+        warnings,
+    }
+}

@@ -1,0 +1,173 @@
+//! From a state of the column to what people ask about it.
+
+use super::straight::seat_compliance;
+use crate::column::{Column, Peak, Station};
+use crate::result::PathPoint;
+use crate::setup::Setup;
+use crate::solve;
+use crate::spring::{Wire, compressed_radius, curvature_factor};
+use std::f64::consts::PI;
+
+/// A path point of the column's system.
+pub(super) type Solved = solve::PathPoint<3, 5>;
+
+/// Looks at states of one column and says what they mean for its spring.
+pub(super) struct Observer {
+    /// Unloaded in its seats: sideways position and slope at each station.
+    start: Vec<Station>,
+    start_height: f64,
+    seats: f64,
+}
+
+/// A path point with what only limits need.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Seen {
+    pub point: PathPoint,
+    /// Axial gap between coils at the tightest place on the inside of the bow, m; 0 at contact.
+    pub clearance: f64,
+    /// Direction of the path: change of the force, N, and of the travel, m.
+    pub along: (f64, f64),
+}
+
+impl Observer {
+    /// An observer of paths that start at `unloaded`.
+    pub fn new(setup: &Setup, column: &Column, unloaded: &Solved) -> Self {
+        let mut start = Vec::new();
+        column.profile(&unloaded.state, &mut start);
+        Observer {
+            start,
+            start_height: unloaded.state.nodes[column.elements()][0],
+            seats: seat_compliance(setup),
+        }
+    }
+
+    /// Stations of the unloaded column.
+    pub fn start(&self) -> &[Station] {
+        &self.start
+    }
+
+    /// What the state of `solved` means.
+    pub fn see(&self, setup: &Setup, column: &Column, solved: &Solved) -> Seen {
+        let mut stations = Vec::with_capacity(self.start.len());
+        column.profile(&solved.state, &mut stations);
+        let scale = column.scale;
+        let last = column.elements();
+        let force = solved.load * scale.force;
+        let shortening = (self.start_height - solved.state.nodes[last][0]) * scale.length;
+        let force_along = solved.load_direction * scale.force;
+        let travel_along =
+            -solved.direction.nodes[last][0] * scale.length + force_along * self.seats;
+        let growth = |sign: f64| {
+            Peak::of(stations.iter().zip(&self.start).map(|(now, then)| {
+                (
+                    now.place,
+                    sign * (now.y - then.y),
+                    sign * (now.y_slope - then.y_slope),
+                )
+            }))
+        };
+        let (left, right) = (growth(1.0), growth(-1.0));
+        let (bow, lateral) = if left.value >= right.value {
+            (left, left.value)
+        } else {
+            (right, -right.value)
+        };
+        let actions = column.end_actions(&solved.state);
+        let falling = force_along * travel_along < 0.0;
+        Seen {
+            point: PathPoint {
+                deflection_m: shortening + force * self.seats,
+                shortening_m: shortening,
+                force_n: force,
+                bow_m: bow.value * scale.length,
+                bow_place: bow.place,
+                lateral_m: lateral * scale.length,
+                bottom_rotation_rad: solved.state.nodes[0][2],
+                top_rotation_rad: solved.state.nodes[last][2],
+                bottom_moment_n_m: actions[0][2] * scale.moment(),
+                top_moment_n_m: actions[1][2] * scale.moment(),
+                transverse_force_n: solved.state.inner[0][4] * scale.force,
+                rate_n_per_m: force_along / travel_along,
+                wire_stress_pa: wire_stress(setup, column, &stations),
+                unstable_set_deflection: solved.negatives
+                    - u32::from(falling && solved.negatives > 0),
+                unstable_dead_load: solved.negatives,
+            },
+            clearance: clearance(setup, column, &stations),
+            along: (force_along, travel_along),
+        }
+    }
+}
+
+/// Largest corrected shear stress in the wire: T = |N| R + |M| at the worst section.
+fn wire_stress(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
+    let spring = &setup.spring;
+    let (pitch, diameter) = (spring.pitch(), spring.mean_diameter);
+    let torque = |sign: f64| {
+        Peak::of(stations.iter().map(|s| {
+            let open = 1.0 + s.stretch;
+            let radius = compressed_radius(diameter, pitch, pitch * open);
+            // N' = Q θ', and R follows ε = N/EA.
+            let force_slope = s.shear_force * s.curvature;
+            let stretch_slope = if s.axial_force == 0.0 {
+                0.0
+            } else {
+                force_slope * s.stretch / s.axial_force
+            };
+            let radius_slope = -pitch.powi(2) * open / (4.0 * PI.powi(2) * radius) * stretch_slope;
+            let push = s.axial_force.abs();
+            let push_slope = force_slope * s.axial_force.signum();
+            let arm = radius / column.scale.length;
+            (
+                s.place,
+                push * arm + sign * s.moment,
+                push_slope * arm
+                    + push * radius_slope / column.scale.length
+                    + sign * s.moment_slope,
+            )
+        }))
+        .value
+    };
+    let worst = torque(1.0).max(torque(-1.0)) * column.scale.moment();
+    spring.wire.torsion_stress_per_torque() * worst * curvature_factor(spring.index())
+}
+
+/// Smallest axial gap between neighbouring coils, m: on the inside of the bow
+/// `p(1 + ε − R|θ'|) − √(d² − (γp)²)`, for rectangular wire less its axial size.
+fn clearance(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
+    let spring = &setup.spring;
+    let (pitch, diameter) = (spring.pitch(), spring.mean_diameter);
+    let gap = |s: &Station| {
+        let open = 1.0 + s.stretch;
+        let radius = compressed_radius(diameter, pitch, pitch * open);
+        let inside = pitch * (open - radius * (s.curvature / column.scale.length).abs());
+        let wire = match spring.wire {
+            Wire::Round { diameter } => (diameter.powi(2) - (s.slide * pitch).powi(2))
+                .max(0.0)
+                .sqrt(),
+            Wire::Rectangular { axial, .. } => axial,
+        };
+        inside - wire
+    };
+    let gaps: Vec<f64> = stations.iter().map(gap).collect();
+    let (lowest, least) = gaps
+        .iter()
+        .enumerate()
+        .min_by(|a, b| a.1.total_cmp(b.1))
+        .map_or((0, f64::INFINITY), |(i, g)| (i, *g));
+    // The least value of the parabola through the lowest station and its neighbours.
+    match (lowest.checked_sub(1), gaps.get(lowest + 1)) {
+        (Some(before), Some(after)) => {
+            let (rise, bend) = (
+                0.5 * (after - gaps[before]),
+                after - 2.0 * least + gaps[before],
+            );
+            if bend > 0.0 {
+                least - 0.5 * rise * rise / bend
+            } else {
+                least
+            }
+        }
+        _ => least,
+    }
+}
