@@ -1,53 +1,11 @@
 //! The straight column against the closed form and against exact roots.
 
 use coilstay::column::{Column, Idealisation, StraightScan};
-use coilstay::criteria::{critical_share, second_share};
-use coilstay::setup::{Duty, Imperfections, Loading, Margins, Restraint, Setup, Support};
-use coilstay::spring::{EndType, Hand, Spring, Wire};
+use coilstay::criteria::critical_share;
+use coilstay::setup::{Setup, Support};
+use fixture::setup;
 
-/// A spring with Λ = `slenderness` and E/G = `r`, ends without dead coils.
-fn setup(slenderness: f64, r: f64, bottom: Support, top: Support) -> Setup {
-    let mean_diameter = 0.05;
-    Setup {
-        title: String::new(),
-        material: String::new(),
-        temperature: 20.0,
-        spring: Spring {
-            wire: Wire::Round { diameter: 0.006 },
-            mean_diameter,
-            free_length: slenderness * mean_diameter,
-            active_coils: 9.0,
-            total_coils: 9.0,
-            ends: EndType::ClosedGround,
-            hand: Hand::Right,
-            youngs_modulus: r * 80e9,
-            shear_modulus: 80e9,
-            measured_rate: None,
-            solid_length: 9.0 * 0.006,
-            solid_rule: "",
-        },
-        bottom,
-        top,
-        imperfections: Imperfections::none(),
-        duty: Duty {
-            loading: Loading::Deflection,
-            installed_deflection: 0.0,
-            working_deflection: 0.01,
-            working_force: None,
-            working_tolerance: 0.0,
-            overtravel: 0.0,
-            margins: Margins {
-                general: 0.15,
-                own: Vec::new(),
-            },
-            bow_limit: 0.005,
-            rate_loss_share: 0.05,
-            allowable_stress: None,
-        },
-        defaulted: Vec::new(),
-        warnings: Vec::new(),
-    }
-}
+mod fixture;
 
 fn critical(setup: &Setup, elements: usize) -> Option<f64> {
     let mut column = Column::of_setup(setup, Idealisation::WholeLength, elements, None);

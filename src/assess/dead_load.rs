@@ -1,6 +1,7 @@
 //! What happens when a dead load is lost.
 
-use super::imperfect::{EventKind, Imperfect};
+use super::events::EventKind;
+use super::imperfect::Imperfect;
 use super::straight::seat_compliance;
 use crate::result::DeadLoad;
 use crate::setup::{LimitKind, Loading, Setup};
@@ -26,7 +27,10 @@ pub(super) fn describe(setup: &Setup, imperfect: &Imperfect) -> Option<DeadLoad>
         });
     };
     let force = lost.point.force_n;
-    let regained = imperfect.fine.event(EventKind::ForceRegained);
+    let regained = imperfect
+        .fine
+        .event(EventKind::ForceRegained)
+        .filter(|event| event.point.unstable_dead_load == 0);
     let rest = regained.or_else(|| imperfect.fine.event(EventKind::Limit(LimitKind::Solid)));
     let lost_at = lost.point.deflection_m;
     let rests_at = rest.map(|event| event.point.shortening_m + force * seat_compliance(setup));

@@ -1,6 +1,7 @@
 //! The limits of the usable deflection, each from the model it belongs to.
 
-use super::imperfect::{EventKind, Imperfect};
+use super::events::EventKind;
+use super::imperfect::Imperfect;
 use super::straight::{Critical, is_beyond_solid, seat_compliance};
 use crate::result::{ImperfectColumn, Limit, StressAtSolid};
 use crate::setup::{Imperfections, LimitKind, Loading, Setup};

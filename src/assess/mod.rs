@@ -4,6 +4,7 @@ mod absolute;
 mod compare;
 mod dead_load;
 mod echo;
+mod events;
 mod formula;
 mod imperfect;
 mod limits;
@@ -11,6 +12,7 @@ mod observe;
 mod southwell;
 mod straight;
 mod verdict;
+mod walk;
 
 use crate::result::Assessment;
 use crate::setup::Setup;

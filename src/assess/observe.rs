@@ -133,41 +133,44 @@ fn wire_stress(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
 }
 
 /// Smallest axial gap between neighbouring coils, m: on the inside of the bow
-/// `p(1 + ε − R|θ'|) − √(d² − (γp)²)`, for rectangular wire less its axial size.
+/// `p(1 + ε − R|θ'|) − √(d² − (γp)²)`, for rectangular wire less its axial size. The stiffness is
+/// taken as constant between stations.
 fn clearance(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
     let spring = &setup.spring;
     let (pitch, diameter) = (spring.pitch(), spring.mean_diameter);
-    let gap = |s: &Station| {
-        let open = 1.0 + s.stretch;
-        let radius = compressed_radius(diameter, pitch, pitch * open);
-        let inside = pitch * (open - radius * (s.curvature / column.scale.length).abs());
-        let wire = match spring.wire {
-            Wire::Round { diameter } => (diameter.powi(2) - (s.slide * pitch).powi(2))
-                .max(0.0)
-                .sqrt(),
-            Wire::Rectangular { axial, .. } => axial,
-        };
-        inside - wire
+    let per = |strain: f64, force: f64| if force == 0.0 { 0.0 } else { strain / force };
+    let tightness = |sign: f64| {
+        Peak::of(stations.iter().map(|s| {
+            let open = 1.0 + s.stretch;
+            let radius = compressed_radius(diameter, pitch, pitch * open);
+            let (arm, turn) = (radius / column.scale.length, sign * s.curvature);
+            // N' = Q θ', Q' = −N θ', and the strains follow the forces.
+            let stretch_slope = s.shear_force * s.curvature * per(s.stretch, s.axial_force);
+            let slide_slope = -s.axial_force * s.curvature * per(s.slide, s.shear_force);
+            let arm_slope = -pitch.powi(2) * open * stretch_slope
+                / (4.0 * PI.powi(2) * radius * column.scale.length);
+            let turn_slope = sign * s.moment_slope * s.compliance;
+            let (wire, wire_slope) = match spring.wire {
+                Wire::Round { diameter } => {
+                    let wire = (diameter.powi(2) - (s.slide * pitch).powi(2))
+                        .max(0.0)
+                        .sqrt();
+                    let slope = if wire > 0.0 {
+                        -s.slide * slide_slope * pitch.powi(2) / wire
+                    } else {
+                        0.0
+                    };
+                    (wire, slope)
+                }
+                Wire::Rectangular { axial, .. } => (axial, 0.0),
+            };
+            (
+                s.place,
+                wire - pitch * (open - arm * turn),
+                wire_slope - pitch * (stretch_slope - arm_slope * turn - arm * turn_slope),
+            )
+        }))
+        .value
     };
-    let gaps: Vec<f64> = stations.iter().map(gap).collect();
-    let (lowest, least) = gaps
-        .iter()
-        .enumerate()
-        .min_by(|a, b| a.1.total_cmp(b.1))
-        .map_or((0, f64::INFINITY), |(i, g)| (i, *g));
-    // The least value of the parabola through the lowest station and its neighbours.
-    match (lowest.checked_sub(1), gaps.get(lowest + 1)) {
-        (Some(before), Some(after)) => {
-            let (rise, bend) = (
-                0.5 * (after - gaps[before]),
-                after - 2.0 * least + gaps[before],
-            );
-            if bend > 0.0 {
-                least - 0.5 * rise * rise / bend
-            } else {
-                least
-            }
-        }
-        _ => least,
-    }
+    -tightness(1.0).max(tightness(-1.0))
 }

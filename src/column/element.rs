@@ -166,42 +166,6 @@ impl Element {
         forms
     }
 
-    /// Energy of equation (2) at a state.
-    pub(super) fn energy(
-        &self,
-        tables: &Tables,
-        a: &Vector3<f64>,
-        b: &Vector3<f64>,
-        inner: &SVector<f64, INNER>,
-    ) -> f64 {
-        let rotations = Self::rotations(a, b, inner);
-        let (fx, fy) = (inner[3], inner[4]);
-        let half = 0.5 * self.length;
-        let mut energy = fx * (b[0] - a[0]) + fy * (b[1] - a[1]);
-        for g in 0..GAUSS_POINTS {
-            let law = &self.points[g];
-            let sum = |table: &[f64; FUNCTIONS]| -> f64 {
-                table.iter().zip(rotations).map(|(n, q)| n * q).sum()
-            };
-            let angle = sum(&tables.values[g]);
-            let bent = sum(&tables.slopes[g]) / half - law.natural_curvature;
-            let (sin, cos) = angle.sin_cos();
-            let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
-            energy += GAUSS_WEIGHT[g]
-                * half
-                * (0.5 * law.bending * bent * bent
-                    - axial
-                    - 0.5 * law.axial_compliance * axial * axial
-                    - 0.5 * law.shear_compliance * shear * shear);
-        }
-        for (end, lever) in [(0, &self.from_a), (1, &self.to_b)] {
-            let (sin, cos) = rotations[end].sin_cos();
-            energy -= fx * (lever.along * cos - lever.across * sin)
-                + fy * (lever.along * sin + lever.across * cos);
-        }
-        energy
-    }
-
     /// Strain energy: ∫ ½EI(θ'−κ0)² + N²/(2EA) + Q²/(2GA).
     pub(super) fn strain_energy(
         &self,
@@ -325,6 +289,42 @@ mod tests {
         }
     }
 
+    /// Energy of equation (2) at a state.
+    fn energy(
+        element: &Element,
+        tables: &Tables,
+        a: &Vector3<f64>,
+        b: &Vector3<f64>,
+        inner: &SVector<f64, INNER>,
+    ) -> f64 {
+        let rotations = Element::rotations(a, b, inner);
+        let (fx, fy) = (inner[3], inner[4]);
+        let half = 0.5 * element.length;
+        let mut energy = fx * (b[0] - a[0]) + fy * (b[1] - a[1]);
+        for g in 0..GAUSS_POINTS {
+            let law = &element.points[g];
+            let sum = |table: &[f64; FUNCTIONS]| -> f64 {
+                table.iter().zip(rotations).map(|(n, q)| n * q).sum()
+            };
+            let angle = sum(&tables.values[g]);
+            let bent = sum(&tables.slopes[g]) / half - law.natural_curvature;
+            let (sin, cos) = angle.sin_cos();
+            let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
+            energy += GAUSS_WEIGHT[g]
+                * half
+                * (0.5 * law.bending * bent * bent
+                    - axial
+                    - 0.5 * law.axial_compliance * axial * axial
+                    - 0.5 * law.shear_compliance * shear * shear);
+        }
+        for (end, lever) in [(0, &element.from_a), (1, &element.to_b)] {
+            let (sin, cos) = rotations[end].sin_cos();
+            energy -= fx * (lever.along * cos - lever.across * sin)
+                + fy * (lever.along * sin + lever.across * cos);
+        }
+        energy
+    }
+
     /// All eleven unknowns: x_A, y_A, θ_A, x_B, y_B, θ_B, c_1, c_2, c_3, F_x, F_y.
     fn split(u: &[f64]) -> (Vector3<f64>, Vector3<f64>, SVector<f64, INNER>) {
         (
@@ -364,14 +364,14 @@ mod tests {
         ) {
             let step = 2e-3;
             let shifted = |k: usize, by: f64| { let mut v = u.clone(); v[k] += by; v };
-            let energy = |v: &[f64]| { let (a, b, i) = split(v); element().energy(&Tables::new(), &a, &b, &i) };
+            let energy_at = |v: &[f64]| { let (a, b, i) = split(v); energy(&element(), &Tables::new(), &a, &b, &i) };
             let exact = gradient(&u);
             let (a, b, inner) = split(&u);
             let forms = element().forms(&Tables::new(), &a, &b, &inner);
             let (ii, io) = (forms.inner_matrix(), forms.inner_to_outer());
             for k in 0..11 {
-                let difference = (8.0 * (energy(&shifted(k, step)) - energy(&shifted(k, -step)))
-                    - energy(&shifted(k, 2.0 * step)) + energy(&shifted(k, -2.0 * step))) / (12.0 * step);
+                let difference = (8.0 * (energy_at(&shifted(k, step)) - energy_at(&shifted(k, -step)))
+                    - energy_at(&shifted(k, 2.0 * step)) + energy_at(&shifted(k, -2.0 * step))) / (12.0 * step);
                 prop_assert!((difference - exact[k]).abs() < 2e-9, "residual {k}: {difference} {}", exact[k]);
                 let (p, m) = (gradient(&shifted(k, step)), gradient(&shifted(k, -step)));
                 let (pp, mm) = (gradient(&shifted(k, 2.0 * step)), gradient(&shifted(k, -2.0 * step)));

@@ -26,6 +26,8 @@ pub struct Station {
     pub moment: f64,
     /// Curvature θ' now, the stress-free one included.
     pub curvature: f64,
+    /// 1/EI.
+    pub compliance: f64,
     /// Axial strain ε.
     pub stretch: f64,
     /// Shear strain γ.
@@ -94,6 +96,7 @@ impl Column {
                     shear_force,
                     moment,
                     curvature: moment / law.bending + law.natural_curvature,
+                    compliance: 1.0 / law.bending,
                     stretch,
                     slide,
                     x_slope: slopes.0,

@@ -63,19 +63,36 @@ pub fn crosses_another<const B: usize, const I: usize>(
     side(before) != side(after)
 }
 
-/// The branch point between `points[after]` and the next, to `tolerance` along the path, with its
-/// direction turned onto the branch: unit null direction, so that following goes on from there
-/// along the other path. `None` where the two points lie on the same side.
+/// A branch point and the direction in which the other path leaves it.
+#[derive(Clone, Debug)]
+pub struct BranchPoint<const B: usize, const I: usize> {
+    /// The point, with the tangent of the path it was found on.
+    pub located: Located<B, I>,
+    /// Null direction of the tangent matrix, of unit norm `Σ|node|²/n = 1`.
+    pub mode: Unknowns<B, I>,
+}
+
+impl<const B: usize, const I: usize> BranchPoint<B, I> {
+    /// The point with its direction turned onto the other path, to be followed from there.
+    pub fn turned(&self, sign: f64) -> PathPoint<B, I> {
+        let mut point = self.located.point.clone();
+        point.direction.copy_from(&self.mode);
+        point.direction.scale(sign);
+        point.load_direction = 0.0;
+        point
+    }
+}
+
+/// The branch point between `points[after]` and the next, to `tolerance` along the path. `None`
+/// where the two points lie on the same side.
 pub fn branch_point<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,
     points: &[PathPoint<B, I>],
     after: usize,
     tolerance: f64,
-) -> Option<Located<B, I>> {
-    let mut located = locate(system, newton, points, after, tolerance, side)?;
+) -> Option<BranchPoint<B, I>> {
+    let located = locate(system, newton, points, after, tolerance, side)?;
     let (mode, _) = null_direction(system, newton, &located.point.state, located.point.load);
-    located.point.direction = mode;
-    located.point.load_direction = 0.0;
-    Some(located)
+    Some(BranchPoint { located, mode })
 }

@@ -12,7 +12,7 @@ mod tridiagonal;
 mod unknowns;
 
 pub use bordered::Bordered;
-pub use branch::{branch_point, crosses_another, null_direction};
+pub use branch::{BranchPoint, branch_point, crosses_another, null_direction};
 pub use event::{Located, locate};
 pub use newton::{Newton, NotConverged};
 pub use path::{Outcome, PathPoint, PathSettings, Walk, follow, start};

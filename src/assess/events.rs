@@ -1,0 +1,149 @@
+//! Events on the load path: limits reached, the working point, and where a dead load comes to rest.
+
+use super::observe::{Observer, Seen, Solved};
+use super::walk::BRACKET;
+use crate::column::Column;
+use crate::result::PathPoint;
+use crate::setup::{LimitKind, Setup};
+use crate::solve::{Newton, locate};
+
+/// An event on a path.
+#[derive(Clone, Debug)]
+pub(super) struct Event {
+    pub kind: EventKind,
+    pub point: PathPoint,
+    /// Strain energy of spring and lateral seats, J.
+    pub strain_energy: f64,
+    /// Width of the last bracket, m of travel.
+    pub bracket: f64,
+}
+
+/// What happens.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum EventKind {
+    Limit(LimitKind),
+    /// The force comes back up to the largest it had, in a stable state.
+    ForceRegained,
+    Installed,
+    Working,
+}
+
+/// A path to look for events on.
+pub(super) struct Track<'a> {
+    pub setup: &'a Setup,
+    pub column: &'a mut Column,
+    pub newton: &'a mut Newton<3, 5>,
+    pub observer: &'a Observer,
+    pub points: &'a [Solved],
+    pub seen: &'a [Seen],
+    /// Indices of branch points: the path turns a corner there.
+    pub corners: &'a [usize],
+}
+
+/// A function along the path, positive before its event. One that looks at the path's direction
+/// jumps at a corner.
+struct Watch<'f> {
+    kind: EventKind,
+    of_direction: bool,
+    function: Box<dyn Fn(&Seen) -> f64 + 'f>,
+}
+
+impl<'f> Watch<'f> {
+    fn state(kind: EventKind, function: impl Fn(&Seen) -> f64 + 'f) -> Self {
+        Watch {
+            kind,
+            of_direction: false,
+            function: Box::new(function),
+        }
+    }
+
+    fn direction(kind: EventKind, function: impl Fn(&Seen) -> f64 + 'f) -> Self {
+        Watch {
+            of_direction: true,
+            ..Watch::state(kind, function)
+        }
+    }
+}
+
+impl Track<'_> {
+    /// Limits and working points, the first of each kind.
+    pub fn events(&mut self) -> Vec<Event> {
+        let setup = self.setup;
+        let duty = &setup.duty;
+        let solid = setup.spring.solid_deflection();
+        let seats = super::straight::seat_compliance(setup);
+        let left_rate = (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + seats);
+        let stress = duty.allowable_stress.unwrap_or(f64::INFINITY);
+        let limit = EventKind::Limit;
+        let watches = [
+            Watch::state(limit(LimitKind::Bow), |s| duty.bow_limit - s.point.bow_m),
+            Watch::direction(limit(LimitKind::RateLost), |s| {
+                s.along.0 - left_rate * s.along.1
+            }),
+            Watch::direction(limit(LimitKind::DeadLoadLost), |s| s.along.0),
+            Watch::direction(limit(LimitKind::TravelLost), |s| s.along.1),
+            Watch::state(limit(LimitKind::Clash), |s| s.clearance),
+            Watch::state(limit(LimitKind::Solid), |s| solid - s.point.shortening_m),
+            Watch::state(limit(LimitKind::Stress), |s| {
+                stress - s.point.wire_stress_pa
+            }),
+            Watch::state(EventKind::Installed, |s| {
+                duty.installed_deflection - s.point.deflection_m
+            }),
+            Watch::state(EventKind::Working, |s| {
+                duty.largest_working_deflection() - s.point.deflection_m
+            }),
+        ];
+        let mut events: Vec<Event> = watches
+            .iter()
+            .filter_map(|watch| self.first(watch, 0))
+            .collect();
+        // After a dead load is lost: where the same force is carried again.
+        let lost = events
+            .iter()
+            .find(|e| e.kind == limit(LimitKind::DeadLoadLost))
+            .map(|e| e.point.force_n);
+        if let Some(force) = lost
+            && let Some(falling) = self.seen.iter().position(|s| s.along.0 < 0.0)
+        {
+            let regained = Watch::state(EventKind::ForceRegained, |s| force - s.point.force_n);
+            events.extend(self.first(&regained, falling));
+        }
+        events
+    }
+
+    /// The first point from index `from` on at which the watch turns from positive to not.
+    fn first(&mut self, watch: &Watch<'_>, from: usize) -> Option<Event> {
+        let value = |i: usize| (watch.function)(&self.seen[i]);
+        if from == 0 && !self.seen.is_empty() && value(0) <= 0.0 {
+            return Some(self.event(watch.kind, &self.points[0], 0.0));
+        }
+        let after = (from..self.seen.len().saturating_sub(1))
+            .find(|i| value(*i) > 0.0 && value(i + 1) <= 0.0)?;
+        if watch.of_direction && self.corners.contains(&after) {
+            // The slope jumps at the corner itself.
+            return Some(self.event(watch.kind, &self.points[after], 0.0));
+        }
+        // The observer looks at states of a column like this one: a copy serves inside the search.
+        let watched = self.column.clone();
+        let (setup, observer) = (self.setup, self.observer);
+        let found = locate(
+            self.column,
+            self.newton,
+            self.points,
+            after,
+            BRACKET,
+            |point| (watch.function)(&observer.see(setup, &watched, point)),
+        )?;
+        Some(self.event(watch.kind, &found.point, found.bracket))
+    }
+
+    fn event(&self, kind: EventKind, solved: &Solved, width: f64) -> Event {
+        Event {
+            kind,
+            point: self.observer.see(self.setup, self.column, solved).point,
+            strain_energy: self.column.strain_energy(&solved.state) * self.column.scale.moment(),
+            bracket: width.abs() * self.column.scale.length,
+        }
+    }
+}
