@@ -4,7 +4,14 @@
 //!
 //! Data goes one way: case file → [`setup`] → model → solve → [`result`] → report.
 
+pub mod assess;
+pub mod case;
+pub mod cli;
+pub mod cli;
+pub mod report;
 pub mod result;
 pub mod setup;
 pub mod spring;
+pub mod store;
+pub mod study;
 pub mod units;

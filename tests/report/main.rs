@@ -1,0 +1,3 @@
+//! Reports of invented assessments: their shape, their page, their pictures.
+
+mod fixture;
