@@ -4,6 +4,7 @@
 //!
 //! Data goes one way: case file → [`setup`] → model → solve → [`result`] → report.
 
+pub mod case;
 pub mod result;
 pub mod setup;
 pub mod spring;
