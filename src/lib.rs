@@ -7,7 +7,6 @@
 pub mod assess;
 pub mod case;
 pub mod cli;
-pub mod cli;
 pub mod report;
 pub mod result;
 pub mod setup;

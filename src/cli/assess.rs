@@ -113,11 +113,7 @@ impl AssessRequest {
     }
 
     /// CSV and picture of every case that has a load path.
-    fn load_paths(
-        &self,
-        directory: &Path,
-        outcomes: &[Outcome],
-    ) -> Result<Vec<Output>, Trouble> {
+    fn load_paths(&self, directory: &Path, outcomes: &[Outcome]) -> Result<Vec<Output>, Trouble> {
         let mut outputs = Vec::new();
         for (case, outcome) in self.cases.iter().zip(outcomes) {
             let Outcome::Assessed(assessment) = outcome else {

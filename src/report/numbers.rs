@@ -1,6 +1,6 @@
 //! Numbers as text: unit systems, significant digits, error estimates.
 
-use crate::units::{Joule, Metre, Newton, NewtonPerMetre, Pascal, Radian};
+use crate::units::{self, Joule, Metre, Newton, Pascal, Radian, ShownUnit, significant};
 
 /// The units a report is written in. Data files (JSON, CSV) are always SI.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
@@ -12,26 +12,27 @@ pub enum Units {
     Inch,
 }
 
-/// A unit of the report: its symbol, and the SI value of one of it.
+/// A unit of the report.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Unit {
     /// Symbol as printed.
     pub symbol: &'static str,
-    /// One of it in SI.
-    pub in_si: f64,
+    unit: units::Unit,
 }
 
-const INCH: f64 = 0.0254;
-const POUND_FORCE: f64 = 4.448_221_615_260_5;
-
-const fn unit(symbol: &'static str, in_si: f64) -> Unit {
-    Unit { symbol, in_si }
+impl From<ShownUnit> for Unit {
+    fn from(shown: ShownUnit) -> Self {
+        Unit {
+            symbol: shown.symbol,
+            unit: shown.unit,
+        }
+    }
 }
 
 impl Unit {
     /// The SI value in this unit.
     pub fn of(self, si: f64) -> f64 {
-        si / self.in_si
+        self.unit.from_si(si)
     }
 
     /// The SI value with four significant digits and the symbol: "43.21 mm".
@@ -51,70 +52,56 @@ impl Unit {
 }
 
 impl Units {
+    fn choose(self, metric: ShownUnit, inch: ShownUnit) -> Unit {
+        match self {
+            Units::Metric => metric.into(),
+            Units::Inch => inch.into(),
+        }
+    }
+
     /// Unit of lengths and deflections.
     pub fn length(self) -> Unit {
-        match self {
-            Units::Metric => unit("mm", 1e-3),
-            Units::Inch => unit("in", INCH),
-        }
+        self.choose(units::MILLIMETRE, units::INCH)
     }
 
     /// Unit of forces.
     pub fn force(self) -> Unit {
-        match self {
-            Units::Metric => unit("N", 1.0),
-            Units::Inch => unit("lbf", POUND_FORCE),
-        }
+        self.choose(units::NEWTON, units::POUND_FORCE)
     }
 
     /// Unit of rates.
     pub fn rate(self) -> Unit {
-        match self {
-            Units::Metric => unit("N/mm", 1e3),
-            Units::Inch => unit("lbf/in", POUND_FORCE / INCH),
-        }
+        self.choose(units::NEWTON_PER_MILLIMETRE, units::POUND_FORCE_PER_INCH)
     }
 
     /// Unit of stresses.
     pub fn stress(self) -> Unit {
-        match self {
-            Units::Metric => unit("MPa", 1e6),
-            Units::Inch => unit("ksi", 1e3 * POUND_FORCE / (INCH * INCH)),
-        }
+        self.choose(units::MEGAPASCAL, units::KSI)
     }
 
     /// Unit of moduli.
     pub fn modulus(self) -> Unit {
-        match self {
-            Units::Metric => unit("GPa", 1e9),
-            Units::Inch => unit("ksi", 1e3 * POUND_FORCE / (INCH * INCH)),
-        }
+        self.choose(units::GIGAPASCAL, units::KSI)
     }
 
     /// Unit of rotational stiffnesses.
     pub fn rotational_stiffness(self) -> Unit {
-        match self {
-            Units::Metric => unit("N m/rad", 1.0),
-            Units::Inch => unit("lbf in/rad", POUND_FORCE * INCH),
-        }
+        self.choose(
+            units::NEWTON_METRE_PER_RADIAN,
+            units::POUND_FORCE_INCH_PER_RADIAN,
+        )
     }
 
     /// Unit of energies.
     pub fn energy(self) -> Unit {
-        match self {
-            Units::Metric => unit("J", 1.0),
-            Units::Inch => unit("in lbf", POUND_FORCE * INCH),
-        }
+        self.choose(units::JOULE, units::POUND_FORCE_INCH)
     }
 
     /// Unit of angles.
     pub fn angle(self) -> Unit {
-        unit("deg", std::f64::consts::PI / 180.0)
+        units::DEGREE.into()
     }
-}
 
-/// A value in each of the report's kinds of unit, in words of the result.
-impl Units {
     /// "43.21 mm".
     pub fn show_length(self, value: Metre) -> String {
         self.length().show(value)
@@ -123,11 +110,6 @@ impl Units {
     /// "320.4 N".
     pub fn show_force(self, value: Newton) -> String {
         self.force().show(value)
-    }
-
-    /// "8.15 N/mm".
-    pub fn show_rate(self, value: NewtonPerMetre) -> String {
-        self.rate().show(value)
     }
 
     /// "812.3 MPa".
@@ -190,15 +172,6 @@ pub fn fixed(value: f64, decimals: usize) -> String {
     }
 }
 
-/// `value` with so many significant digits; very large and very small ones as "1.234e-9".
-pub fn significant(value: f64, digits: i32) -> String {
-    let size = value.abs();
-    if value.is_finite() && size != 0.0 && !(1e-4..1e7).contains(&size) {
-        return format!("{:.*e}", (digits - 1).max(0) as usize, value);
-    }
-    fixed(value, decimals_for(value, digits))
-}
-
 /// `value` with up to six significant digits and no trailing zeros.
 pub fn shortest(value: f64) -> String {
     without_zeros(significant(value, 6))
@@ -259,11 +232,6 @@ mod tests {
 
     #[test]
     fn digits_are_those_that_matter() {
-        assert_eq!(significant(43.2149, 4), "43.21");
-        assert_eq!(significant(9.99996, 4), "10.00");
-        assert_eq!(significant(123_456.0, 4), "123456");
-        assert_eq!(significant(0.0, 4), "0");
-        assert_eq!(significant(1.5e-9, 4), "1.500e-9");
         assert_eq!(shortest(62.000_000_000_1), "62");
         assert_eq!(shortest(0.5), "0.5");
         assert_eq!(shortest(1e-9), "1e-9");

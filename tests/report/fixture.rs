@@ -286,7 +286,13 @@ pub fn assessment(shape: Shape) -> Assessment {
             top_position: "piloted".into(),
         },
         duty: duty(shape),
-        defaulted: vec!["duty.bow_limit".into(), "duty.rate_loss".into()],
+        defaulted: vec![
+            "spring.hand".into(),
+            "imperfections.bow_shape".into(),
+            "duty.bow_limit".into(),
+            "duty.rate_loss_share".into(),
+            "material.invented_key".into(),
+        ],
         closed_form: ClosedForm {
             end_constant: Some(0.7),
             critical_deflection_m: Some(0.0491),

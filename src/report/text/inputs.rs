@@ -38,11 +38,7 @@ pub fn inputs(assessment: &Assessment, units: Units) -> String {
         .unwrap_or(0);
     let mut body = String::new();
     for input in &inputs {
-        let mark = if input.keys.iter().any(|key| defaulted.contains(key)) {
-            " (default)"
-        } else {
-            ""
-        };
+        let mark = default_mark(&input.keys, defaulted);
         body += &paragraph(
             &format!("  {}  ", pad_right(&input.label, width)),
             &format!("{}{mark}", input.value),
@@ -58,6 +54,23 @@ pub fn inputs(assessment: &Assessment, units: Units) -> String {
         body += &paragraph("  Also taken by default: ", &others.join(", "));
     }
     section("Inputs as resolved", &body)
+}
+
+/// What of an input was taken by default, in brackets.
+fn default_mark(keys: &[String], defaulted: &[String]) -> String {
+    let taken: Vec<&str> = keys
+        .iter()
+        .filter(|key| defaulted.contains(key))
+        .filter_map(|key| key.rsplit('.').next())
+        .collect();
+    if taken.is_empty() {
+        String::new()
+    } else if taken.len() == keys.len() {
+        " (default)".to_string()
+    } else {
+        let names: Vec<String> = taken.iter().map(|key| key.replace('_', " ")).collect();
+        format!(" (default: {})", names.join(", "))
+    }
 }
 
 fn spring(assessment: &Assessment, units: Units) -> Vec<Input> {
@@ -136,7 +149,7 @@ fn spring(assessment: &Assessment, units: Units) -> Vec<Input> {
             ),
         ),
         input(
-            &["material", "material.name", "spring.material"],
+            &["material.name"],
             "material",
             format!(
                 "{}; E {}, G {} at the service temperature",
@@ -146,11 +159,11 @@ fn spring(assessment: &Assessment, units: Units) -> Vec<Input> {
             ),
         ),
         input(
-            &["temperature", "service.temperature", "spring.temperature"],
+            &["material.service_temperature"],
             "service temperature",
             format!("{} degC", shortest(spring.service_temperature_degc)),
         ),
-        input(&["spring.rate", "spring.measured_rate"], "rate", rate),
+        input(&["spring.measured_rate"], "rate", rate),
     ]
 }
 
@@ -178,32 +191,24 @@ fn support(place: &str, support: &SupportEcho, units: Units) -> Vec<Input> {
             units.rate().show_input(axial)
         );
     }
-    let name = |what: &str| format!("{place} {what}");
-    let mut inputs = vec![Input {
-        keys: vec![place.to_string(), key("kind"), key("support")],
-        label: name("support"),
-        value: text,
-    }];
     let length = units.length();
-    let optional = [
-        ("arm", support.arm_m, length.show_input(support.arm_m)),
-        ("tilt", support.tilt_rad, units.show_angle(support.tilt_rad)),
-        (
-            "offset",
-            support.offset_m,
-            length.show_input(support.offset_m),
-        ),
-    ];
-    for (what, value, text) in optional {
-        if value != 0.0 {
-            inputs.push(Input {
-                keys: vec![key(what)],
-                label: name(what),
-                value: text,
-            });
-        }
-    }
-    inputs
+    vec![
+        Input {
+            keys: vec![key("kind")],
+            label: format!("{place} support"),
+            value: text,
+        },
+        Input {
+            keys: vec![key("arm"), key("tilt"), key("offset")],
+            label: format!("{place} seat"),
+            value: format!(
+                "arm {}, tilt {}, offset {}",
+                length.show_input(support.arm_m),
+                units.show_angle(support.tilt_rad),
+                length.show_input(support.offset_m)
+            ),
+        },
+    ]
 }
 
 fn imperfections(assessment: &Assessment, units: Units) -> Vec<Input> {
@@ -235,7 +240,7 @@ fn imperfections(assessment: &Assessment, units: Units) -> Vec<Input> {
             length(imperfections.eccentricity_m),
         ),
         input(
-            &["imperfections.top_position", "imperfections.top"],
+            &["imperfections.top_position"],
             "top position",
             imperfections.top_position.clone(),
         ),
@@ -256,17 +261,17 @@ fn duty(assessment: &Assessment, units: Units) -> Vec<Input> {
     vec![
         input(&["duty.loading"], "what is set", duty.loading.clone()),
         input(
-            &["duty.installed", "duty.installed_deflection"],
+            &["duty.installed_deflection"],
             "installed deflection",
             length(duty.installed_deflection_m),
         ),
         input(
-            &["duty.working", "duty.working_deflection"],
+            &["duty.working_deflection"],
             "working deflection",
             format!("{}{force}", length(duty.working_deflection_m)),
         ),
         input(
-            &["duty.tolerance", "duty.working_tolerance"],
+            &["duty.working_tolerance"],
             "tolerance on it",
             length(duty.working_tolerance_m),
         ),
@@ -276,13 +281,13 @@ fn duty(assessment: &Assessment, units: Units) -> Vec<Input> {
             length(duty.overtravel_m),
         ),
         input(
-            &["duty.margin", "duty.required_margin"],
+            &["duty.required_margin"],
             "required margin",
             percent_input(duty.required_margin),
         ),
         input(&["duty.bow_limit"], "bow limit", length(duty.bow_limit_m)),
         input(
-            &["duty.rate_loss", "duty.rate_loss_share"],
+            &["duty.rate_loss_share"],
             "share of rate lost",
             percent_input(duty.rate_loss_share),
         ),

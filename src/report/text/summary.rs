@@ -2,8 +2,9 @@
 
 use crate::report::Units;
 use crate::report::layout::{Row, table};
-use crate::report::numbers::{fixed, percent_number, significant};
+use crate::report::numbers::{fixed, percent_number};
 use crate::result::{Outcome, Verdict};
+use crate::units::significant;
 
 /// One line a case, after the verdicts of several.
 pub fn summary(outcomes: &[Outcome], units: Units) -> String {
