@@ -2,7 +2,7 @@
 
 use super::output::{complain, error_takes_colour, print};
 use super::{Format, Trouble, UnitSystem};
-use crate::case;
+use crate::case::{self, Diagnostics};
 use crate::report;
 use crate::result::{Mistake, Outcome, Refusal, Verdict};
 use crate::setup::Setup;
@@ -157,19 +157,32 @@ fn load(path: &Path) -> Loaded {
         }
         Err(diagnostics) => {
             complain(&diagnostics.render(error_takes_colour()));
-            let mistakes = diagnostics
-                .items()
-                .iter()
-                .map(|item| Mistake {
-                    line: item.line,
-                    column: item.column,
-                    message: item.message.clone(),
-                    cure: item.cure.clone(),
-                })
-                .collect();
-            Err(Refusal::new(file, mistakes))
+            Err(Refusal::new(file, mistakes(&diagnostics)))
         }
     }
+}
+
+fn mistakes(diagnostics: &Diagnostics) -> Vec<Mistake> {
+    let items = diagnostics.items();
+    let mut mistakes: Vec<Mistake> = items
+        .iter()
+        .map(|item| Mistake {
+            line: item.line,
+            column: item.column,
+            message: item.message.clone(),
+            cure: item.cure.clone(),
+        })
+        .collect();
+    let unlisted = diagnostics.count() - items.len();
+    if let (Some(last), true) = (items.last(), unlisted > 0) {
+        mistakes.push(Mistake {
+            line: last.line,
+            column: last.column,
+            message: format!("and {unlisted} more mistakes after these"),
+            cure: "mend these, then run again".into(),
+        });
+    }
+    mistakes
 }
 
 /// Where the load path of a case goes: its table and its picture.

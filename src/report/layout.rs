@@ -158,7 +158,12 @@ pub fn table(title: &str, columns: &[&str], units: &[&str], rows: &[Row]) -> Str
             ),
             None => {
                 let cells = line(&row.label, &row.cells);
-                format!("{}\n", format!("{cells}{GAP}{}", row.remark).trim_end())
+                let gap = if cells.width() + GAP.len() + row.remark.width() > PAGE {
+                    "\n    "
+                } else {
+                    GAP
+                };
+                format!("{}\n", format!("{cells}{gap}{}", row.remark).trim_end())
             }
         };
         let text = text.trim_end_matches('\n');

@@ -1,6 +1,6 @@
 //! The picture of a load path: axial force above, bow below, both against the axial deflection;
-//! numbered marks with a key. Readable in grey: every line has its own dash, every kind of mark
-//! its own shape.
+//! numbered marks with a key. Readable in grey: lines of one panel differ in dash, kinds of mark in
+//! shape.
 
 mod figure;
 mod key;

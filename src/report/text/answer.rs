@@ -4,7 +4,7 @@ use super::section;
 use crate::report::Units;
 use crate::report::layout::{BAD, GOOD, OPEN, paragraph, styled};
 use crate::report::names::phrase;
-use crate::report::numbers::{percent, percent_input};
+use crate::report::numbers::{percent, percent_input, percent_number};
 use crate::result::{Assessment, Limit, Verdict};
 
 /// What was asked: installed, working, tolerance, overtravel, required margin.
@@ -132,8 +132,8 @@ fn governs(limit: &Limit, units: Units) -> String {
     }
     if let Some(margin) = limit.margin {
         text += &format!(
-            ": margin {}, required {}",
-            percent(margin),
+            ": margin {} %, required {}",
+            percent_number(margin, 2),
             percent_input(limit.required_margin)
         );
     }

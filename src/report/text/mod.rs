@@ -51,10 +51,10 @@ fn refused(refusal: &Refusal) -> String {
     };
     let words = format!("{count} in the input, explained on standard error.");
     let verdict = styled("COULD NOT BE DECIDED:", OPEN);
-    join(&[
-        styled(paragraph("", &refusal.file).trim_end(), STRONG) + "\n",
-        format!("  {verdict} {words}\n"),
-    ])
+    format!(
+        "{}\n  {verdict} {words}\n",
+        styled(paragraph("", &refusal.file).trim_end(), STRONG)
+    )
 }
 
 fn title(title: &str, file: &str) -> String {

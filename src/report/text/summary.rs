@@ -50,7 +50,7 @@ pub fn summary(outcomes: &[Outcome], units: Units) -> String {
 
 /// The end of a file name too long for the page.
 fn shortened(file: &str) -> String {
-    const ROOM: usize = 28;
+    const ROOM: usize = 24;
     let clean: String = file.chars().filter(|c| !c.is_control()).collect();
     let count = clean.chars().count();
     if count <= ROOM {
