@@ -5,6 +5,7 @@ mod garbage;
 mod meaning;
 mod mistakes;
 mod schema;
+mod values;
 
 use coilstay::case::{self, Case, Diagnostics, Item};
 
@@ -53,4 +54,23 @@ fn only_mistake(text: &str) -> Item {
     let mistakes = refused(text);
     assert_eq!(mistakes.items().len(), 1, "{mistakes}");
     mistakes.items()[0].clone()
+}
+
+/// A piece replaced, and the single mistake that comes of it: (replaced, by, line, column, part of the message, part of the cure)
+type Expected = (
+    &'static str,
+    &'static str,
+    usize,
+    usize,
+    &'static str,
+    &'static str,
+);
+
+fn check(table: &[Expected]) {
+    for (from, to, line, column, message, cure) in table {
+        let item = only_mistake(&with(from, to));
+        assert_eq!((item.line, item.column), (*line, *column), "{to}: {item:?}");
+        assert!(item.message.contains(message), "{to}: {}", item.message);
+        assert!(item.cure.contains(cure), "{to}: {}", item.cure);
+    }
 }
