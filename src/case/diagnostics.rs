@@ -245,6 +245,13 @@ impl<'a> Lines<'a> {
         self.between(index, index)
     }
 
+    /// Where the words of line `index` stand, without the blanks around them.
+    pub fn words(&self, index: usize) -> Place {
+        let line = self.text(index);
+        let start = self.starts[index] + line.len() - line.trim_start().len();
+        start..start + line.trim().len()
+    }
+
     /// Text of the lines from `first` to `last`, without the last one's end.
     fn between(&self, first: usize, last: usize) -> &'a str {
         let end = self.starts.get(last + 1).map_or(self.text.len(), |s| s - 1);

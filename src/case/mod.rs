@@ -69,6 +69,11 @@ pub fn parse(file_name: &str, text: &str) -> Result<Case, Diagnostics> {
             "`coilstay starter` prints a case to begin from",
         )]);
     }
+    let blanked = syntax::without_stops(text, &errors);
+    let table = match &blanked {
+        Some(text) => DeTable::parse_recoverable(text).0,
+        None => table,
+    };
     let mut log = Log::default();
     let filled = reader::read(table.get_ref(), &form::CASE, "", 0..0, &mut log);
     let resolved = resolve::resolve(&filled, file_name, &mut log);

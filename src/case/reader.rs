@@ -20,10 +20,14 @@ pub(super) fn read(
     let mut entries: Vec<_> = table.iter().collect();
     entries.sort_by_key(|(key, _)| key.span().start);
     let mut answers: Vec<Answer> = Vec::new();
+    let mut meant = Vec::new();
     for (key, value) in entries {
         let word = key.get_ref().as_ref();
         let Some(field) = form.fields.iter().find(|f| f.key == word) else {
-            log.mistakes.push(unknown(form, name, word, key.span()));
+            let near = nearest(word, form.fields.iter().map(|f| f.key));
+            meant.extend(near);
+            log.mistakes
+                .push(unknown(form, name, word, near, key.span()));
             continue;
         };
         let content = match content(field, name, value.get_ref(), &key.span(), log) {
@@ -47,6 +51,7 @@ pub(super) fn read(
         place,
         answers,
     };
+    let before = log.mistakes.len();
     for field in form.fields {
         if field.absent == Absent::Mistake && !filled.is_given(field) {
             log.mistakes.push(missing(&filled, field));
@@ -55,6 +60,10 @@ pub(super) fn read(
     for rule in form.rules {
         super::rules::check(rule, &filled, log);
     }
+    // A misspelt key is not also a missing one.
+    let absences = log.mistakes.split_off(before).into_iter();
+    log.mistakes
+        .extend(absences.filter(|m| !m.absent.iter().any(|key| meant.contains(key))));
     filled
 }
 
@@ -76,18 +85,18 @@ fn content(
     }
 }
 
-fn unknown(form: &Form, table: &str, word: &str, place: Place) -> Mistake {
+fn unknown(form: &Form, table: &str, word: &str, near: Option<&str>, place: Place) -> Mistake {
     let whose = match table {
         "" => "a case file".to_string(),
         table => format!("[{table}]"),
     };
-    let keys = || form.fields.iter().map(|f| f.key);
-    let cure = match (nearest(word, keys()), super::form::home_of(word)) {
+    let keys = form.fields.iter().map(|f| f.key);
+    let cure = match (near, super::form::home_of(word)) {
         (Some(near), _) => format!("did you mean `{near}`?"),
         (None, Some(home)) => format!("`{word}` belongs to [{home}]: move it there"),
         (None, None) => format!(
             "remove it, or use a field of {whose}: {}",
-            keys().collect::<Vec<_>>().join(", ")
+            keys.collect::<Vec<_>>().join(", ")
         ),
     };
     Mistake::at(

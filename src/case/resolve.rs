@@ -17,7 +17,7 @@ pub(super) fn resolve(
         file.word(&form::TITLE, log)
     } else {
         file.note_default(&form::TITLE, log);
-        Some(file_name.to_string())
+        Some(file_name.chars().filter(|c| !c.is_control()).collect())
     };
     let cold = file
         .table(&form::SPRING)

@@ -22,6 +22,30 @@ pub(super) fn mistakes(text: &str, errors: &[Error]) -> Vec<Mistake> {
         .collect()
 }
 
+/// `text` with the lines blanked out at which the parser would stop building tables, byte for byte
+/// as long; `None` where there are none. So the lines after them are read all the same.
+pub(super) fn without_stops(text: &str, errors: &[Error]) -> Option<String> {
+    let lines = Lines::of(text);
+    let stops: BTreeSet<usize> = errors
+        .iter()
+        .filter(|error| {
+            error.message().contains("key") && !error.message().starts_with("duplicate key")
+        })
+        .map(|error| lines.index(error.span().map_or(0, |place| place.start)))
+        .collect();
+    if stops.is_empty() {
+        return None;
+    }
+    let blanked = text.split_inclusive('\n').enumerate().map(|(index, line)| {
+        match (stops.contains(&index), line.strip_suffix('\n')) {
+            (false, _) => line.to_string(),
+            (true, Some(line)) => " ".repeat(line.len()) + "\n",
+            (true, None) => " ".repeat(line.len()),
+        }
+    });
+    Some(blanked.collect())
+}
+
 fn mistake(text: &str, lines: &Lines<'_>, place: Place, parser: &str) -> Mistake {
     let here = text.get(place.clone()).unwrap_or_default();
     let line = lines.text(lines.index(place.start));
@@ -71,6 +95,11 @@ fn mistake(text: &str, lines: &Lines<'_>, place: Place, parser: &str) -> Mistake
             "lines read key = value, under headers such as [spring]; `coilstay starter` prints a case to begin from"
                 .to_string(),
         )
+    };
+    let place = if parser.starts_with("key with no value") {
+        lines.words(lines.index(place.start))
+    } else {
+        place
     };
     Mistake::at(place, message, cure)
 }
@@ -134,7 +163,7 @@ pub(super) fn unexplained(text: &str, syntax: &[Mistake], others: Vec<Mistake>) 
             if mistake.absent.is_empty() {
                 !broken.contains(&line_of(mistake))
             } else {
-                !all_absent && !mistake.absent.iter().any(|key| has(&key))
+                !all_absent && !mistake.absent.iter().any(has)
             }
         })
         .collect()

@@ -161,7 +161,7 @@ fn unquoted(field: &Field, value: &DeValue<'_>) -> Fault {
         _ => String::new(),
     };
     match field.example_unit() {
-        "" => Fault {
+        _ if matches!(field.kind, Kind::Text | Kind::Choice(_)) => Fault {
             message: format!("`{}` is text, not a number", field.key),
             label: String::new(),
             cure: format!("for example {}", field.example_line()),
