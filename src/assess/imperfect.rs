@@ -171,6 +171,18 @@ impl Imperfect {
             .fold(0.0, f64::max)
     }
 
+    /// Travel at which the path ends, m, where it ends short of solid: bowed far over, or lost.
+    pub fn ends_before_solid(&self, setup: &Setup) -> Option<f64> {
+        match self.fine.event(EventKind::Limit(LimitKind::Solid)) {
+            Some(_) => None,
+            None => {
+                let solid = setup.spring.solid_deflection();
+                let last = self.fine.seen.last()?.point;
+                (last.shortening_m < solid).then_some(last.deflection_m)
+            }
+        }
+    }
+
     /// What is told of the imperfect column.
     pub fn summary(&self, setup: &Setup, limits: &[Limit]) -> Option<ImperfectColumn> {
         self.fine.seen.first()?;
