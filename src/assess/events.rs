@@ -86,6 +86,7 @@ impl Track<'_> {
         let left_rate = (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + seats);
         let stress = duty.allowable_stress.unwrap_or(f64::INFINITY);
         let limit = EventKind::Limit;
+        let reached = |s: &Seen| duty.reached(s.point.deflection_m, s.point.force_n);
         let watches = [
             Watch::state(limit(LimitKind::Bow), |s| duty.bow_limit - s.point.bow_m),
             Watch::direction(limit(LimitKind::RateLost), |s| {
@@ -98,14 +99,14 @@ impl Track<'_> {
             Watch::state(limit(LimitKind::Stress), |s| {
                 stress - s.point.wire_stress_pa
             }),
-            Watch::state(EventKind::Installed, |s| {
-                duty.installed_deflection - s.point.deflection_m
+            Watch::state(EventKind::Installed, move |s| {
+                duty.installed_deflection - reached(s)
             }),
-            Watch::state(EventKind::Working, |s| {
-                duty.working_deflection - s.point.deflection_m
+            Watch::state(EventKind::Working, move |s| {
+                duty.working_deflection - reached(s)
             }),
-            Watch::state(EventKind::LargestWorking, |s| {
-                duty.largest_working_deflection() - s.point.deflection_m
+            Watch::state(EventKind::LargestWorking, move |s| {
+                duty.largest_working_deflection() - reached(s)
             }),
         ];
         let mut events: Vec<Event> = watches

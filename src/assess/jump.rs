@@ -23,7 +23,7 @@ pub(super) fn dead_load(setup: &Setup, imperfect: &Imperfect) -> Option<DeadLoad
     let force = lost.map_or(0.0, |lost| lost.point.force_n);
     let rests_at = jump.map(|(_, rest)| rest.point.shortening_m + force * seat_compliance(setup));
     Some(DeadLoad {
-        path_ends_at_m: imperfect.ends_before_solid(setup),
+        path_ends_at_m: imperfect.ends_before_solid(),
         lost_at_force_n: lost.map(|lost| lost.point.force_n),
         lost_at_deflection_m: lost.map(|lost| lost.point.deflection_m),
         rests_at_deflection_m: rests_at,

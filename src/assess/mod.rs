@@ -8,9 +8,12 @@ mod formula;
 mod imperfect;
 mod jump;
 mod limits;
+mod notes;
 mod observe;
+mod run;
 mod southwell;
 mod straight;
+mod summary;
 mod verdict;
 mod walk;
 
@@ -35,11 +38,7 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
     let decided = verdict::decide(setup, &limits, &imperfect);
     let imperfect_column = imperfect.summary(setup, &decided.limits);
     let mut warnings = setup.warnings.clone();
-    warnings.extend(limits::assumptions(
-        setup,
-        imperfect_column.as_ref(),
-        &imperfect,
-    ));
+    warnings.extend(notes::notes(setup, &imperfect));
     Assessment {
         title: setup.title.clone(),
         file: file.to_owned(),

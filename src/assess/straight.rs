@@ -82,10 +82,15 @@ pub(super) fn idealised(setup: &Setup) -> StraightColumn {
 pub(super) fn measure(setup: &Setup, deflection: Metre, force: Newton) -> Measure {
     Measure {
         deflection_m: deflection,
-        share_of_free_length: deflection / setup.spring.free_length,
+        share_of_free_length: share_of_free_length(setup, deflection, force),
         force_n: force,
-        margin: deflection / setup.duty.largest_working_deflection() - 1.0,
+        margin: setup.duty.margin(deflection, force),
     }
+}
+
+/// Shortening of the spring, without what its seats give, over its free length.
+pub(super) fn share_of_free_length(setup: &Setup, deflection: Metre, force: Newton) -> f64 {
+    (deflection - force * seat_compliance(setup)) / setup.spring.free_length
 }
 
 /// Whether the spring is solid before it gets there.

@@ -28,11 +28,12 @@ pub enum Verdict {
 pub struct Measure {
     /// Deflection, m (travel of the machine).
     pub deflection_m: Metre,
-    /// Deflection over the free length.
+    /// Shortening of the spring over its free length (without what soft seats give).
     pub share_of_free_length: f64,
     /// Axial force there, N.
     pub force_n: Newton,
-    /// Deflection / (working deflection + its tolerance) − 1.
+    /// Deflection / (working deflection + its tolerance) − 1; under a dead load the same ratio of
+    /// forces.
     pub margin: f64,
 }
 
@@ -118,8 +119,11 @@ pub struct ImperfectColumn {
     pub bow_at_working_error_m: Option<Metre>,
     /// Wire stress at the working deflection, Pa.
     pub stress_at_working_pa: Option<Pascal>,
-    /// Sign of the parallelism deviation that was worse: "+", "-" or `null` where it does not matter.
-    pub worse_parallelism_sign: Option<String>,
+    /// How the deviations lie to one another in the worst way, in words; `null` where there is
+    /// only one way.
+    pub worst_orientation: Option<String>,
+    /// Number of ways that were tried.
+    pub orientations_tried: usize,
     /// Southwell estimate; `null` where the path gives none.
     pub southwell: Option<Southwell>,
     /// Which branch the path took, in words.
@@ -136,13 +140,15 @@ pub struct ImperfectColumn {
 pub struct Limit {
     /// Which limit.
     pub name: LimitKind,
-    /// Deflection at which it is reached, m; `null`: never (before solid), or not checked.
+    /// Deflection at which it is reached, m; `null`: not before solid, not as far as the path goes
+    /// (`looked_up_to_m`), or not checked.
     pub deflection_m: Option<Metre>,
-    /// Deflection over the free length.
+    /// Shortening of the spring over its free length (without what soft seats give).
     pub share_of_free_length: Option<f64>,
     /// Axial force there, N.
     pub force_n: Option<Newton>,
-    /// Deflection / (working deflection + tolerance) − 1; `null`: never reached.
+    /// Deflection / (working deflection + tolerance) − 1, under a dead load the same ratio of
+    /// forces; `null`: not reached.
     pub margin: Option<f64>,
     /// Margin required of this limit.
     pub required_margin: f64,

@@ -338,7 +338,8 @@ pub fn assessment(shape: Shape) -> Assessment {
             bow_at_working_m: Some(0.00175),
             bow_at_working_error_m: Some(6.1e-11),
             stress_at_working_pa: Some(6.12e8),
-            worse_parallelism_sign: None,
+            worst_orientation: None,
+            orientations_tried: 1,
             southwell: Some(Southwell {
                 deflection_m: 0.04815,
                 r_squared: 0.999_987,
