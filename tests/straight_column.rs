@@ -279,7 +279,8 @@ fn elastic_ends_have_the_plain_ones_as_limits() {
     let unit = natural(r, slenderness);
     let share =
         |bottom: End, top: End| both_ways(r, slenderness, &bottom, &top)[0].expect("buckles");
-    let cases: [(fn(f64) -> End, End, f64); 4] = [
+    type Of = fn(f64) -> End;
+    let cases: [(Of, End, f64); 4] = [
         (|k| End::elastic(k, f64::INFINITY), End::HINGED, 0.0),
         (|k| End::elastic(k, f64::INFINITY), End::CLAMPED, inf),
         (|k| End::elastic(f64::INFINITY, k), End::SLIDING, 0.0),
