@@ -10,7 +10,11 @@ use super::walk::walk;
 use crate::column::{Column, Deviations, Idealisation, StraightScan};
 use crate::result::{Computed, Failure, ImperfectColumn, Limit, Mark, Path, Southwell};
 use crate::setup::{LimitKind, Restraint, Setup};
-use crate::solve::{Newton, start};
+use crate::solve::{Newton, System, start};
+
+/// The path's steps are measured by the critical load, so that there are points enough before the
+/// bow-out, but not by less than this (EI/L²): on very soft seats the path goes on far beyond it.
+const SMALLEST_LOAD_SCALE: f64 = 1.0;
 
 /// A path on one mesh.
 pub(super) struct Run {
@@ -90,6 +94,13 @@ fn one(setup: &Setup, elements: usize, parallelism_sign: f64) -> Run {
         mode: buckling.as_ref().map(|b| &b.mode),
     };
     let mut column = Column::of_setup(setup, Idealisation::AsBuilt, elements, Some(&deviations));
+    if let Some(buckling) = &buckling {
+        let scale = buckling
+            .load
+            .max(SMALLEST_LOAD_SCALE)
+            .min(column.load_scale());
+        column = column.with_load_scale(scale);
+    }
     let mut newton = Newton::new(&column);
     let mut run = Run {
         seen: Vec::new(),
