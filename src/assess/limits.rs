@@ -4,7 +4,7 @@ use super::events::EventKind;
 use super::imperfect::Imperfect;
 use super::straight::{Critical, is_beyond_solid, seat_compliance};
 use crate::result::{ImperfectColumn, Limit, StressAtSolid};
-use crate::setup::{Imperfections, LimitKind, Loading, Setup};
+use crate::setup::{LimitKind, Loading, Setup};
 use crate::spring::{Wire, compressed_radius, torsion_stress};
 
 /// Below this share of the solid deflection, a clash differs from solid by round-off only.
@@ -59,6 +59,7 @@ fn limit(
         error_m: reached.and_then(|r| r.2),
         governs: false,
         beyond_solid: reached.is_some_and(|(d, force, _)| is_beyond_solid(setup, d, force)),
+        looked_up_to_m: None,
         note,
     }
 }
@@ -131,15 +132,10 @@ fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
             Some((event.point.deflection_m, event.point.force_n, Some(error))),
             meaning,
         ),
-        None if imperfect.failures.is_empty() => {
-            limit(setup, kind, None, format!("not before solid; {meaning}"))
-        }
-        None => limit(
-            setup,
-            kind,
-            None,
-            format!("not as far as the path is known; {meaning}"),
-        ),
+        None => Limit {
+            looked_up_to_m: imperfect.ends_before_solid(setup),
+            ..limit(setup, kind, None, meaning)
+        },
     }
 }
 
@@ -171,7 +167,10 @@ pub(super) fn stress_at_solid(setup: &Setup) -> StressAtSolid {
 /// What a reader must know of the models used on this case.
 pub(super) fn assumptions(setup: &Setup, column: Option<&ImperfectColumn>) -> Vec<String> {
     let mut notes = Vec::new();
-    if setup.imperfections == Imperfections::none() {
+    let true_seats = [&setup.bottom, &setup.top]
+        .iter()
+        .all(|support| support.tilt == 0.0 && support.offset == 0.0);
+    if setup.imperfections.is_perfect() && true_seats {
         notes.push(
             "No imperfection is given: the imperfect column is the perfect one on its branch. A \
              real spring bows earlier."

@@ -55,8 +55,8 @@ impl Column {
             across: across / length,
         };
         let mut column = Column::new(length, elements, &|_| section, &shape).with_levers(
-            lever(setup.bottom.arm, -across),
-            lever(setup.top.arm, across),
+            lever(setup.bottom.arm, across),
+            lever(setup.top.arm, -across),
         );
         let (lean, wedge, landed) = deviations.map_or((0.0, 0.0, 0.0), |d| {
             let landed = match d.sizes.top_position {

@@ -25,6 +25,7 @@ pub fn mark_title(key: &str) -> String {
         "branch_point" => "branch point of the path".to_string(),
         "largest_force" => "largest force".to_string(),
         "largest_travel" => "largest travel".to_string(),
+        "force_regained" => "rests again, same force".to_string(),
         "installed" => "installed".to_string(),
         "working" => "working point".to_string(),
         other => other.replace('_', " "),

@@ -152,6 +152,8 @@ pub struct Limit {
     pub governs: bool,
     /// Whether it lies beyond solid, so that the spring never gets there.
     pub beyond_solid: bool,
+    /// For a limit not found: how far the path is known, m, where that is short of solid.
+    pub looked_up_to_m: Option<Metre>,
     /// Which model it belongs to, and what was assumed, in words.
     pub note: String,
 }

@@ -33,7 +33,8 @@ pub struct Imperfections {
     pub bow: Metre,
     /// Shape of the stress-free bow.
     pub bow_shape: BowShape,
-    /// Distance of the line of load from the column's axis, m, the same at both ends.
+    /// Distance of the line of load from the column's axis, m, the same at both ends. Positive: the
+    /// axis lies on the side to which a positive bow bends, so that the two add up.
     pub eccentricity: Metre,
     /// Where the top of an out-of-square spring is held.
     pub top_position: TopPosition,

@@ -135,6 +135,7 @@ fn limit(name: LimitKind, at: Option<(f64, f64)>, note: &str) -> Limit {
         error_m: found.map(|_| 2.3e-12),
         governs: false,
         beyond_solid: false,
+        looked_up_to_m: None,
         note: note.into(),
     }
 }
