@@ -22,8 +22,10 @@ pub(super) struct Event {
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub(super) enum EventKind {
     Limit(LimitKind),
-    /// The force comes back up to the largest it had, in a stable state.
+    /// The force comes back up to the largest it had.
     ForceRegained,
+    /// The travel comes back up to the largest it had.
+    TravelRegained,
     Installed,
     Working,
     /// The working deflection with its tolerance.
@@ -103,16 +105,22 @@ impl Track<'_> {
             .iter()
             .filter_map(|watch| self.first(watch, 0))
             .collect();
-        // After a dead load is lost: where the same force is carried again.
-        let lost = events
-            .iter()
-            .find(|e| e.kind == limit(LimitKind::DeadLoadLost))
-            .map(|e| e.point.force_n);
-        if let Some(force) = lost
+        // After a load or a travel is lost: where the same is carried again.
+        let lost = |events: &[Event], kind: LimitKind| {
+            let lost = events.iter().find(|event| event.kind == limit(kind))?;
+            Some(lost.point)
+        };
+        if let Some(lost) = lost(&events, LimitKind::DeadLoadLost)
             && let Some(falling) = self.seen.iter().position(|s| s.along.0 < 0.0)
         {
-            let regained = Watch::state(EventKind::ForceRegained, |s| force - s.point.force_n);
-            events.extend(self.first(&regained, falling));
+            let again = move |s: &Seen| lost.force_n - s.point.force_n;
+            events.extend(self.first(&Watch::state(EventKind::ForceRegained, again), falling));
+        }
+        if let Some(lost) = lost(&events, LimitKind::TravelLost)
+            && let Some(falling) = self.seen.iter().position(|s| s.along.1 < 0.0)
+        {
+            let again = move |s: &Seen| lost.deflection_m - s.point.deflection_m;
+            events.extend(self.first(&Watch::state(EventKind::TravelRegained, again), falling));
         }
         events
     }

@@ -289,7 +289,8 @@ fn mark_name(loading: Loading, kind: EventKind) -> Option<&'static str> {
         (EventKind::Limit(LimitKind::TravelLost), Loading::Force) => "largest_travel",
         (EventKind::Limit(kind), _) => kind.key(),
         (EventKind::ForceRegained, Loading::Force) => "force_regained",
-        (EventKind::ForceRegained, Loading::Deflection) | (EventKind::LargestWorking, _) => {
+        (EventKind::TravelRegained, Loading::Deflection) => "travel_regained",
+        (EventKind::ForceRegained | EventKind::TravelRegained | EventKind::LargestWorking, _) => {
             return None;
         }
         (EventKind::Installed, _) => "installed",

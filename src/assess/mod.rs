@@ -2,11 +2,11 @@
 
 mod absolute;
 mod compare;
-mod dead_load;
 mod echo;
 mod events;
 mod formula;
 mod imperfect;
+mod jump;
 mod limits;
 mod observe;
 mod southwell;
@@ -30,7 +30,8 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
     let limits = limits::collect(setup, as_built.as_ref(), &imperfect);
     let comparisons = compare::all(setup, &closed_form, &straight);
     let absolute_stability = absolute::stability(setup, &closed_form, &straight);
-    let dead_load = dead_load::describe(setup, &imperfect);
+    let dead_load = jump::dead_load(setup, &imperfect);
+    let snap = jump::snap(setup, &imperfect);
     let decided = verdict::decide(setup, &limits, &imperfect);
     let imperfect_column = imperfect.summary(setup, &decided.limits);
     let mut warnings = setup.warnings.clone();
@@ -52,6 +53,7 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
         comparisons,
         limits: decided.limits,
         dead_load,
+        snap,
         absolute_stability,
         stress_at_solid: limits::stress_at_solid(setup),
         failures: imperfect.failures,

@@ -183,22 +183,44 @@ pub struct Comparison {
     pub sentence: String,
 }
 
-/// What happens under a dead load.
+/// What happens under a dead load. All `null` but the first two: the force rises along the path.
 #[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct DeadLoad {
-    /// The largest force the path carries, N; `null`: it rises up to solid.
+    /// How far the path is known, m, where it ends short of solid.
+    pub path_ends_at_m: Option<Metre>,
+    /// The largest force the path carries, N.
     pub lost_at_force_n: Option<Newton>,
     /// Deflection at which it is lost, m.
     pub lost_at_deflection_m: Option<Metre>,
-    /// Deflection at which the spring comes to rest under the same force, m; solid where
-    /// nothing else stops it.
+    /// Deflection at which the spring comes to rest under the same force, m.
     pub rests_at_deflection_m: Option<Metre>,
+    /// Whether it rests solid, for want of a stable state before.
+    pub rests_solid: bool,
     /// How far it jumps, m.
     pub jump_m: Option<Metre>,
-    /// Energy freed by the jump, J.
+    /// Energy freed by the jump, J: work of the load less the strain energy gained.
     pub energy_freed_j: Option<Joule>,
-    /// The same in a sentence.
-    pub sentence: String,
+    /// Whether coils clash on the way: from there on the column model is a guide only.
+    pub clash_on_the_way: bool,
+}
+
+/// What happens when a set deflection is lost: the spring snaps sideways, its travel held.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Snap {
+    /// Travel at which it snaps, m.
+    pub lost_at_deflection_m: Metre,
+    /// Force just before, N.
+    pub force_before_n: Newton,
+    /// Force in the next stable state at the same travel, N; `null`: none on the path.
+    pub force_after_n: Option<Newton>,
+    /// Bow just before, m.
+    pub bow_before_m: Metre,
+    /// Bow in that state, m.
+    pub bow_after_m: Option<Metre>,
+    /// Energy freed, J, soft seats included.
+    pub energy_freed_j: Option<Joule>,
+    /// Whether coils clash on the way: from there on the column model is a guide only.
+    pub clash_on_the_way: bool,
 }
 
 /// Absolute stability: no buckling at any deflection.
@@ -276,6 +298,8 @@ pub struct Assessment {
     pub limits: Vec<Limit>,
     /// Under a dead load; `null` where the duty sets the deflection.
     pub dead_load: Option<DeadLoad>,
+    /// Where a set deflection is lost; `null` where it is not, or under a dead load.
+    pub snap: Option<Snap>,
     /// Absolute stability.
     pub absolute_stability: AbsoluteStability,
     /// Wire stress at solid.

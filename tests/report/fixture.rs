@@ -365,16 +365,19 @@ pub fn assessment(shape: Shape) -> Assessment {
         limits,
         dead_load: if let Shape::Falling = shape {
             Some(DeadLoad {
+                path_ends_at_m: None,
+                rests_solid: true,
+                clash_on_the_way: true,
                 lost_at_force_n: Some(381.2),
                 lost_at_deflection_m: Some(0.04612),
                 rests_at_deflection_m: Some(SOLID),
                 jump_m: Some(SOLID - 0.04612),
                 energy_freed_j: Some(4.871),
-                sentence: "An invented jump.".into(),
             })
         } else {
             None
         },
+        snap: None,
         absolute_stability: AbsoluteStability {
             formula: Some(false),
             formula_below_m: Some(0.1032),
