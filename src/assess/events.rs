@@ -4,7 +4,7 @@ use super::observe::{Observer, Seen, Solved};
 use super::walk::BRACKET;
 use crate::column::Column;
 use crate::result::PathPoint;
-use crate::setup::{LimitKind, Setup};
+use crate::setup::{LimitKind, Loading, Setup};
 use crate::solve::{Newton, locate};
 
 /// An event on a path.
@@ -16,6 +16,13 @@ pub(super) struct Event {
     pub strain_energy: f64,
     /// Width of the last bracket, m of travel.
     pub bracket: f64,
+    /// Place along the path, in path points from its start.
+    pub place: f64,
+    /// Deflection, m, and force, N, of the spring as loaded when this happens: those of the point,
+    /// or those at which the jump starts that passes over it.
+    pub reached: (f64, f64),
+    /// Whether it happens in a jump.
+    pub in_jump: bool,
 }
 
 /// What happens.
@@ -122,6 +129,7 @@ impl Track<'_> {
             let again = move |s: &Seen| lost.deflection_m - s.point.deflection_m;
             events.extend(self.first(&Watch::state(EventKind::TravelRegained, again), falling));
         }
+        account_for_jump(duty.loading, &mut events);
         events
     }
 
@@ -129,13 +137,13 @@ impl Track<'_> {
     fn first(&mut self, watch: &Watch<'_>, from: usize) -> Option<Event> {
         let value = |i: usize| (watch.function)(&self.seen[i]);
         if from == 0 && !self.seen.is_empty() && value(0) <= 0.0 {
-            return Some(self.event(watch.kind, &self.points[0], 0.0));
+            return Some(self.event(watch.kind, &self.points[0], 0.0, 0.0));
         }
         let after = (from..self.seen.len().saturating_sub(1))
             .find(|i| value(*i) > 0.0 && value(i + 1) <= 0.0)?;
         if watch.of_direction && self.corners.contains(&after) {
             // The slope jumps at the corner itself.
-            return Some(self.event(watch.kind, &self.points[after], 0.0));
+            return Some(self.event(watch.kind, &self.points[after], 0.0, after as f64));
         }
         // The observer looks at states of a column like this one: a copy serves inside the search.
         let watched = self.column.clone();
@@ -148,15 +156,42 @@ impl Track<'_> {
             BRACKET,
             |point| (watch.function)(&observer.see(setup, &watched, point)),
         )?;
-        Some(self.event(watch.kind, &found.point, found.bracket))
+        let place = after as f64 + found.distance / self.points[after].distance;
+        Some(self.event(watch.kind, &found.point, found.bracket, place))
     }
 
-    fn event(&self, kind: EventKind, solved: &Solved, width: f64) -> Event {
+    fn event(&self, kind: EventKind, solved: &Solved, width: f64, place: f64) -> Event {
+        let point = self.observer.see(self.setup, self.column, solved).point;
         Event {
             kind,
-            point: self.observer.see(self.setup, self.column, solved).point,
+            point,
             strain_energy: self.column.strain_energy(&solved.state) * self.column.scale.moment(),
             bracket: width.abs() * self.column.scale.length,
+            place,
+            reached: (point.deflection_m, point.force_n),
+            in_jump: false,
+        }
+    }
+}
+
+/// Gives what lies in the jump of a lost load or travel the deflection and force at which that
+/// jump starts: the path in between is never rested on.
+fn account_for_jump(loading: Loading, events: &mut [Event]) {
+    let (lost, regained) = match loading {
+        Loading::Force => (LimitKind::DeadLoadLost, EventKind::ForceRegained),
+        Loading::Deflection => (LimitKind::TravelLost, EventKind::TravelRegained),
+    };
+    let find = |kind: EventKind| events.iter().find(|event| event.kind == kind).cloned();
+    let Some(lost) = find(EventKind::Limit(lost)) else {
+        return;
+    };
+    let end = find(regained).map_or(f64::INFINITY, |event| event.place);
+    for event in events {
+        let limit = matches!(event.kind, EventKind::Limit(_)) && event.kind != lost.kind;
+        if limit && event.place >= lost.place && event.place < end {
+            event.reached = lost.reached;
+            event.bracket = lost.bracket;
+            event.in_jump = true;
         }
     }
 }

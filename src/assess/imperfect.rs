@@ -5,10 +5,10 @@ use super::MESHES;
 use super::events::{Event, EventKind, Track};
 use super::observe::{Observer, Seen};
 use super::southwell;
-use super::straight::measure;
+use super::straight::{FLOOR, measure};
 use super::walk::walk;
 use crate::column::{Column, Deviations, Idealisation, StraightScan};
-use crate::result::{Computed, Failure, ImperfectColumn, Limit, Mark, Path, Southwell};
+use crate::result::{Computed, Failure, ImperfectColumn, Limit, Mark, Path, PathPoint, Southwell};
 use crate::setup::{LimitKind, Loading, Restraint, Setup};
 use crate::solve::{Newton, System, start};
 
@@ -62,7 +62,7 @@ impl Run {
     /// How near the nearest limit is to what is needed of it: needed over reached, the largest.
     fn severity(&self, setup: &Setup) -> f64 {
         let limits = self.events.iter().filter_map(|event| match event.kind {
-            EventKind::Limit(kind) => Some(setup.duty.needed(kind) / event.point.deflection_m),
+            EventKind::Limit(kind) => Some(setup.duty.needed(kind) / event.reached.0),
             _ => None,
         });
         let bow = self
@@ -78,7 +78,7 @@ impl Run {
         self.events.iter().find(|event| event.kind == kind)
     }
 
-    /// Bow and stress at that travel on the way up, by the path point nearest below and above.
+    /// Travel of the last point, m.
     fn last_deflection(&self) -> Option<f64> {
         self.seen.last().map(|seen| seen.point.deflection_m)
     }
@@ -163,14 +163,11 @@ impl Imperfect {
             // Only one mesh has the event: near the end of the path. The end is as far as it goes.
             || {
                 let end = self.coarse.last_deflection().unwrap_or(0.0);
-                (end - fine.point.deflection_m).abs()
+                (end - fine.reached.0).abs()
             },
-            |coarse| (coarse.point.deflection_m - fine.point.deflection_m).abs(),
+            |coarse| (coarse.reached.0 - fine.reached.0).abs(),
         );
-        Some((
-            fine,
-            difference + fine.bracket + 1e-11 * fine.point.deflection_m,
-        ))
+        Some((fine, difference + fine.bracket + FLOOR * fine.reached.0))
     }
 
     /// Travel up to which the path is known on both meshes, m.
@@ -192,6 +189,25 @@ impl Imperfect {
                 (last.shortening_m < solid).then_some(last.deflection_m)
             }
         }
+    }
+
+    /// Lowest share of the lost travel, or of the lost dead load, at which a bowed state stands
+    /// beside the one the spring is in: from there on a knock can throw it over.
+    pub fn knocked_over_from(&self, setup: &Setup) -> Option<f64> {
+        let (kind, value): (LimitKind, fn(&PathPoint) -> f64) = match setup.duty.loading {
+            Loading::Force => (LimitKind::DeadLoadLost, |point| point.force_n),
+            Loading::Deflection => (LimitKind::TravelLost, |point| point.deflection_m),
+        };
+        let lost = self.fine.event(EventKind::Limit(kind))?;
+        let lowest = self
+            .fine
+            .seen
+            .iter()
+            .skip(lost.place.ceil() as usize)
+            .map(|seen| value(&seen.point))
+            .fold(f64::INFINITY, f64::min);
+        let share = lowest / value(&lost.point);
+        (share < 1.0).then_some(share)
     }
 
     /// What is told of the imperfect column.

@@ -129,8 +129,12 @@ fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
         Some((event, error)) => limit(
             setup,
             kind,
-            Some((event.point.deflection_m, event.point.force_n, Some(error))),
-            meaning,
+            Some((event.reached.0, event.reached.1, Some(error))),
+            if event.in_jump {
+                format!("{meaning}; reached in the jump that starts here")
+            } else {
+                meaning
+            },
         ),
         None => Limit {
             looked_up_to_m: imperfect.ends_before_solid(setup),
@@ -165,7 +169,11 @@ pub(super) fn stress_at_solid(setup: &Setup) -> StressAtSolid {
 }
 
 /// What a reader must know of the models used on this case.
-pub(super) fn assumptions(setup: &Setup, column: Option<&ImperfectColumn>) -> Vec<String> {
+pub(super) fn assumptions(
+    setup: &Setup,
+    column: Option<&ImperfectColumn>,
+    imperfect: &Imperfect,
+) -> Vec<String> {
     let mut notes = Vec::new();
     let true_seats = [&setup.bottom, &setup.top]
         .iter()
@@ -190,6 +198,17 @@ pub(super) fn assumptions(setup: &Setup, column: Option<&ImperfectColumn>) -> Ve
              practice, no source)."
                 .to_owned(),
         );
+    }
+    if let Some(share) = imperfect.knocked_over_from(setup) {
+        let what = match setup.duty.loading {
+            Loading::Force => "load",
+            Loading::Deflection => "travel",
+        };
+        notes.push(format!(
+            "From {:.1} % of the lost {what} on, a bowed state stands beside the one the spring is \
+             in: a knock can throw it over before the {what} is lost.",
+            100.0 * share
+        ));
     }
     if let Some(column) = column
         && let Some(sign) = &column.worse_parallelism_sign

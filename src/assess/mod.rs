@@ -35,7 +35,11 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
     let decided = verdict::decide(setup, &limits, &imperfect);
     let imperfect_column = imperfect.summary(setup, &decided.limits);
     let mut warnings = setup.warnings.clone();
-    warnings.extend(limits::assumptions(setup, imperfect_column.as_ref()));
+    warnings.extend(limits::assumptions(
+        setup,
+        imperfect_column.as_ref(),
+        &imperfect,
+    ));
     Assessment {
         title: setup.title.clone(),
         file: file.to_owned(),

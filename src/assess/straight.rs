@@ -19,8 +19,8 @@ pub(super) struct Critical {
     pub straightens_again: Option<Metre>,
 }
 
-/// Share of the value below which refining a singular point is round-off.
-const FLOOR: f64 = 1e-11;
+/// Share of a deflection below which refining it is round-off.
+pub(super) const FLOOR: f64 = 1e-11;
 
 /// What the machine travels more than the spring shortens, per newton: its seats' axial compliance.
 pub(super) fn seat_compliance(setup: &Setup) -> f64 {
