@@ -47,8 +47,8 @@ impl<'a> StraightScan<'a> {
         let newton = Newton::new(column);
         let compliance = column.axial_compliance();
         let first = column.elements[0].points[0];
-        let ratio = first.axial_compliance / first.shear_compliance;
-        let peak = ratio / (2.0 * (ratio - 1.0));
+        // C1 = 1/(2m), m = 1 − EA/GA; written so that GA may be infinite.
+        let peak = 0.5 / (1.0 - first.shear_compliance / first.axial_compliance);
         StraightScan {
             column,
             newton,

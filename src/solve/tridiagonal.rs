@@ -9,14 +9,15 @@
 //! and the number of negative eigenvalues is the sum over the D_i (Sylvester). Where the leading
 //! part of the matrix is itself nearly singular, D_i is, and (1) would lose digits although the
 //! whole matrix is harmless. There the rows i and i+1 are taken together as one pivot of twice the
-//! size (2), which is singular only where the next leading part is singular too.
+//! size (2), which is singular only where the next leading part is singular too. Where both are
+//! nearly so, the one farther from singular is divided by.
 
-use super::pivots::{self, Pivot};
+use super::pivots::{self, Found, Pivot};
 use super::{SymmetricFactor, unknowns::dot};
 use nalgebra::{SMatrix, SVector};
 
 /// Growth of an eliminated block over the block it is taken from, beyond which two block rows
-/// are joined to one pivot: costs at most this many times the round-off.
+/// are joined to one pivot where that grows less: costs that many times the round-off.
 const GROWTH: f64 = 1e3;
 
 /// A symmetric block-tridiagonal matrix.
@@ -142,33 +143,44 @@ impl<const B: usize> Factorisation<B> {
             let mut ahead = *coupling;
             pivot.solve_columns(&mut ahead);
             let taken = coupling.tr_mul(&ahead);
-            if taken.amax() <= GROWTH * (matrix.diagonal[i + 1].amax() + coupling.amax()) {
-                self.negatives += pivot.negatives;
-                self.pivots[i] = pivot;
-                self.rows[i] = Row::Alone;
-                self.ahead[i] = ahead;
-                block = matrix.diagonal[i + 1] - taken;
-                i += 1;
-                continue;
+            let alone = taken.amax() / (matrix.diagonal[i + 1].amax() + coupling.amax());
+            if alone > GROWTH {
+                let found = self.factor_pair(i, &block, coupling, &matrix.diagonal[i + 1]);
+                if i + 2 == n {
+                    self.negatives += found.negatives;
+                    self.smallest_pivot = found.smallest_pivot;
+                    return;
+                }
+                let (coupling, next) = (&matrix.right[i + 1], &matrix.diagonal[i + 2]);
+                let taken = self.pair_ahead(i, coupling);
+                let together = taken.amax() / (next.amax() + coupling.amax());
+                // Where the pair is nearer to singular than the first row alone, that row is the
+                // lesser evil, and its neighbour makes a better pair.
+                if together <= alone {
+                    self.negatives += found.negatives;
+                    block = next - taken;
+                    i += 2;
+                    continue;
+                }
+                self.pairs.count -= 1;
             }
-            let smallest = self.factor_pair(i, &block, coupling, &matrix.diagonal[i + 1]);
-            if i + 2 == n {
-                self.smallest_pivot = smallest;
-                return;
-            }
-            block = matrix.diagonal[i + 2] - self.pair_ahead(i, &matrix.right[i + 1]);
-            i += 2;
+            self.negatives += pivot.negatives;
+            self.pivots[i] = pivot;
+            self.rows[i] = Row::Alone;
+            self.ahead[i] = ahead;
+            block = matrix.diagonal[i + 1] - taken;
+            i += 1;
         }
     }
 
-    /// Equation (2): the pivot [[D, C], [Cᵀ, A]] of rows i and i+1. Returns its smallest pivot.
+    /// Equation (2): the pivot [[D, C], [Cᵀ, A]] of rows i and i+1.
     fn factor_pair(
         &mut self,
         i: usize,
         block: &SMatrix<f64, B, B>,
         coupling: &SMatrix<f64, B, B>,
         next: &SMatrix<f64, B, B>,
-    ) -> f64 {
+    ) -> Found {
         let (size, number) = (2 * B, self.pairs.count);
         let entries = &mut self.pairs.entries[number * size * size..(number + 1) * size * size];
         for column in 0..B {
@@ -186,11 +198,10 @@ impl<const B: usize> Factorisation<B> {
             &mut self.pairs.kinds[places.clone()],
             &mut self.pairs.order[places],
         );
-        self.negatives += found.negatives;
         self.pairs.count += 1;
         self.rows[i] = Row::FirstOfPair(number);
         self.rows[i + 1] = Row::SecondOfPair;
-        found.smallest_pivot
+        found
     }
 
     /// X of a pair at rows i, i+1, from the coupling of row i+1 to i+2; returns Cᵀ X.

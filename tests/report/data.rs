@@ -89,6 +89,7 @@ fn quantities_end_in_their_unit() {
         "r_squared",
         "points",
         "elements",
+        "orientations_tried",
         "relative_difference",
         "bow_place",
         "line",
