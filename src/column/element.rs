@@ -250,6 +250,26 @@ impl ElementForms {
         matrix
     }
 
+    /// Right-hand sides of the condensation, one a row, against the inner unknowns: the inner
+    /// rows' columns of x_B − x_A, y_B − y_A, θ_A, θ_B, and the inner residual. Only those
+    /// differences of position appear.
+    #[inline(always)]
+    pub(super) fn inner_right(&self) -> SMatrix<f64, 5, INNER> {
+        let mut right = SMatrix::zeros();
+        for k in 0..3 {
+            right[(2, k)] = self.bending[2 + k][0];
+            right[(3, k)] = self.bending[2 + k][1];
+            right[(4, k)] = self.moment[2 + k];
+        }
+        for axis in 0..2 {
+            right[(axis, 3 + axis)] = 1.0;
+            right[(2, 3 + axis)] = self.coupling[0][axis];
+            right[(3, 3 + axis)] = self.coupling[1][axis];
+            right[(4, 3 + axis)] = self.gap[axis];
+        }
+        right
+    }
+
     /// Inner part of the residual.
     #[inline(always)]
     pub(super) fn inner_residual(&self) -> SVector<f64, INNER> {

@@ -4,6 +4,10 @@
 //! that neither a zero on the diagonal nor an indefinite matrix spoils the accuracy. By Sylvester's
 //! law the number of negative eigenvalues of A is that of D.
 //!
+//! Most matrices need no interchange at all: every diagonal entry in turn passes the test of the
+//! pivoting as it stands. Those take a plain path of fixed length, without branches; the first
+//! failed test sends the matrix down the general one. The pivots are the same on both.
+//!
 //! Source: Bunch & Kaufman, Math. Comp. 31 (1977) 163–179; Golub & Van Loan, Matrix
 //! Computations, section on symmetric indefinite systems (both from memory).
 
@@ -15,7 +19,10 @@ const ALPHA: f64 = 0.640_388_203_202_208_1;
 /// Factor of a symmetric N×N matrix.
 #[derive(Clone, Copy, Debug)]
 pub struct SymmetricFactor<const N: usize> {
+    /// L below the diagonal; on it 1/D if the factor is plain, D if not.
     lower: SMatrix<f64, N, N>,
+    /// Without interchanges and 2×2 pivots; `kinds` and `order` are then not used.
+    plain: bool,
     kinds: [Pivot; N],
     order: [u8; N],
     /// Number of negative eigenvalues.
@@ -48,12 +55,64 @@ impl<const N: usize> SymmetricFactor<N> {
     /// the round-off of the matrix, so that solving stays finite; `smallest_pivot` tells.
     #[inline]
     pub fn new(matrix: &SMatrix<f64, N, N>) -> Self {
+        let factor = Self::without_interchange(matrix);
+        if factor.plain {
+            factor
+        } else {
+            Self::with_interchanges(matrix)
+        }
+    }
+
+    /// The factor with every pivot taken where it stands; `plain` tells whether that was right.
+    #[inline(always)]
+    fn without_interchange(matrix: &SMatrix<f64, N, N>) -> Self {
+        let mut lower = *matrix;
+        let a = &mut lower.data.0;
+        let mut largest = f64::MIN_POSITIVE;
+        for (j, column) in a.iter().enumerate() {
+            for entry in &column[j..] {
+                largest = larger(largest, entry.abs());
+            }
+        }
+        let mut plain = true;
+        let mut negatives = 0;
+        let mut smallest = f64::INFINITY;
+        for k in 0..N {
+            let pivot = a[k][k];
+            let size = pivot.abs();
+            let inverse = 1.0 / pivot;
+            negatives += u32::from(pivot < 0.0);
+            smallest = if size < smallest { size } else { smallest };
+            let column = a[k];
+            for j in k + 1..N {
+                plain &= size >= ALPHA * column[j].abs();
+                let factor = column[j] * inverse;
+                a[k][j] = factor;
+                for i in j..N {
+                    a[j][i] -= column[i] * factor;
+                }
+            }
+            a[k][k] = inverse;
+        }
+        SymmetricFactor {
+            lower,
+            plain: plain && smallest >= largest * f64::EPSILON,
+            kinds: [Pivot::Single; N],
+            order: [0; N],
+            negatives,
+            smallest_pivot: smallest / largest,
+        }
+    }
+
+    #[cold]
+    fn with_interchanges(matrix: &SMatrix<f64, N, N>) -> Self {
         let mut lower = *matrix;
         let mut kinds = [Pivot::Single; N];
         let mut order = [0; N];
         let found = factor(lower.as_mut_slice(), N, &mut kinds, &mut order);
         SymmetricFactor {
             lower,
+            plain: false,
             kinds,
             order,
             negatives: found.negatives,
@@ -69,22 +128,72 @@ impl<const N: usize> SymmetricFactor<N> {
     /// Solves `A x = b` in place.
     #[inline]
     pub fn solve(&self, b: &mut SVector<f64, N>) {
-        solve(
-            self.lower.as_slice(),
-            N,
-            &self.kinds,
-            &self.order,
-            b.as_mut_slice(),
-        );
-    }
-
-    /// Solves `A X = B` in place, column by column.
-    #[inline]
-    pub fn solve_columns<const M: usize>(&self, b: &mut SMatrix<f64, N, M>) {
-        for column in b.as_mut_slice().chunks_exact_mut(N) {
-            solve(self.lower.as_slice(), N, &self.kinds, &self.order, column);
+        if self.plain {
+            self.solve_plain(b);
+        } else {
+            self.solve_general(b.as_mut_slice());
         }
     }
+
+    /// Solves `A X = B` in place for M right-hand sides. Each is a *row* of `b`, its transpose:
+    /// so they lie side by side in memory and are solved together.
+    #[inline]
+    pub fn solve_rows<const M: usize>(&self, b: &mut SMatrix<f64, M, N>) {
+        if self.plain {
+            let (l, b) = (&self.lower.data.0, &mut b.data.0);
+            for k in 0..N {
+                let known = b[k];
+                for i in k + 1..N {
+                    for m in 0..M {
+                        b[i][m] -= l[k][i] * known[m];
+                    }
+                }
+            }
+            for k in (0..N).rev() {
+                for m in 0..M {
+                    b[k][m] *= l[k][k];
+                }
+                for i in k + 1..N {
+                    for m in 0..M {
+                        b[k][m] -= l[k][i] * b[i][m];
+                    }
+                }
+            }
+        } else {
+            for mut row in b.row_iter_mut() {
+                let mut column = row.transpose();
+                self.solve_general(column.as_mut_slice());
+                row.copy_from(&column.transpose());
+            }
+        }
+    }
+
+    #[inline(always)]
+    fn solve_plain(&self, b: &mut SVector<f64, N>) {
+        let (l, b) = (&self.lower.data.0, &mut b.data.0[0]);
+        for k in 0..N {
+            for i in k + 1..N {
+                b[i] -= l[k][i] * b[k];
+            }
+        }
+        for k in (0..N).rev() {
+            b[k] *= l[k][k];
+            for i in k + 1..N {
+                b[k] -= l[k][i] * b[i];
+            }
+        }
+    }
+
+    #[cold]
+    fn solve_general(&self, b: &mut [f64]) {
+        solve(self.lower.as_slice(), N, &self.kinds, &self.order, b);
+    }
+}
+
+/// The larger of two numbers that are not NaN.
+#[inline(always)]
+fn larger(a: f64, b: f64) -> f64 {
+    if b > a { b } else { a }
 }
 
 /// Factors the lower triangle of the n×n matrix `a` (column by column) in place.
