@@ -29,7 +29,9 @@ impl System<3, INNER> for Column {
             let mut answers = right;
             factor.solve_rows(&mut answers);
             let taken = |row: usize, other: usize| -> f64 {
-                (0..INNER).map(|k| right[(row, k)] * answers[(other, k)]).sum()
+                (0..INNER)
+                    .map(|k| right[(row, k)] * answers[(other, k)])
+                    .sum()
             };
             // Rows of `right` for the differences of position have a single entry, 1.
             let (xx, xy, yy) = (answers[(0, 3)], answers[(0, 4)], answers[(1, 4)]);
@@ -42,8 +44,7 @@ impl System<3, INNER> for Column {
             out.residual[e] += Vector3::new(-fx, -fy, forms.moment[0] - taken(2, 4));
             out.residual[e + 1] += Vector3::new(fx, fy, forms.moment[1] - taken(3, 4));
             out.tangent.diagonal[e] += Matrix3::new(-xx, -xy, xa, -xy, -yy, ya, xa, ya, aa);
-            out.tangent.diagonal[e + 1] +=
-                Matrix3::new(-xx, -xy, -xb, -xy, -yy, -yb, -xb, -yb, bb);
+            out.tangent.diagonal[e + 1] += Matrix3::new(-xx, -xy, -xb, -xy, -yy, -yb, -xb, -yb, bb);
             out.tangent.right[e] = Matrix3::new(xx, xy, xb, xy, yy, yb, -xa, -ya, ab);
             self.inner_answers[e] = answers;
         }
