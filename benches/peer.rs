@@ -23,8 +23,8 @@ const RATIO: f64 = 2.6;
 const TILT: f64 = 0.02;
 /// Elements of the Newton step.
 const STEP_ELEMENTS: usize = 64;
-/// Load of the state at which the step is taken, in EI/L²: past bow-out.
-const STEP_LOAD: f64 = 10.0;
+/// Points of the path.
+const POINTS: usize = 30;
 
 /// Round spring column, clamped, the top seat tilted; lengths in mean diameters.
 fn column(elements: usize) -> Column {
@@ -60,6 +60,20 @@ fn median_seconds(repeats: usize, batch: usize, mut call: impl FnMut()) -> f64 {
     times[repeats / 2]
 }
 
+/// Points of the path of the tilted column, from no load through bow-out.
+fn follow_tilted(column: &mut Column, newton: &mut Newton<3, 5>) -> Vec<PathPoint<3, 5>> {
+    let settings = PathSettings {
+        first_step: 0.05,
+        largest_step: 0.1,
+        most_points: POINTS,
+        ..PathSettings::default()
+    };
+    let guess = column.first_guess();
+    let mut points: Vec<_> = start(column, newton, &guess, 0.0).into_iter().collect();
+    let _ended = follow(column, newton, &mut points, &settings, |_| false);
+    points
+}
+
 fn main() -> Result<(), Box<dyn Error>> {
     let arguments: Vec<String> = std::env::args().skip(1).collect();
     match arguments.iter().map(String::as_str).collect::<Vec<_>>()[..] {
@@ -76,17 +90,17 @@ fn main() -> Result<(), Box<dyn Error>> {
 fn step(directory: &Path) -> Result<(), Box<dyn Error>> {
     let mut column = column(STEP_ELEMENTS);
     let mut newton = Newton::new(&column);
-    let mut state = column.first_guess();
-    newton
-        .solve_at_load(&mut column, &mut state, STEP_LOAD)
-        .map_err(|failed| format!("{failed:?}"))?;
+    let last = follow_tilted(&mut column, &mut newton)
+        .pop()
+        .ok_or("no path")?;
+    let (mut state, load) = (last.state, last.load);
     let rows = STEP_ELEMENTS + 1;
     let mut assembled = Assembled::zero(STEP_ELEMENTS);
     let mut factor = Factorisation::with_rows(rows);
 
     // Answer of the column to its load pattern at this state: the right-hand side to compare on.
     let mut answer = state.clone();
-    column.assemble(&state, STEP_LOAD, &mut assembled);
+    column.assemble(&state, load, &mut assembled);
     factor.factor(&assembled.tangent);
     answer.nodes.copy_from_slice(column.load_pattern());
     factor.solve(&mut answer.nodes);
@@ -106,14 +120,14 @@ fn step(directory: &Path) -> Result<(), Box<dyn Error>> {
     write(directory, "condensed_answer", &nodes)?;
 
     let assemble = median_seconds(200, 20, || {
-        column.assemble(black_box(&state), STEP_LOAD, &mut assembled);
+        column.assemble(black_box(&state), load, &mut assembled);
     });
     let factored = median_seconds(200, 20, || factor.factor(black_box(&assembled.tangent)));
     let mut right = assembled.residual.clone();
     let solved = median_seconds(200, 20, || factor.solve(black_box(&mut right)));
     let mut moved = state.clone();
     let whole = median_seconds(200, 20, || {
-        column.assemble(black_box(&state), STEP_LOAD, &mut assembled);
+        column.assemble(black_box(&state), load, &mut assembled);
         factor.factor(&assembled.tangent);
         for (step, residual) in moved.nodes.iter_mut().zip(&assembled.residual) {
             *step = -residual;
@@ -178,25 +192,13 @@ fn write(directory: &Path, name: &str, values: &[f64]) -> std::io::Result<()> {
 }
 
 /// Follows the tilted column through bow-out with `elements` elements: time per point, and at
-/// each point what it weighs against: shortening, load, and the sideways position at quarters.
+/// each point its shortening, force and moment at the bottom, and the sideways position at four
+/// stations an element.
 fn path(elements: usize) -> Result<(), Box<dyn Error>> {
     let mut column = column(elements);
-    let settings = PathSettings {
-        first_step: 0.05,
-        largest_step: 0.1,
-        most_points: 25,
-        ..PathSettings::default()
-    };
     let mut newton = Newton::new(&column);
-    let guess = column.first_guess();
-    let mut points: Vec<PathPoint<3, 5>> = Vec::new();
-    let seconds = median_seconds(51, 1, || {
-        points.clear();
-        if let Ok(first) = start(&mut column, &mut newton, &guess, 0.0) {
-            points.push(first);
-            let _ended = follow(&mut column, &mut newton, &mut points, &settings, |_| false);
-        }
-    });
+    let mut points = Vec::new();
+    let seconds = median_seconds(51, 1, || points = follow_tilted(&mut column, &mut newton));
     let mut stations = Vec::new();
     let rows: Vec<_> = points
         .iter()
@@ -206,7 +208,7 @@ fn path(elements: usize) -> Result<(), Box<dyn Error>> {
             let last = stations[stations.len() - 1];
             json!({
                 "shortening": 1.0 - last.x,
-                "load": point.load,
+                // The bottom section does not turn: its N, Q are F_x, F_y.
                 "force": [stations[0].axial_force, stations[0].shear_force],
                 "moment": stations[0].moment,
                 "aside": aside,
@@ -215,7 +217,11 @@ fn path(elements: usize) -> Result<(), Box<dyn Error>> {
         .collect();
     println!(
         "{}",
-        json!({ "elements": elements, "seconds": seconds, "points": rows })
+        json!({
+            "elements": elements,
+            "seconds_per_point": seconds / points.len() as f64,
+            "points": rows,
+        })
     );
     Ok(())
 }
