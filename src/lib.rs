@@ -5,10 +5,15 @@
 //! Data goes one way: case file → [`setup`] → model → solve → [`result`] → report.
 
 pub mod assess;
+pub mod case;
+pub mod cli;
 pub mod column;
 pub mod criteria;
+pub mod report;
 pub mod result;
 pub mod setup;
 pub mod solve;
 pub mod spring;
+pub mod store;
+pub mod study;
 pub mod units;

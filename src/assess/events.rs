@@ -26,6 +26,8 @@ pub(super) enum EventKind {
     ForceRegained,
     Installed,
     Working,
+    /// The working deflection with its tolerance.
+    LargestWorking,
 }
 
 /// A path to look for events on.
@@ -91,6 +93,9 @@ impl Track<'_> {
                 duty.installed_deflection - s.point.deflection_m
             }),
             Watch::state(EventKind::Working, |s| {
+                duty.working_deflection - s.point.deflection_m
+            }),
+            Watch::state(EventKind::LargestWorking, |s| {
                 duty.largest_working_deflection() - s.point.deflection_m
             }),
         ];

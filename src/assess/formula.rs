@@ -1,9 +1,9 @@
 //! What the handbook's formula says of the case.
 
 use super::straight::{is_beyond_solid, measure, seat_compliance};
-use crate::criteria::{critical_share, end_constants, stable_below};
+use crate::criteria::{EndConstant, HandbookEnd, critical_share, end_constants, stable_below};
 use crate::result::{ClosedForm, ClosedFormCurve};
-use crate::setup::Setup;
+use crate::setup::{Restraint, Setup, Support};
 
 const FORMULA: &str = "critical deflection C1(1 - sqrt(1 - C2/(alpha L0/D)^2)), EN 13906-1 \
     buckling clause (from memory) and Shigley, Mechanical Engineering Design (seen)";
@@ -14,8 +14,8 @@ pub(super) fn closed_form(setup: &Setup) -> ClosedForm {
     let spring = &setup.spring;
     let length = spring.free_length;
     let section = spring.section(length);
-    let curves: Vec<ClosedFormCurve> = end_constants(&setup.bottom, &setup.top)
-        .into_iter()
+    let curves: Vec<ClosedFormCurve> = constants(setup)
+        .iter()
         .map(|constant| {
             let critical = critical_share(&section, constant.value * length).map(|share| {
                 let force = spring.rate() * share * length;
@@ -49,5 +49,24 @@ pub(super) fn closed_form(setup: &Setup) -> ClosedForm {
         critical_deflection_m: curves.first().and_then(|c| c.critical_deflection_m),
         curves,
         note,
+    }
+}
+
+/// The end constants that cover the case; none for elastic ends.
+fn constants(setup: &Setup) -> &'static [EndConstant] {
+    match (handbook_end(&setup.bottom), handbook_end(&setup.top)) {
+        (Some(bottom), Some(top)) => end_constants(bottom, top),
+        _ => &[],
+    }
+}
+
+/// The support as the handbooks know it. An arm matters where the end can turn about its pivot.
+fn handbook_end(support: &Support) -> Option<HandbookEnd> {
+    match (support.rotation, support.sideways) {
+        (Restraint::Held, Restraint::Held) => Some(HandbookEnd::Clamped),
+        (Restraint::Held, Restraint::Free) => Some(HandbookEnd::Sliding),
+        (Restraint::Free, Restraint::Held) if support.arm == 0.0 => Some(HandbookEnd::Hinged),
+        (Restraint::Free, Restraint::Free) if support.arm == 0.0 => Some(HandbookEnd::Free),
+        _ => None,
     }
 }

@@ -9,7 +9,7 @@ use super::straight::measure;
 use super::walk::walk;
 use crate::column::{Column, Deviations, Idealisation, StraightScan};
 use crate::result::{Computed, Failure, ImperfectColumn, Limit, Mark, Path, Southwell};
-use crate::setup::{LimitKind, Restraint, Setup};
+use crate::setup::{LimitKind, Loading, Restraint, Setup};
 use crate::solve::{Newton, start};
 
 /// A path on one mesh.
@@ -185,8 +185,13 @@ impl Imperfect {
         let first = limits
             .iter()
             .find(|limit| own.contains(&limit.name) && limit.deflection_m.is_some());
-        let working = self.event(EventKind::Working).map(|(event, _)| event);
-        let coarse_bow = self.coarse.event(EventKind::Working).map(|e| e.point.bow_m);
+        let working = self
+            .event(EventKind::LargestWorking)
+            .map(|(event, _)| event);
+        let coarse_bow = self
+            .coarse
+            .event(EventKind::LargestWorking)
+            .map(|e| e.point.bow_m);
         Some(ImperfectColumn {
             first_limit: first.and_then(|limit| {
                 Some(Computed {
@@ -230,19 +235,15 @@ impl Imperfect {
     }
 
     fn path(&self, setup: &Setup) -> Path {
-        let name = |kind: EventKind| match kind {
-            EventKind::Limit(kind) => kind.key(),
-            EventKind::ForceRegained => "force_regained",
-            EventKind::Installed => "installed",
-            EventKind::Working => "working",
-        };
         let mut marks: Vec<Mark> = self
             .fine
             .events
             .iter()
-            .map(|event| Mark {
-                name: name(event.kind).to_owned(),
-                point: event.point,
+            .filter_map(|event| {
+                Some(Mark {
+                    name: mark_name(setup.duty.loading, event.kind)?.to_owned(),
+                    point: event.point,
+                })
             })
             .collect();
         marks.extend(self.fine.corners.iter().map(|index| Mark {
@@ -256,4 +257,19 @@ impl Imperfect {
             branch: self.branch(setup),
         }
     }
+}
+
+/// Name of an event as a mark on the path: a limit's key where the limit applies to this duty.
+fn mark_name(loading: Loading, kind: EventKind) -> Option<&'static str> {
+    Some(match (kind, loading) {
+        (EventKind::Limit(LimitKind::DeadLoadLost), Loading::Deflection) => "largest_force",
+        (EventKind::Limit(LimitKind::TravelLost), Loading::Force) => "largest_travel",
+        (EventKind::Limit(kind), _) => kind.key(),
+        (EventKind::ForceRegained, Loading::Force) => "force_regained",
+        (EventKind::ForceRegained, Loading::Deflection) | (EventKind::LargestWorking, _) => {
+            return None;
+        }
+        (EventKind::Installed, _) => "installed",
+        (EventKind::Working, _) => "working",
+    })
 }

@@ -11,8 +11,9 @@ use crate::solve::{Newton, Outcome, PathSettings, branch_point, crosses_another,
 const LARGEST_ROTATION: f64 = 1.5;
 /// Width of an event's last bracket along the path, of order-one unknowns.
 pub(super) const BRACKET: f64 = 1e-11;
-/// First step on a branch: so short that the slope there is that at the branch point.
-const FIRST_ON_BRANCH: f64 = 1e-4;
+/// First step on a branch: so short that the slope there is that at the branch point but for its
+/// square, and so long that the slope is far above round-off.
+const FIRST_ON_BRANCH: f64 = 2e-3;
 /// Branch points turned at before the path is left as it is.
 const MOST_BRANCHES: usize = 4;
 
@@ -65,9 +66,7 @@ pub(super) fn walk(
                 };
                 points.pop();
                 points[after].distance = found.located.distance;
-                let mut incoming = found.located.point.clone();
-                incoming.negatives = points[after].negatives;
-                branches.push((points.len(), incoming));
+                branches.push((points.len(), found.located.point.clone()));
                 points.push(found.turned(sideways(&found.mode).signum()));
                 settings.first_step = FIRST_ON_BRANCH;
             }

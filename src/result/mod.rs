@@ -4,7 +4,9 @@
 
 mod assessment;
 mod echo;
+mod outcome;
 mod path;
+mod wires;
 
 pub use assessment::{
     AbsoluteStability, Assessment, ClosedForm, ClosedFormCurve, Comparison, Computed, DeadLoad,
@@ -12,4 +14,8 @@ pub use assessment::{
     Verdict,
 };
 pub use echo::{DutyEcho, ImperfectionEcho, SpringEcho, SupportEcho, SupportsEcho};
+pub use outcome::{Mistake, Outcome, Refusal};
 pub use path::{Mark, Path, PathPoint};
+pub use wires::{WireMaterial, wire_materials};
+
+pub use crate::setup::LimitKind;

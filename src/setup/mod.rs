@@ -41,12 +41,13 @@ impl Setup {
     /// Whether the two supports together hold the unloaded spring: as a rigid body it may neither
     /// shift sideways nor turn without being resisted.
     pub fn is_held(&self) -> bool {
-        held(&self.bottom, &self.top, self.spring.free_length)
+        hold(&self.bottom, &self.top, self.spring.free_length)
     }
 }
 
-/// Stiffness of the rigid column against (shift y of the bottom, turn φ) must be definite.
-fn held(bottom: &Support, top: &Support, length: Metre) -> bool {
+/// Whether two supports together hold a rigid spring of this free length, m: its stiffness against
+/// (shift of the bottom, turn) must be definite.
+pub fn hold(bottom: &Support, top: &Support, length: Metre) -> bool {
     let resists = |restraint: Restraint| !matches!(restraint, Restraint::Free);
     let reach = length + bottom.arm + top.arm;
     let sideways = [resists(bottom.sideways), resists(top.sideways)];

@@ -66,7 +66,7 @@ pub fn crosses_another<const B: usize, const I: usize>(
 /// A branch point and the direction in which the other path leaves it.
 #[derive(Clone, Debug)]
 pub struct BranchPoint<const B: usize, const I: usize> {
-    /// The point, with the tangent of the path it was found on.
+    /// The point, with tangent and pivot count of the path point before it.
     pub located: Located<B, I>,
     /// Null direction of the tangent matrix, of unit norm `Σ|node|²/n = 1`.
     pub mode: Unknowns<B, I>,
@@ -92,7 +92,12 @@ pub fn branch_point<const B: usize, const I: usize>(
     after: usize,
     tolerance: f64,
 ) -> Option<BranchPoint<B, I>> {
-    let located = locate(system, newton, points, after, tolerance, side)?;
+    let mut located = locate(system, newton, points, after, tolerance, side)?;
     let (mode, _) = null_direction(system, newton, &located.point.state, located.point.load);
+    // At the point itself two tangents meet and the count is undecided: take what the path had.
+    let before = &points[after];
+    located.point.direction.copy_from(&before.direction);
+    located.point.load_direction = before.load_direction;
+    located.point.negatives = before.negatives;
     Some(BranchPoint { located, mode })
 }

@@ -37,7 +37,8 @@ pub fn locate<const B: usize, const I: usize>(
     let (base, next) = (points.get(after)?, points.get(after + 1)?);
     let (mut low, mut high) = (0.0, base.distance);
     let (mut at_low, mut at_high) = (function(base), function(next));
-    if !(at_low * at_high <= 0.0) || at_low == 0.0 {
+    let changes = at_low * at_high <= 0.0 && at_low != 0.0;
+    if !changes {
         return None;
     }
     let mut best = next.clone();

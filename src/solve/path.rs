@@ -3,12 +3,16 @@
 //! From a point (u, λ) with unit tangent (t, t_λ) the next one is found on the plane at distance h
 //! along the tangent: `t·(v − u)/n + t_λ (μ − λ)/λ_ref² = h`, with the norm
 //! `|(t, t_λ)|² = Σ|t_node|²/n + (t_λ/λ_ref)²` over the n nodes. The step adapts to the iterations
-//! taken and to the angle between successive tangents, and is halved where Newton fails.
+//! taken and to the angle between successive tangents, and is halved where Newton fails or where the
+//! step would cross another path: a real branch point is then approached in short steps, while a
+//! path that only passes close by is not left.
 //!
 //! Source: Keller, in Applications of Bifurcation Theory (1977); Seydel, Practical Bifurcation and
 //! Stability Analysis (both from memory).
 
-use super::{Newton, NotConverged, System, Unknowns, newton::Constraint, unknowns::dot};
+use super::{
+    Newton, NotConverged, System, Unknowns, crosses_another, newton::Constraint, unknowns::dot,
+};
 use nalgebra::SVector;
 
 /// A point of a path with everything needed to go on from it.
@@ -39,6 +43,9 @@ pub struct PathSettings {
     pub smallest_step: f64,
     /// Largest angle between successive tangents, rad.
     pub largest_turn: f64,
+    /// Step down to which a step across another path is not believed: a path that turns sharply
+    /// before another one is easily jumped from.
+    pub crossing_step: f64,
     /// Points before giving up.
     pub most_points: usize,
 }
@@ -50,6 +57,7 @@ impl Default for PathSettings {
             largest_step: 0.03,
             smallest_step: 1e-12,
             largest_turn: 0.15,
+            crossing_step: 1e-5,
             most_points: 1500,
         }
     }
@@ -117,7 +125,8 @@ pub fn follow<const B: usize, const I: usize>(
         };
         walk.iterations += newton.iterations;
         let turn = inner_product(system, base, &next).clamp(-1.0, 1.0).acos();
-        if turn > settings.largest_turn && step > 4.0 * settings.smallest_step {
+        let sharp = turn > settings.largest_turn && step > 4.0 * settings.smallest_step;
+        if sharp || (step > settings.crossing_step && crosses_another(base, &next)) {
             walk.refused += 1;
             step *= 0.5;
             continue;

@@ -1,0 +1,235 @@
+//! Text becomes a number: "62 mm", "12 N/mm", "5 %".
+
+use super::field::{Field, Range};
+use super::nearest::{excerpt, nearest};
+use crate::units::{Dimension, Unit, UnitError, symbols};
+
+/// Why a text is not the quantity wanted.
+#[derive(Clone, Debug, PartialEq)]
+pub(super) struct Fault {
+    /// What is wrong.
+    pub message: String,
+    /// Said under the underlined text.
+    pub label: String,
+    /// What to do about it.
+    pub cure: String,
+}
+
+/// The quantity written in `text`, in SI (°C for a temperature), for `field`.
+pub(super) fn quantity(
+    field: &Field,
+    text: &str,
+    dimension: Dimension,
+    range: Range,
+) -> Result<f64, Fault> {
+    let (value, unit) = parts(field, text)?;
+    if unit.is_empty() && dimension != Dimension::NUMBER {
+        return Err(Fault {
+            message: format!("`{}` has no unit: {}", field.key, wanted(dimension)),
+            label: "a unit is missing".to_string(),
+            cure: format!(
+                "add the unit, for example {} = {}",
+                field.key,
+                field.toml(&format!("{} {}", text.trim(), field.example_unit()))
+            ),
+        });
+    }
+    let unit = match Unit::parse(unit) {
+        Ok(unit) => unit,
+        Err(UnitError::Empty) => Unit::ONE,
+        Err(error) => return Err(bad_unit(field, unit, &error)),
+    };
+    if unit.dimension != dimension {
+        return Err(Fault {
+            message: format!(
+                "`{}` must be {}, but \"{}\" is {}",
+                field.key,
+                dimension.title(),
+                excerpt(text),
+                unit.dimension.title()
+            ),
+            label: unit.dimension.title(),
+            cure: format!(
+                "give {}, for example {}",
+                dimension.title(),
+                field.example_line()
+            ),
+        });
+    }
+    checked(field, unit.to_si(value), dimension, range)
+}
+
+/// `value`, in SI, if it is one that `field` may have.
+pub(super) fn checked(
+    field: &Field,
+    value: f64,
+    dimension: Dimension,
+    range: Range,
+) -> Result<f64, Fault> {
+    let fault = |cause: &str| {
+        Err(Fault {
+            message: format!("`{}` {cause}", field.key),
+            label: String::new(),
+            cure: format!("for example {}", field.example_line()),
+        })
+    };
+    if !value.is_finite() {
+        return fault("must be a finite number: not infinite, not NaN, not beyond 1e308");
+    }
+    match range {
+        Range::Positive if value <= 0.0 => return fault("must be above 0"),
+        Range::NotNegative if value < 0.0 => return fault("must not be negative"),
+        Range::ProperShare if value <= 0.0 || value >= 1.0 => {
+            return fault("must lie between 0 and 1, both excluded");
+        }
+        _ => {}
+    }
+    let (least, most, words) = reach(dimension);
+    let outside = match range {
+        Range::Positive => value < least || value > most,
+        _ if dimension == Dimension::TEMPERATURE => value < least || value > most,
+        _ => value.abs() > most,
+    };
+    if outside {
+        return fault(&format!("is outside what can be computed, {words}"));
+    }
+    Ok(value)
+}
+
+/// Sanity only: what is outside is a slip, or would leave the range of a computer's numbers.
+fn reach(dimension: Dimension) -> (f64, f64, &'static str) {
+    match dimension {
+        Dimension::LENGTH => (1e-6, 1e3, "1 um to 1 km"),
+        Dimension::FORCE => (1e-6, 1e12, "1 uN to 1 TN"),
+        Dimension::STRESS => (1.0, 1e14, "1 Pa to 100 TPa"),
+        Dimension::ANGLE => (0.0, std::f64::consts::FRAC_PI_2, "up to 90 deg"),
+        Dimension::TEMPERATURE => (-273.15, 2000.0, "-273.15 degC to 2000 degC"),
+        Dimension::STIFFNESS | Dimension::ROTATIONAL_STIFFNESS => {
+            (1e-9, 1e15, "1e-9 to 1e15 in SI units")
+        }
+        Dimension::DENSITY => (1e-3, 1e6, "1e-3 to 1e6 kg/m^3"),
+        Dimension::PER_KELVIN => (0.0, 0.01, "up to 0.01 1/K"),
+        _ => (1e-3, 1e5, "0.001 to 100000"),
+    }
+}
+
+fn wanted(dimension: Dimension) -> String {
+    format!("it is {}", dimension.title())
+}
+
+/// Splits `text` into its number and the text of its unit.
+fn parts<'t>(field: &Field, text: &'t str) -> Result<(f64, &'t str), Fault> {
+    let text = text.trim();
+    let fault = |cause: String, cure: String| Fault {
+        message: format!("`{}` {cause}", field.key),
+        label: String::new(),
+        cure,
+    };
+    let example = || {
+        format!(
+            "write a number and its unit, for example {}",
+            field.example_line()
+        )
+    };
+    let unsigned = text.trim_start_matches(['+', '-']).to_lowercase();
+    if unsigned.starts_with("nan") || unsigned.starts_with("inf") {
+        return Err(fault("must be a finite number".to_string(), example()));
+    }
+    let end = number_length(text);
+    let (number, rest) = text.split_at(end);
+    let Ok(value) = number.parse::<f64>() else {
+        let quoted = excerpt(text);
+        return Err(fault(
+            format!("does not begin with a number: \"{quoted}\""),
+            example(),
+        ));
+    };
+    if let Some(after) = rest.strip_prefix(',')
+        && after.starts_with(|c: char| c.is_ascii_digit())
+    {
+        return Err(fault(
+            "has a comma in its number".to_string(),
+            format!(
+                "use a decimal point and no thousands separators, for example {}",
+                field.example_line()
+            ),
+        ));
+    }
+    let unit = rest.trim_start();
+    if unit
+        .trim_start_matches(['/', ' ', '_', '\''])
+        .starts_with(|c: char| c.is_ascii_digit())
+        && !is_reciprocal(unit)
+    {
+        return Err(fault(
+            "has more than one number".to_string(),
+            "write one decimal number, then its unit: \"0.5 in\" for half an inch, \"1200 mm\" without a gap"
+                .to_string(),
+        ));
+    }
+    Ok((value, unit))
+}
+
+/// "1/K": a unit that begins with the number one.
+fn is_reciprocal(unit: &str) -> bool {
+    unit.strip_prefix('1')
+        .and_then(|rest| rest.trim_start().strip_prefix('/'))
+        .is_some_and(|rest| !rest.trim_start().starts_with(|c: char| c.is_ascii_digit()))
+}
+
+/// Length in bytes of the number that `text` begins with: sign, digits, point, exponent.
+fn number_length(text: &str) -> usize {
+    let bytes = text.as_bytes();
+    let digits = |from: usize| {
+        bytes[from.min(bytes.len())..]
+            .iter()
+            .take_while(|b| b.is_ascii_digit())
+            .count()
+    };
+    let sign = |at: usize| usize::from(matches!(bytes.get(at), Some(b'+' | b'-')));
+    let mut end = sign(0);
+    end += digits(end);
+    if bytes.get(end) == Some(&b'.') {
+        end += 1 + digits(end + 1);
+    }
+    if matches!(bytes.get(end), Some(b'e' | b'E')) {
+        let exponent = end + 1 + sign(end + 1);
+        if digits(exponent) > 0 {
+            end = exponent + digits(exponent);
+        }
+    }
+    end
+}
+
+fn bad_unit(field: &Field, unit: &str, error: &UnitError) -> Fault {
+    let cure = match error {
+        UnitError::Unknown { symbol } => {
+            let known = symbols().iter().map(|s| s.text);
+            match nearest(symbol, known) {
+                Some(near) => format!(
+                    "did you mean `{near}`? For example {}",
+                    field.example_line()
+                ),
+                None => format!("use a unit such as in {}", field.example_line()),
+            }
+        }
+        _ => format!(
+            "join units by `*`, `/` and `^`, for example {}",
+            field.example_line()
+        ),
+    };
+    Fault {
+        message: match error {
+            UnitError::Unknown { symbol } => {
+                format!("`{}` has an unknown unit, `{}`", field.key, excerpt(symbol))
+            }
+            _ => format!(
+                "`{}` has no readable unit, `{}`: {error}",
+                field.key,
+                excerpt(unit)
+            ),
+        },
+        label: String::new(),
+        cure,
+    }
+}

@@ -1,0 +1,136 @@
+//! What is marked in the picture of a load path: its named points, the limits of the perfect
+//! column, and what the formula says.
+
+use crate::report::names::mark_title;
+use crate::report::numbers::shortest;
+use crate::result::{Assessment, LimitKind, Path};
+
+/// Shape of a marker; each kind of point has its own, so that print without colour keeps them apart.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Shape {
+    /// Working point.
+    FilledCircle,
+    /// Installed.
+    OpenCircle,
+    /// Critical.
+    TriangleUp,
+    /// Largest force.
+    TriangleDown,
+    /// Largest travel.
+    TriangleLeft,
+    /// Bow limit.
+    Diamond,
+    /// Rate lost.
+    Square,
+    /// Stress.
+    Pentagon,
+    /// Clash.
+    Star,
+    /// Solid.
+    Bar,
+    /// Branch point.
+    Ring,
+    /// Formula.
+    Cross,
+    /// Straight column.
+    Plus,
+}
+
+/// A point to be marked.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Marked {
+    /// Name in the key.
+    pub title: String,
+    /// Its shape.
+    pub shape: Shape,
+    /// Deflection, m.
+    pub deflection: f64,
+    /// Force, N.
+    pub force: f64,
+    /// Bow, m.
+    pub bow: f64,
+    /// Whether it is the governing limit.
+    pub governs: bool,
+}
+
+/// Everything to be marked, by deflection.
+pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
+    let mut marks: Vec<Marked> = Vec::new();
+    let governing = assessment.governing.map(LimitKind::key);
+    for mark in &path.marks {
+        let repeated = match mark.name.as_str() {
+            "largest_force" => has(path, LimitKind::DeadLoadLost.key()),
+            "largest_travel" => has(path, LimitKind::TravelLost.key()),
+            _ => false,
+        };
+        if repeated {
+            continue;
+        }
+        marks.push(Marked {
+            title: mark_title(&mark.name),
+            shape: shape(&mark.name),
+            deflection: mark.point.deflection_m,
+            force: mark.point.force_n,
+            bow: mark.point.bow_m,
+            governs: governing == Some(mark.name.as_str()),
+        });
+    }
+    let off_path = assessment
+        .limits
+        .iter()
+        .filter(|limit| !limit.beyond_solid && !has(path, limit.name.key()));
+    for limit in off_path {
+        if let (Some(deflection), Some(force)) = (limit.deflection_m, limit.force_n) {
+            marks.push(Marked {
+                title: limit.name.title().to_string(),
+                shape: shape(limit.name.key()),
+                deflection,
+                force,
+                bow: 0.0,
+                governs: limit.governs,
+            });
+        }
+    }
+    let perfect = |title: String, shape, measure: &crate::result::Measure| Marked {
+        title,
+        shape,
+        deflection: measure.deflection_m,
+        force: measure.force_n,
+        bow: 0.0,
+        governs: false,
+    };
+    for curve in &assessment.closed_form.curves {
+        if let (Some(critical), false) = (&curve.critical, curve.beyond_solid) {
+            let title = format!("formula, end constant {}", shortest(curve.end_constant));
+            marks.push(perfect(title, Shape::Cross, critical));
+        }
+    }
+    let straight = &assessment.straight_column;
+    if let (Some(critical), false) = (&straight.critical, straight.beyond_solid) {
+        let title = "critical, straight column".to_string();
+        marks.push(perfect(title, Shape::Plus, &critical.measure));
+    }
+    marks.retain(|mark| mark.deflection.is_finite() && mark.force.is_finite());
+    marks.sort_by(|a, b| a.deflection.total_cmp(&b.deflection));
+    marks
+}
+
+fn has(path: &Path, name: &str) -> bool {
+    path.marks.iter().any(|mark| mark.name == name)
+}
+
+fn shape(key: &str) -> Shape {
+    match key {
+        "installed" => Shape::OpenCircle,
+        "working" => Shape::FilledCircle,
+        "critical" => Shape::TriangleUp,
+        "dead_load_lost" | "largest_force" => Shape::TriangleDown,
+        "travel_lost" | "largest_travel" => Shape::TriangleLeft,
+        "bow" => Shape::Diamond,
+        "rate_lost" => Shape::Square,
+        "stress" => Shape::Pentagon,
+        "clash" => Shape::Star,
+        "solid" => Shape::Bar,
+        _ => Shape::Ring,
+    }
+}

@@ -1,0 +1,148 @@
+//! JSON and CSV.
+
+use super::fixture::{Shape, assessment};
+use coilstay::report;
+use coilstay::result::{Assessment, Mistake, Outcome, PathPoint, Refusal};
+use serde_json::Value;
+
+fn json(outcomes: &[Outcome]) -> Value {
+    serde_json::from_str(&report::json(outcomes).unwrap()).unwrap()
+}
+
+fn assessed(assessment: Assessment) -> Outcome {
+    Outcome::Assessed(Box::new(assessment))
+}
+
+#[test]
+fn the_shape_is_kept() {
+    insta::assert_json_snapshot!(json(&[assessed(assessment(Shape::Falling))]));
+}
+
+#[test]
+fn what_is_not_finite_is_null() {
+    let mut odd = assessment(Shape::Rising);
+    odd.spring.rate_n_per_m = f64::NAN;
+    odd.spring.free_length_m = f64::INFINITY;
+    odd.limits[0].margin = Some(f64::NEG_INFINITY);
+    let data = json(&[assessed(odd)]);
+    assert_eq!(data["spring"]["rate_n_per_m"], Value::Null);
+    assert_eq!(data["spring"]["free_length_m"], Value::Null);
+    assert_eq!(data["limits"][0]["margin"], Value::Null);
+}
+
+#[test]
+fn several_are_a_list_with_the_refused_in_place() {
+    let refusal = Refusal::new(
+        "bad.toml",
+        vec![Mistake {
+            line: 3,
+            column: 7,
+            message: "a force where a length belongs".into(),
+            cure: "give a length".into(),
+        }],
+    );
+    let data = json(&[
+        Outcome::Refused(refusal),
+        assessed(assessment(Shape::Straight)),
+    ]);
+    let expected = serde_json::json!({
+        "file": "bad.toml",
+        "verdict": "undecided",
+        "mistakes": [{
+            "line": 3,
+            "column": 7,
+            "message": "a force where a length belongs",
+            "cure": "give a length",
+        }],
+    });
+    assert_eq!(data["cases"][0], expected);
+    assert_eq!(data["cases"][1]["verdict"], "holds");
+}
+
+/// Every key of a quantity ends in its unit: no number without one, but for pure numbers.
+#[test]
+fn quantities_end_in_their_unit() {
+    const UNITS: [&str; 12] = [
+        "_m",
+        "_n",
+        "_n_per_m",
+        "_pa",
+        "_rad",
+        "_j",
+        "_degc",
+        "_n_m2",
+        "_n_m",
+        "_n_m_per_rad",
+        "_per_k",
+        "_kg_per_m3",
+    ];
+    const PURE: [&str; 16] = [
+        "spring_index",
+        "slenderness",
+        "active_coils",
+        "total_coils",
+        "required_margin",
+        "rate_loss_share",
+        "end_constant",
+        "share_of_free_length",
+        "margin",
+        "r_squared",
+        "points",
+        "elements",
+        "relative_difference",
+        "bow_place",
+        "line",
+        "column",
+    ];
+    fn walk(value: &Value, found: &mut Vec<String>) {
+        match value {
+            Value::Object(fields) => {
+                for (key, field) in fields {
+                    if field.is_number() {
+                        found.push(key.clone());
+                    }
+                    walk(field, found);
+                }
+            }
+            Value::Array(items) => items.iter().for_each(|item| walk(item, found)),
+            _ => {}
+        }
+    }
+    let mut keys = Vec::new();
+    walk(&json(&[assessed(assessment(Shape::Falling))]), &mut keys);
+    assert!(keys.len() > 50);
+    for key in keys {
+        let unit = UNITS.iter().any(|unit| key.ends_with(unit));
+        assert!(unit || PURE.contains(&key.as_str()), "{key}");
+    }
+}
+
+#[test]
+fn the_table_reads_back_digit_for_digit() {
+    let path = assessment(Shape::Falling).imperfect_column.unwrap().path;
+    let table = report::csv(&path).unwrap();
+    let mut reader = csv::Reader::from_reader(table.as_slice());
+    let columns = reader.headers().unwrap().len();
+    assert_eq!(columns, 15);
+    let rows: Vec<Vec<f64>> = reader
+        .records()
+        .map(|row| {
+            row.unwrap()
+                .iter()
+                .map(|cell| cell.parse().unwrap())
+                .collect()
+        })
+        .collect();
+    assert_eq!(rows.len(), path.points.len());
+    for (row, point) in rows.iter().zip(&path.points) {
+        let PathPoint {
+            deflection_m,
+            force_n,
+            bow_m,
+            wire_stress_pa,
+            ..
+        } = *point;
+        assert_eq!([row[0], row[2], row[3]], [deflection_m, force_n, bow_m]);
+        assert_eq!(row[12], wire_stress_pa);
+    }
+}

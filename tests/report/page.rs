@@ -1,0 +1,170 @@
+//! The verdict as text.
+
+use super::fixture::{Shape, assessment};
+use coilstay::report::{self, Units};
+use coilstay::result::{
+    Assessment, Failure, LimitKind, Mistake, Outcome, Refusal, Verdict, wire_materials,
+};
+use unicode_width::UnicodeWidthStr;
+
+fn plain(text: &str) -> String {
+    anstream::adapter::strip_str(text).to_string()
+}
+
+fn page(assessment: &Assessment, units: Units) -> String {
+    let outcome = Outcome::Assessed(Box::new(assessment.clone()));
+    plain(&report::text(&outcome, units))
+}
+
+/// The page as one line, for words that may be anywhere in it.
+fn spoken(page: &str) -> String {
+    page.split_whitespace().collect::<Vec<_>>().join(" ")
+}
+
+fn assert_fits(page: &str) {
+    for line in page.lines() {
+        assert!(line.width() <= 100, "{} columns: {line}", line.width());
+        assert!(!line.chars().any(char::is_control), "{line:?}");
+    }
+}
+
+#[test]
+fn set_deflection() {
+    insta::assert_snapshot!(page(&assessment(Shape::Rising), Units::Metric));
+}
+
+#[test]
+fn dead_load_in_inches() {
+    insta::assert_snapshot!(page(&assessment(Shape::Falling), Units::Inch));
+}
+
+#[test]
+fn sections_stand_in_their_order() {
+    let page = page(&assessment(Shape::Falling), Units::Metric);
+    let headings = [
+        "Track brake of the funicular",
+        "cases/track-brake.toml",
+        "Question",
+        "Answer",
+        "Formula and column",
+        "Formula against straight column",
+        "Limits, in order",
+        "Under a dead load",
+        "Absolute stability",
+        "Stress at solid",
+        "Inputs as resolved",
+        "Warnings",
+        "Caution",
+    ];
+    let mut from = 0;
+    for heading in headings {
+        let at = page[from..].find(heading);
+        from += at.unwrap_or_else(|| panic!("{heading} is missing or out of order"));
+    }
+}
+
+#[test]
+fn the_governing_limit_is_marked_by_sign_and_word() {
+    let page = page(&assessment(Shape::Rising), Units::Metric);
+    let marked: Vec<&str> = page.lines().filter(|line| line.starts_with("> ")).collect();
+    assert_eq!(marked.len(), 1);
+    assert!(marked[0].contains("axial rate lost") && marked[0].ends_with("governs"));
+}
+
+#[test]
+fn never_and_none_before_solid_are_said_in_words() {
+    let mut odd = assessment(Shape::Rising);
+    odd.closed_form.curves[0].critical = None;
+    odd.closed_form.curves[0].critical_deflection_m = None;
+    odd.closed_form.curves[1].beyond_solid = true;
+    odd.straight_column.critical = None;
+    odd.comparisons[0].relative_difference = None;
+    odd.limits
+        .iter_mut()
+        .filter(|limit| limit.name == LimitKind::Clash)
+        .for_each(|limit| limit.deflection_m = None);
+    let page = page(&odd, Units::Metric);
+    let line = |start: &str| {
+        let found = page
+            .lines()
+            .find(|line| line.trim_start().starts_with(start));
+        found.unwrap_or_else(|| panic!("{start}")).to_string()
+    };
+    assert!(line("formula, end constant 0.7 ").ends_with("never"));
+    assert!(
+        line("formula, end constant 0.707 ").ends_with("none before solid (would be at 47.30 mm)")
+    );
+    assert!(line("straight column ").ends_with("never"));
+    assert!(line("first coils clash ").ends_with("none before solid"));
+    assert!(
+        spoken(&page)
+            .contains("promises that the spring never buckles; the straight column does at 48.20")
+    );
+}
+
+#[test]
+fn what_failed_is_not_called_never() {
+    let mut failed = assessment(Shape::Rising);
+    failed.verdict = Verdict::Undecided;
+    failed.straight_column.critical = None;
+    failed.imperfect_column = None;
+    failed.failures.push(Failure {
+        what: "path of the imperfect column".into(),
+        cause: "no convergence at steps of 1e-9 of the free length".into(),
+        last_good_deflection_m: Some(0.0312),
+    });
+    let page = page(&failed, Units::Metric);
+    assert!(page.contains("COULD NOT BE DECIDED."));
+    assert!(spoken(&page).contains("Last good point at 31.20 mm."));
+    assert!(page.contains("not computed"));
+    assert!(!page.contains("never"), "{page}");
+}
+
+/// Whatever the numbers and names, the page keeps its width, and a name cannot steer the terminal.
+#[test]
+fn extremes_fit_the_page() {
+    for scale in [1e-9, 1.0, 1e6, f64::INFINITY, f64::NAN] {
+        let mut odd = assessment(Shape::Falling);
+        odd.title = format!("{} \u{1b}[31m ä", "long ".repeat(50));
+        odd.file = "x".repeat(300);
+        for limit in &mut odd.limits {
+            limit.deflection_m = limit.deflection_m.map(|x| x * scale);
+            limit.force_n = limit.force_n.map(|x| x * scale);
+            limit.margin = limit.margin.map(|x| x * scale);
+        }
+        odd.spring.free_length_m *= scale;
+        odd.closed_form.curves[0].source = "word ".repeat(100);
+        for units in [Units::Metric, Units::Inch] {
+            assert_fits(&page(&odd, units));
+        }
+    }
+}
+
+#[test]
+fn several_cases_end_in_a_summary() {
+    let refusal = Refusal::new(
+        format!("cases/{}.toml", "long-".repeat(30)),
+        vec![Mistake {
+            line: 1,
+            column: 1,
+            message: "nothing there".into(),
+            cure: "write something".into(),
+        }],
+    );
+    let outcomes = [
+        Outcome::Assessed(Box::new(assessment(Shape::Straight))),
+        Outcome::Assessed(Box::new(assessment(Shape::Rising))),
+        Outcome::Refused(refusal),
+    ];
+    let summary = plain(&report::summary(&outcomes, Units::Metric));
+    assert_fits(&summary);
+    insta::assert_snapshot!(summary);
+    assert_fits(&plain(&report::text(&outcomes[2], Units::Metric)));
+}
+
+#[test]
+fn materials_fit_the_page() {
+    for units in [Units::Metric, Units::Inch] {
+        assert_fits(&plain(&report::materials_text(&wire_materials(), units)));
+    }
+}

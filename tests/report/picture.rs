@@ -1,0 +1,147 @@
+//! The picture of a load path.
+
+use super::fixture::{Shape, assessment};
+use coilstay::report::{self, Units};
+use coilstay::result::{Assessment, Path};
+
+fn picture(assessment: &Assessment, path: &Path) -> String {
+    report::plot(assessment, path, Units::Metric).unwrap()
+}
+
+fn drawn(shape: Shape) -> String {
+    let assessment = assessment(shape);
+    let path = &assessment.imperfect_column.as_ref().unwrap().path;
+    picture(&assessment, path)
+}
+
+/// Numbers of an attribute, wherever it stands.
+fn numbers(svg: &str, attribute: &str) -> Vec<f64> {
+    svg.split(&format!(" {attribute}=\""))
+        .skip(1)
+        .filter_map(|rest| rest.split('"').next())
+        .flat_map(|value| value.split([' ', ',']).map(|n| n.parse::<f64>().unwrap()))
+        .collect()
+}
+
+/// Every element is closed, every number is one, nothing lies outside the sheet.
+fn assert_sound(svg: &str) {
+    assert!(svg.starts_with("<svg ") && svg.ends_with("</svg>\n"));
+    assert_eq!(svg.matches('<').count(), svg.matches('>').count());
+    let opened = svg.matches('<').count() - svg.matches("</").count() - svg.matches("/>").count();
+    assert_eq!(opened, svg.matches("</").count());
+    let size = [numbers(svg, "width")[0], numbers(svg, "height")[0]];
+    for attribute in ["x", "cx"] {
+        for x in numbers(svg, attribute) {
+            assert!((0.0..=size[0]).contains(&x), "{attribute} {x}");
+        }
+    }
+    for attribute in ["y", "cy"] {
+        for y in numbers(svg, attribute) {
+            assert!((0.0..=size[1]).contains(&y), "{attribute} {y}");
+        }
+    }
+    for point in numbers(svg, "points").chunks(2) {
+        assert!((0.0..=size[0]).contains(&point[0]), "{point:?}");
+        assert!((0.0..=size[1]).contains(&point[1]), "{point:?}");
+    }
+}
+
+fn texts(svg: &str) -> Vec<&str> {
+    svg.split("<text ")
+        .skip(1)
+        .filter_map(|rest| rest.split_once('>')?.1.split("</text>").next())
+        .collect()
+}
+
+#[test]
+fn pictures_are_sound() {
+    for shape in [Shape::Rising, Shape::Falling, Shape::Short, Shape::Straight] {
+        assert_sound(&drawn(shape));
+    }
+}
+
+#[test]
+fn marks_are_numbered_named_and_the_governing_one_said() {
+    let svg = drawn(Shape::Falling);
+    let texts = texts(&svg);
+    for name in [
+        "installed",
+        "working point",
+        "axial rate lost, governs",
+        "bow limit",
+        "dead load lost",
+        "critical, perfect column as built",
+        "critical, straight column",
+        "formula, end constant 0.7",
+        "formula, end constant 0.707",
+        "first coils clash",
+        "solid (off the picture)",
+        "axial deflection, mm",
+        "axial force, N",
+        "bow, mm",
+    ] {
+        assert!(texts.contains(&name), "{name} is missing");
+    }
+    assert!(
+        !texts.contains(&"largest force"),
+        "the same as the dead load lost"
+    );
+    // Above the panels and in the key.
+    for number in 1..=10 {
+        let number = number.to_string();
+        let count = texts.iter().filter(|text| **text == number).count();
+        assert!(count >= 2, "{number}");
+    }
+}
+
+#[test]
+fn numbers_above_the_panels_do_not_overlap() {
+    let svg = drawn(Shape::Falling);
+    let centres = numbers(&svg, "cx");
+    let heights = numbers(&svg, "cy");
+    let mut row: Vec<f64> = centres
+        .iter()
+        .zip(&heights)
+        .filter(|(_, y)| **y == 72.0)
+        .map(|(x, _)| *x)
+        .collect();
+    row.dedup();
+    assert_eq!(row.len(), 10);
+    assert!(
+        row.windows(2).all(|pair| pair[1] - pair[0] > 20.5),
+        "{row:?}"
+    );
+}
+
+#[test]
+fn odd_paths_are_drawn_or_left_blank() {
+    let assessment = assessment(Shape::Rising);
+    let whole = &assessment.imperfect_column.as_ref().unwrap().path;
+    let empty = Path {
+        points: vec![],
+        marks: vec![],
+        branch: String::new(),
+    };
+    let single = Path {
+        points: whole.points[3..4].to_vec(),
+        ..empty.clone()
+    };
+    let mut broken = whole.clone();
+    broken.points[10].force_n = f64::NAN;
+    broken.points[20].bow_m = f64::INFINITY;
+    broken.points[30].deflection_m = -0.01;
+    broken.points[40].force_n = -250.0;
+    broken.marks[0].point.deflection_m = f64::NAN;
+    broken.marks[1].point.bow_m = f64::NAN;
+    for path in [&empty, &single, &broken] {
+        assert_sound(&picture(&assessment, path));
+    }
+    let mut odd = assessment.clone();
+    odd.title = "<b> & \"quotes\" \u{1b}".repeat(20);
+    odd.duty.bow_limit_m = 0.0;
+    odd.closed_form.curves.clear();
+    odd.limits.clear();
+    for path in [&empty, &single, &broken] {
+        assert_sound(&picture(&odd, path));
+    }
+}
