@@ -19,6 +19,12 @@ use std::time::Instant;
 const SLENDERNESS: f64 = 6.0;
 /// E/G.
 const RATIO: f64 = 2.6;
+/// Section stiffnesses of a round spring for unit rate and unit mean diameter.
+const SECTION: Section = Section {
+    axial: SLENDERNESS,
+    shear: RATIO * SLENDERNESS,
+    bending: SLENDERNESS * RATIO / (2.0 * (2.0 + RATIO)),
+};
 /// Tilt of the top seat, rad.
 const TILT: f64 = 0.02;
 /// Elements of the Newton step.
@@ -28,15 +34,10 @@ const POINTS: usize = 30;
 
 /// Round spring column, clamped, the top seat tilted; lengths in mean diameters.
 fn column(elements: usize) -> Column {
-    let section = Section {
-        axial: SLENDERNESS,
-        shear: RATIO * SLENDERNESS,
-        bending: SLENDERNESS * RATIO / (2.0 * (2.0 + RATIO)),
-    };
     Column::new(
         SLENDERNESS,
         elements,
-        &|_| section,
+        &|_| SECTION,
         &NaturalShape::straight(),
     )
     .held(
@@ -192,8 +193,8 @@ fn write(directory: &Path, name: &str, values: &[f64]) -> std::io::Result<()> {
 }
 
 /// Follows the tilted column through bow-out with `elements` elements: time per point, and at
-/// each point its shortening, force and moment at the bottom, and the sideways position at four
-/// stations an element.
+/// each point its shortening, force and moment at the bottom, and the sideways position at
+/// mid-height, where an even number of elements has a node.
 fn path(elements: usize) -> Result<(), Box<dyn Error>> {
     let mut column = column(elements);
     let mut newton = Newton::new(&column);
@@ -204,14 +205,13 @@ fn path(elements: usize) -> Result<(), Box<dyn Error>> {
         .iter()
         .map(|point| {
             column.profile(&point.state, &mut stations);
-            let aside: Vec<f64> = stations.iter().map(|s| s.y).collect();
             let last = stations[stations.len() - 1];
             json!({
                 "shortening": 1.0 - last.x,
                 // The bottom section does not turn: its N, Q are F_x, F_y.
                 "force": [stations[0].axial_force, stations[0].shear_force],
                 "moment": stations[0].moment,
-                "aside": aside,
+                "aside_middle": point.state.nodes[elements / 2][1],
             })
         })
         .collect();
@@ -219,6 +219,11 @@ fn path(elements: usize) -> Result<(), Box<dyn Error>> {
         "{}",
         json!({
             "elements": elements,
+            "column": {
+                "axial_compliance": column.scale.force / SECTION.axial,
+                "shear_compliance": column.scale.force / SECTION.shear,
+                "tilt": TILT,
+            },
             "seconds_per_point": seconds / points.len() as f64,
             "points": rows,
         })
