@@ -4,7 +4,7 @@ use super::observe::{Observer, Seen, Solved};
 use super::walk::BRACKET;
 use crate::column::Column;
 use crate::result::PathPoint;
-use crate::setup::{LimitKind, Setup};
+use crate::setup::{LimitKind, Loading, Setup};
 use crate::solve::{Newton, locate};
 
 /// An event on a path.
@@ -16,14 +16,23 @@ pub(super) struct Event {
     pub strain_energy: f64,
     /// Width of the last bracket, m of travel.
     pub bracket: f64,
+    /// Place along the path, in path points from its start.
+    pub place: f64,
+    /// Deflection, m, and force, N, of the spring as loaded when this happens: those of the point,
+    /// or those at which the jump starts that passes over it.
+    pub reached: (f64, f64),
+    /// Whether it happens in a jump.
+    pub in_jump: bool,
 }
 
 /// What happens.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub(super) enum EventKind {
     Limit(LimitKind),
-    /// The force comes back up to the largest it had, in a stable state.
+    /// The force comes back up to the largest it had.
     ForceRegained,
+    /// The travel comes back up to the largest it had.
+    TravelRegained,
     Installed,
     Working,
     /// The working deflection with its tolerance.
@@ -77,6 +86,7 @@ impl Track<'_> {
         let left_rate = (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + seats);
         let stress = duty.allowable_stress.unwrap_or(f64::INFINITY);
         let limit = EventKind::Limit;
+        let reached = |s: &Seen| duty.reached(s.point.deflection_m, s.point.force_n);
         let watches = [
             Watch::state(limit(LimitKind::Bow), |s| duty.bow_limit - s.point.bow_m),
             Watch::direction(limit(LimitKind::RateLost), |s| {
@@ -89,31 +99,38 @@ impl Track<'_> {
             Watch::state(limit(LimitKind::Stress), |s| {
                 stress - s.point.wire_stress_pa
             }),
-            Watch::state(EventKind::Installed, |s| {
-                duty.installed_deflection - s.point.deflection_m
+            Watch::state(EventKind::Installed, move |s| {
+                duty.installed_deflection - reached(s)
             }),
-            Watch::state(EventKind::Working, |s| {
-                duty.working_deflection - s.point.deflection_m
+            Watch::state(EventKind::Working, move |s| {
+                duty.working_deflection - reached(s)
             }),
-            Watch::state(EventKind::LargestWorking, |s| {
-                duty.largest_working_deflection() - s.point.deflection_m
+            Watch::state(EventKind::LargestWorking, move |s| {
+                duty.largest_working_deflection() - reached(s)
             }),
         ];
         let mut events: Vec<Event> = watches
             .iter()
             .filter_map(|watch| self.first(watch, 0))
             .collect();
-        // After a dead load is lost: where the same force is carried again.
-        let lost = events
-            .iter()
-            .find(|e| e.kind == limit(LimitKind::DeadLoadLost))
-            .map(|e| e.point.force_n);
-        if let Some(force) = lost
+        // After a load or a travel is lost: where the same is carried again.
+        let lost = |events: &[Event], kind: LimitKind| {
+            let lost = events.iter().find(|event| event.kind == limit(kind))?;
+            Some(lost.point)
+        };
+        if let Some(lost) = lost(&events, LimitKind::DeadLoadLost)
             && let Some(falling) = self.seen.iter().position(|s| s.along.0 < 0.0)
         {
-            let regained = Watch::state(EventKind::ForceRegained, |s| force - s.point.force_n);
-            events.extend(self.first(&regained, falling));
+            let again = move |s: &Seen| lost.force_n - s.point.force_n;
+            events.extend(self.first(&Watch::state(EventKind::ForceRegained, again), falling));
         }
+        if let Some(lost) = lost(&events, LimitKind::TravelLost)
+            && let Some(falling) = self.seen.iter().position(|s| s.along.1 < 0.0)
+        {
+            let again = move |s: &Seen| lost.deflection_m - s.point.deflection_m;
+            events.extend(self.first(&Watch::state(EventKind::TravelRegained, again), falling));
+        }
+        account_for_jump(duty.loading, &mut events);
         events
     }
 
@@ -121,13 +138,13 @@ impl Track<'_> {
     fn first(&mut self, watch: &Watch<'_>, from: usize) -> Option<Event> {
         let value = |i: usize| (watch.function)(&self.seen[i]);
         if from == 0 && !self.seen.is_empty() && value(0) <= 0.0 {
-            return Some(self.event(watch.kind, &self.points[0], 0.0));
+            return Some(self.event(watch.kind, &self.points[0], 0.0, 0.0));
         }
         let after = (from..self.seen.len().saturating_sub(1))
             .find(|i| value(*i) > 0.0 && value(i + 1) <= 0.0)?;
         if watch.of_direction && self.corners.contains(&after) {
             // The slope jumps at the corner itself.
-            return Some(self.event(watch.kind, &self.points[after], 0.0));
+            return Some(self.event(watch.kind, &self.points[after], 0.0, after as f64));
         }
         // The observer looks at states of a column like this one: a copy serves inside the search.
         let watched = self.column.clone();
@@ -140,15 +157,42 @@ impl Track<'_> {
             BRACKET,
             |point| (watch.function)(&observer.see(setup, &watched, point)),
         )?;
-        Some(self.event(watch.kind, &found.point, found.bracket))
+        let place = after as f64 + found.distance / self.points[after].distance;
+        Some(self.event(watch.kind, &found.point, found.bracket, place))
     }
 
-    fn event(&self, kind: EventKind, solved: &Solved, width: f64) -> Event {
+    fn event(&self, kind: EventKind, solved: &Solved, width: f64, place: f64) -> Event {
+        let point = self.observer.see(self.setup, self.column, solved).point;
         Event {
             kind,
-            point: self.observer.see(self.setup, self.column, solved).point,
+            point,
             strain_energy: self.column.strain_energy(&solved.state) * self.column.scale.moment(),
             bracket: width.abs() * self.column.scale.length,
+            place,
+            reached: (point.deflection_m, point.force_n),
+            in_jump: false,
+        }
+    }
+}
+
+/// Gives what lies in the jump of a lost load or travel the deflection and force at which that
+/// jump starts: the path in between is never rested on.
+fn account_for_jump(loading: Loading, events: &mut [Event]) {
+    let (lost, regained) = match loading {
+        Loading::Force => (LimitKind::DeadLoadLost, EventKind::ForceRegained),
+        Loading::Deflection => (LimitKind::TravelLost, EventKind::TravelRegained),
+    };
+    let find = |kind: EventKind| events.iter().find(|event| event.kind == kind).cloned();
+    let Some(lost) = find(EventKind::Limit(lost)) else {
+        return;
+    };
+    let end = find(regained).map_or(f64::INFINITY, |event| event.place);
+    for event in events {
+        let limit = matches!(event.kind, EventKind::Limit(_)) && event.kind != lost.kind;
+        if limit && event.place >= lost.place && event.place < end {
+            event.reached = lost.reached;
+            event.bracket = lost.bracket;
+            event.in_jump = true;
         }
     }
 }

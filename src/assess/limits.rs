@@ -2,10 +2,10 @@
 
 use super::events::EventKind;
 use super::imperfect::Imperfect;
-use super::straight::{Critical, is_beyond_solid, seat_compliance};
-use crate::result::{ImperfectColumn, Limit, StressAtSolid};
-use crate::setup::{Imperfections, LimitKind, Loading, Setup};
-use crate::spring::{Wire, compressed_radius, torsion_stress};
+use super::straight::{Critical, is_beyond_solid, seat_compliance, share_of_free_length};
+use crate::result::{Limit, StressAtSolid};
+use crate::setup::{LimitKind, Setup};
+use crate::spring::{compressed_radius, torsion_stress};
 
 /// Below this share of the solid deflection, a clash differs from solid by round-off only.
 const SAME_AS_SOLID: f64 = 1e-6;
@@ -20,19 +20,18 @@ pub(super) fn collect(
         critical_limit(setup, critical),
         solid_limit(setup, imperfect),
     ];
-    let mut kinds = vec![
+    let from_path = [
         LimitKind::Bow,
         LimitKind::RateLost,
         LimitKind::Stress,
         LimitKind::Clash,
+        LimitKind::DeadLoadLost,
+        LimitKind::TravelLost,
     ];
-    kinds.push(match setup.duty.loading {
-        Loading::Force => LimitKind::DeadLoadLost,
-        Loading::Deflection => LimitKind::TravelLost,
-    });
     limits.extend(
-        kinds
+        from_path
             .into_iter()
+            .filter(|kind| setup.duty.has(*kind))
             .map(|kind| path_limit(setup, imperfect, kind)),
     );
     limits.sort_by(|a, b| {
@@ -52,13 +51,14 @@ fn limit(
     Limit {
         name,
         deflection_m,
-        share_of_free_length: deflection_m.map(|d| d / setup.spring.free_length),
+        share_of_free_length: reached.map(|(d, force, _)| share_of_free_length(setup, d, force)),
         force_n: reached.map(|r| r.1),
-        margin: deflection_m.map(|d| d / setup.duty.largest_working_deflection() - 1.0),
+        margin: reached.map(|(d, force, _)| setup.duty.margin(d, force)),
         required_margin: setup.duty.margins.of(name),
         error_m: reached.and_then(|r| r.2),
         governs: false,
         beyond_solid: reached.is_some_and(|(d, force, _)| is_beyond_solid(setup, d, force)),
+        looked_up_to_m: None,
         note,
     }
 }
@@ -82,16 +82,25 @@ fn critical_limit(setup: &Setup, critical: Option<&Critical>) -> Limit {
 /// Solid by the spring's geometry; the force is the path's where it gets there, else the rate's.
 fn solid_limit(setup: &Setup, imperfect: &Imperfect) -> Limit {
     let shortening = setup.spring.solid_deflection();
-    let by_rate = setup.spring.rate() * shortening;
-    let force = imperfect
-        .event(EventKind::Limit(LimitKind::Solid))
-        .map_or(by_rate, |(event, _)| event.point.force_n);
-    limit(
-        setup,
-        LimitKind::Solid,
-        Some((shortening + force * seat_compliance(setup), force, None)),
-        setup.spring.solid_rule.to_owned(),
-    )
+    let on_path = imperfect.fine.event(EventKind::Limit(LimitKind::Solid));
+    let (force, whose) = match on_path {
+        Some(event) => (event.point.force_n, "force of the imperfect column"),
+        None => (
+            setup.spring.rate() * shortening,
+            "force of the straight spring",
+        ),
+    };
+    let deflection = shortening + force * seat_compliance(setup);
+    let note = format!("{}; {whose}", setup.spring.solid_rule);
+    Limit {
+        beyond_solid: false,
+        ..limit(
+            setup,
+            LimitKind::Solid,
+            Some((deflection, force, None)),
+            note,
+        )
+    }
 }
 
 fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
@@ -128,18 +137,17 @@ fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
         Some((event, error)) => limit(
             setup,
             kind,
-            Some((event.point.deflection_m, event.point.force_n, Some(error))),
-            meaning,
+            Some((event.reached.0, event.reached.1, Some(error))),
+            if event.in_jump {
+                format!("{meaning}; reached in the jump that starts here")
+            } else {
+                meaning
+            },
         ),
-        None if imperfect.failures.is_empty() => {
-            limit(setup, kind, None, format!("not before solid; {meaning}"))
-        }
-        None => limit(
-            setup,
-            kind,
-            None,
-            format!("not as far as the path is known; {meaning}"),
-        ),
+        None => Limit {
+            looked_up_to_m: imperfect.ends_before_solid(),
+            ..limit(setup, kind, None, meaning)
+        },
     }
 }
 
@@ -166,39 +174,4 @@ pub(super) fn stress_at_solid(setup: &Setup) -> StressAtSolid {
             .allowable_stress
             .map(|allowable| stress_pa <= allowable),
     }
-}
-
-/// What a reader must know of the models used on this case.
-pub(super) fn assumptions(setup: &Setup, column: Option<&ImperfectColumn>) -> Vec<String> {
-    let mut notes = Vec::new();
-    if setup.imperfections == Imperfections::none() {
-        notes.push(
-            "No imperfection is given: the imperfect column is the perfect one on its branch. A \
-             real spring bows earlier."
-                .to_owned(),
-        );
-    }
-    if setup.spring.active_coils < 5.0 {
-        notes.push(
-            "Fewer than 5 active coils: the equivalent column is an idealisation of many turns; \
-             expect several per cent, on either side."
-                .to_owned(),
-        );
-    }
-    if matches!(setup.spring.wire, Wire::Rectangular { .. }) {
-        notes.push(
-            "Rectangular wire: the stress correction for curvature is that of round wire (common \
-             practice, no source)."
-                .to_owned(),
-        );
-    }
-    if let Some(column) = column
-        && let Some(sign) = &column.worse_parallelism_sign
-    {
-        notes.push(format!(
-            "Both signs of the parallelism deviation were tried at the top; {sign} is the worse \
-             and is shown."
-        ));
-    }
-    notes
 }

@@ -2,15 +2,18 @@
 
 mod absolute;
 mod compare;
-mod dead_load;
 mod echo;
 mod events;
 mod formula;
 mod imperfect;
+mod jump;
 mod limits;
+mod notes;
 mod observe;
+mod run;
 mod southwell;
 mod straight;
+mod summary;
 mod verdict;
 mod walk;
 
@@ -30,11 +33,12 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
     let limits = limits::collect(setup, as_built.as_ref(), &imperfect);
     let comparisons = compare::all(setup, &closed_form, &straight);
     let absolute_stability = absolute::stability(setup, &closed_form, &straight);
-    let dead_load = dead_load::describe(setup, &imperfect);
+    let dead_load = jump::dead_load(setup, &imperfect);
+    let snap = jump::snap(setup, &imperfect);
     let decided = verdict::decide(setup, &limits, &imperfect);
     let imperfect_column = imperfect.summary(setup, &decided.limits);
     let mut warnings = setup.warnings.clone();
-    warnings.extend(limits::assumptions(setup, imperfect_column.as_ref()));
+    warnings.extend(notes::notes(setup, &imperfect));
     Assessment {
         title: setup.title.clone(),
         file: file.to_owned(),
@@ -52,6 +56,7 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
         comparisons,
         limits: decided.limits,
         dead_load,
+        snap,
         absolute_stability,
         stress_at_solid: limits::stress_at_solid(setup),
         failures: imperfect.failures,

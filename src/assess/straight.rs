@@ -19,8 +19,8 @@ pub(super) struct Critical {
     pub straightens_again: Option<Metre>,
 }
 
-/// Share of the value below which refining a singular point is round-off.
-const FLOOR: f64 = 1e-11;
+/// Share of a deflection below which refining it is round-off.
+pub(super) const FLOOR: f64 = 1e-11;
 
 /// What the machine travels more than the spring shortens, per newton: its seats' axial compliance.
 pub(super) fn seat_compliance(setup: &Setup) -> f64 {
@@ -82,10 +82,15 @@ pub(super) fn idealised(setup: &Setup) -> StraightColumn {
 pub(super) fn measure(setup: &Setup, deflection: Metre, force: Newton) -> Measure {
     Measure {
         deflection_m: deflection,
-        share_of_free_length: deflection / setup.spring.free_length,
+        share_of_free_length: share_of_free_length(setup, deflection, force),
         force_n: force,
-        margin: deflection / setup.duty.largest_working_deflection() - 1.0,
+        margin: setup.duty.margin(deflection, force),
     }
+}
+
+/// Shortening of the spring, without what its seats give, over its free length.
+pub(super) fn share_of_free_length(setup: &Setup, deflection: Metre, force: Newton) -> f64 {
+    (deflection - force * seat_compliance(setup)) / setup.spring.free_length
 }
 
 /// Whether the spring is solid before it gets there.

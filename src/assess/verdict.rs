@@ -2,7 +2,7 @@
 
 use super::imperfect::Imperfect;
 use crate::result::{Limit, Verdict};
-use crate::setup::{LimitKind, Setup};
+use crate::setup::{LimitKind, Loading, Setup};
 
 pub(super) struct Decided {
     pub verdict: Verdict,
@@ -19,18 +19,17 @@ const ROUND_OFF: f64 = 1e-9;
 pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> Decided {
     let mut limits = limits.to_vec();
     let duty = &setup.duty;
-    let reserve = |limit: &Limit| {
-        limit
-            .deflection_m
-            .map(|deflection| deflection / duty.needed(limit.name))
+    // What a limit reaches over what is needed of it; a limit beyond solid is never met.
+    let reached = |limit: &Limit| match (limit.deflection_m, limit.force_n) {
+        (Some(deflection), Some(force)) if !limit.beyond_solid => {
+            Some(duty.reached(deflection, force))
+        }
+        _ => None,
     };
     let governing = (0..limits.len())
-        .filter(|i| limits[*i].deflection_m.is_some())
-        .min_by(|a, b| {
-            let key = |i: usize| reserve(&limits[i]).unwrap_or(f64::INFINITY);
-            key(*a).total_cmp(&key(*b))
-        });
-    let Some(index) = governing else {
+        .filter_map(|i| Some((i, reached(&limits[i])? / duty.needed(limits[i].name))))
+        .min_by(|a, b| a.1.total_cmp(&b.1));
+    let Some((index, reserve)) = governing else {
         return Decided {
             verdict: Verdict::Undecided,
             governing: None,
@@ -39,23 +38,24 @@ pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> 
         };
     };
     limits[index].governs = true;
-    let fails = |limit: &Limit| reserve(limit).is_some_and(|r| r < 1.0 - ROUND_OFF);
-    let unsure = limits.iter().any(|limit| {
-        let (Some(deflection), Some(error)) = (limit.deflection_m, limit.error_m) else {
-            return false;
-        };
-        (deflection - duty.needed(limit.name)).abs() <= error
-    });
-    let clearly_fails = limits.iter().any(|limit| {
-        fails(limit)
-            && limit.deflection_m.unwrap_or(0.0) + limit.error_m.unwrap_or(0.0)
-                < duty.needed(limit.name)
-    });
-    let farthest = LimitKind::ALL
+    // Against what is needed: by how much it is missed, and the error of that.
+    let missed = |limit: &Limit| {
+        let needed = duty.needed(limit.name);
+        Some((
+            needed - reached(limit)?,
+            limit.error_m.unwrap_or(0.0).max(ROUND_OFF * needed),
+        ))
+    };
+    let clearly_fails = limits
         .iter()
-        .map(|kind| duty.needed(*kind))
-        .fold(0.0, f64::max);
-    let unknown = !imperfect.failures.is_empty() && imperfect.known_up_to() < farthest;
+        .filter_map(missed)
+        .any(|(by, error)| by > error);
+    let unsure = limits
+        .iter()
+        .filter(|limit| limit.error_m.is_some())
+        .filter_map(|limit| Some((missed(limit)?, limit.error_m?)))
+        .any(|((by, _), error)| by.abs() <= error);
+    let unknown = !imperfect.is_known_far_enough(setup);
     let verdict = if clearly_fails {
         Verdict::DoesNotHold
     } else if unknown || unsure {
@@ -64,7 +64,7 @@ pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> 
         Verdict::Holds
     };
     let limit = &limits[index];
-    let sentence = sentence(setup, verdict, limit, unknown);
+    let sentence = sentence(setup, verdict, limit, reserve, unknown);
     Decided {
         verdict,
         governing: Some(limit.name),
@@ -73,15 +73,17 @@ pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> 
     }
 }
 
-fn sentence(setup: &Setup, verdict: Verdict, limit: &Limit, unknown: bool) -> String {
+fn sentence(setup: &Setup, verdict: Verdict, limit: &Limit, reserve: f64, unknown: bool) -> String {
     let duty = &setup.duty;
     let title = limit.name.title();
-    let working = duty.largest_working_deflection();
-    let reached = limit.deflection_m.unwrap_or(f64::NAN) / working;
-    let needed = duty.needed(limit.name) / working;
+    let needed = duty.needed(limit.name) / duty.largest_working_deflection();
+    let working = match duty.loading {
+        Loading::Deflection => "the largest working deflection",
+        Loading::Force => "the largest working load",
+    };
     let against = format!(
-        "it is reached at {reached:.3} times the largest working deflection, {needed:.3} times is \
-         required"
+        "it is reached at {:.3} times {working}, {needed:.3} times is required",
+        reserve * needed
     );
     match verdict {
         Verdict::Holds => format!("Holds. The governing limit is \"{title}\": {against}."),

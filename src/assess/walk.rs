@@ -7,8 +7,28 @@ use crate::result::Failure;
 use crate::setup::Setup;
 use crate::solve::{Newton, Outcome, PathSettings, branch_point, crosses_another, follow};
 
-/// Rotation of a section beyond which a path is not followed: long past any use of the spring.
-const LARGEST_ROTATION: f64 = 1.5;
+/// How far a path is followed.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct Reach {
+    /// Largest rotation of a section, rad: long past any use of the spring.
+    rotation: f64,
+    /// Shortening, in solid deflections.
+    solid: f64,
+}
+
+impl Reach {
+    /// To solid.
+    pub const SOLID: Reach = Reach {
+        rotation: 1.5,
+        solid: 1.0,
+    };
+    /// A little farther, so that what another mesh finds near its end is found too.
+    pub const FARTHER: Reach = Reach {
+        rotation: 1.6,
+        solid: 1.03,
+    };
+}
+
 /// Width of an event's last bracket along the path, of order-one unknowns.
 pub(super) const BRACKET: f64 = 1e-11;
 /// First step on a branch: so short that the slope there is that at the branch point but for its
@@ -17,12 +37,23 @@ const FIRST_ON_BRANCH: f64 = 2e-3;
 /// Branch points turned at before the path is left as it is.
 const MOST_BRANCHES: usize = 4;
 
-/// How following ended.
+/// How a path ended.
+#[derive(Clone, Debug, PartialEq)]
+pub(super) enum PathEnd {
+    /// The spring is solid.
+    Solid,
+    /// A section has turned so far that the path is of no use any more.
+    BowedOver,
+    /// It could not be followed further.
+    Lost(Failure),
+}
+
+/// A path as followed.
 pub(super) struct Walked {
     /// Branch points: their index, and the point with the tangent of the path that led there.
     pub branches: Vec<(usize, Solved)>,
-    /// Why it did not end at solid.
-    pub failure: Option<Failure>,
+    /// How it ended.
+    pub end: PathEnd,
 }
 
 /// Follows from the one point given and appends.
@@ -31,13 +62,18 @@ pub(super) fn walk(
     column: &mut Column,
     newton: &mut Newton<3, 5>,
     points: &mut Vec<Solved>,
+    reach: Reach,
 ) -> Walked {
     let last = column.elements();
     let top = points[0].state.nodes[last][0];
-    let solid = setup.spring.solid_deflection() / column.scale.length;
+    let solid = reach.solid * setup.spring.solid_deflection() / column.scale.length;
+    let bowed_over = |point: &Solved| {
+        let nodes = &point.state.nodes;
+        nodes.iter().any(|node| node[2].abs() > reach.rotation)
+    };
     let mut settings = PathSettings::default();
     let mut branches: Vec<(usize, Solved)> = Vec::new();
-    loop {
+    let end = loop {
         let mut crossed = false;
         let from = points.len();
         let (outcome, _) = follow(column, newton, points, &settings, |points| {
@@ -46,23 +82,17 @@ pub(super) fn walk(
                 crossed = crosses_another(&points[n - 2], &points[n - 1])
                     && points[n - 1].negatives > points[n - 2].negatives;
             }
-            let now = &points[n - 1];
-            crossed
-                || top - now.state.nodes[last][0] >= solid
-                || now
-                    .state
-                    .nodes
-                    .iter()
-                    .any(|node| node[2].abs() > LARGEST_ROTATION)
+            crossed || top - height(&points[n - 1], last) >= solid || bowed_over(&points[n - 1])
         });
+        let lost = |cause: String| PathEnd::Lost(failure(cause));
         match outcome {
-            Outcome::Stopped if crossed && branches.len() < MOST_BRANCHES => {
+            Outcome::Stopped if crossed => {
+                if branches.len() == MOST_BRANCHES {
+                    break lost(format!("more than {MOST_BRANCHES} branch points were met"));
+                }
                 let after = points.len() - 2;
                 let Some(found) = branch_point(column, newton, points, after, BRACKET) else {
-                    return Walked {
-                        branches,
-                        failure: None,
-                    };
+                    break lost("a branch point could not be located".into());
                 };
                 points.pop();
                 points[after].distance = found.located.distance;
@@ -71,19 +101,33 @@ pub(super) fn walk(
                 settings.first_step = FIRST_ON_BRANCH;
             }
             Outcome::Stopped => {
-                return Walked {
-                    branches,
-                    failure: None,
+                let bowed = points.last().is_some_and(&bowed_over);
+                break if bowed {
+                    PathEnd::BowedOver
+                } else {
+                    PathEnd::Solid
                 };
             }
-            Outcome::TooLong | Outcome::Lost(_) => {
-                return Walked {
-                    branches,
-                    failure: Some(failure(outcome, &settings)),
-                };
+            Outcome::TooLong => {
+                break lost(format!(
+                    "the path did not end within {} points",
+                    settings.most_points
+                ));
+            }
+            Outcome::Lost(failed) => {
+                break lost(format!(
+                    "Newton did not converge ({} iterations, last step {:.1e}); the step was \
+                     halved down to {:.0e}",
+                    failed.iterations, failed.last_step, settings.smallest_step
+                ));
             }
         }
-    }
+    };
+    Walked { branches, end }
+}
+
+fn height(point: &Solved, last: usize) -> f64 {
+    point.state.nodes[last][0]
 }
 
 /// Largest sideways part of a direction, with its sign.
@@ -96,18 +140,8 @@ fn sideways(direction: &ColumnState) -> f64 {
         .unwrap_or(0.0)
 }
 
-fn failure(outcome: Outcome, settings: &PathSettings) -> Failure {
-    let cause = match outcome {
-        Outcome::Lost(failed) => format!(
-            "Newton did not converge ({} iterations, last step {:.1e}); the step was halved down \
-             to {:.0e}",
-            failed.iterations, failed.last_step, settings.smallest_step
-        ),
-        _ => format!(
-            "the path did not end within {} points",
-            settings.most_points
-        ),
-    };
+/// A failure of the load path; where it stopped is filled in by the caller.
+pub(super) fn failure(cause: String) -> Failure {
     Failure {
         what: "load path of the imperfect column".into(),
         cause,

@@ -64,11 +64,18 @@ impl<'a> StraightScan<'a> {
         self.newton.evaluate(self.column, &state, load)
     }
 
-    /// Smallest eigenvalue in size and its direction at that shortening.
+    /// Smallest lateral eigenvalue in size and its direction at that shortening.
     fn softest_at(&mut self, share: f64) -> (ColumnState, f64) {
         let load = share / self.compliance;
         let state = self.column.straight_state(load);
-        null_direction(self.column, &mut self.newton, &state, load)
+        // Straight, the axial unknowns stand apart: only sideways motion and rotation count.
+        null_direction(
+            self.column,
+            &mut self.newton,
+            &state,
+            load,
+            [false, true, true],
+        )
     }
 
     /// A share at which the straight column is unstable, before `limit`, and one before it at
@@ -107,7 +114,8 @@ impl<'a> StraightScan<'a> {
             } else {
                 low = left;
             }
-            if high - low < 1e-9 {
+            // The eigenvalue is flat at its least value: what is missed is of the width's square.
+            if high - low < 1e-5 {
                 break;
             }
         }

@@ -3,7 +3,7 @@
 use super::Peak;
 use super::element::Lever;
 use super::layout::{Column, ColumnState, EndLaws, Hold, NaturalShape};
-use crate::setup::{BowShape, Imperfections, Restraint, Setup, Support, TopPosition};
+use crate::setup::{BowShape, Imperfections, Orientation, Restraint, Setup, Support, TopPosition};
 use std::f64::consts::PI;
 
 /// What of the spring is taken as deformable.
@@ -20,8 +20,8 @@ pub enum Idealisation {
 pub struct Deviations<'a> {
     /// Their sizes.
     pub sizes: &'a Imperfections,
-    /// Sign of the parallelism deviation, +1 or −1.
-    pub parallelism_sign: f64,
+    /// How they lie to one another.
+    pub orientation: Orientation,
     /// First mode on the same mesh, with its largest sideways motion of size one: needed for a
     /// bow of that shape.
     pub mode: Option<&'a ColumnState>,
@@ -44,31 +44,36 @@ impl Column {
         let section = spring.section(length);
         let bow = deviations
             .filter(|d| d.sizes.bow_shape == BowShape::HalfSine)
-            .map_or(0.0, |d| d.sizes.bow / length);
+            .map_or(0.0, |d| d.orientation.bow * d.sizes.bow / length);
         let shape = NaturalShape {
             angle: &|s| bow * PI * (PI * s).cos(),
             curvature: &|s| -bow * PI * PI * (PI * s).sin(),
         };
-        let across = deviations.map_or(0.0, |d| d.sizes.eccentricity);
-        let lever = |arm: f64, across: f64| Lever {
-            along: (dead + arm) / length,
-            across: across / length,
-        };
-        let mut column = Column::new(length, elements, &|_| section, &shape).with_levers(
-            lever(setup.bottom.arm, -across),
-            lever(setup.top.arm, across),
-        );
-        let (lean, wedge, landed) = deviations.map_or((0.0, 0.0, 0.0), |d| {
+        let across = deviations.map_or(0.0, |d| d.orientation.eccentricity * d.sizes.eccentricity);
+        let (leans, landed) = deviations.map_or(([0.0; 2], 0.0), |d| {
+            let lean = d.orientation.squareness * d.sizes.squareness;
+            let wedge = d.orientation.parallelism * d.sizes.parallelism / spring.outer_diameter();
             let landed = match d.sizes.top_position {
                 TopPosition::Piloted => 0.0,
-                TopPosition::Landed => d.sizes.squareness,
+                TopPosition::Landed => lean,
             };
-            (
-                d.sizes.squareness / spring.free_length,
-                d.parallelism_sign * d.sizes.parallelism / spring.outer_diameter(),
-                landed,
-            )
+            let angle = lean / spring.free_length;
+            let leans = if d.orientation.wedge_at_top {
+                [angle, angle + wedge]
+            } else {
+                [angle + wedge, angle]
+            };
+            (leans, landed)
         });
+        // An arm stands square on the end plane, which leans against the section by `lean`.
+        let lever = |arm: f64, across: f64, lean: f64| Lever {
+            along: (dead + arm * lean.cos()) / length,
+            across: (across - arm * lean.sin()) / length,
+        };
+        let mut column = Column::new(length, elements, &|_| section, &shape).with_levers(
+            lever(setup.bottom.arm, across, leans[0]),
+            lever(setup.top.arm, -across, leans[1]),
+        );
         let real = f64::from(deviations.is_some());
         let scale = column.scale;
         let laws = |support: &Support, axial: Hold, angle: f64, aside: f64| {
@@ -94,14 +99,14 @@ impl Column {
                 ),
             ])
         };
-        let bottom = laws(&setup.bottom, Hold::Held(0.0), lean, 0.0);
-        let top = laws(&setup.top, Hold::Free, lean + wedge, landed);
+        let bottom = laws(&setup.bottom, Hold::Held(0.0), leans[0], 0.0);
+        let top = laws(&setup.top, Hold::Free, leans[1], landed);
         column = column.held(bottom, top);
         if let Some(d) = deviations
             && d.sizes.bow_shape == BowShape::FirstMode
             && let Some(mode) = d.mode
         {
-            column.add_bow(mode, d.sizes.bow / length);
+            column.add_bow(mode, d.orientation.bow * d.sizes.bow / length);
         }
         column
     }

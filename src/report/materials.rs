@@ -46,7 +46,9 @@ pub fn materials_text(materials: &[WireMaterial], units: Units) -> String {
     out.push('\n');
     out += &paragraph(
         "",
-        "Tables of moduli differ by some per cent. Where the maker of the wire gives a value, use that.",
+        "Change of the moduli with temperature: EN 13906-1 (from memory), the share of G taken for E \
+         too. Expansion and density: common handbook values, from memory. Tables of moduli differ by \
+         some per cent. Where the maker of the wire gives a value, use that.",
     );
     out
 }

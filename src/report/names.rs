@@ -26,6 +26,7 @@ pub fn mark_title(key: &str) -> String {
         "largest_force" => "largest force".to_string(),
         "largest_travel" => "largest travel".to_string(),
         "force_regained" => "rests again, same force".to_string(),
+        "travel_regained" => "rests again, same travel".to_string(),
         "installed" => "installed".to_string(),
         "working" => "working point".to_string(),
         other => other.replace('_', " "),

@@ -28,11 +28,12 @@ pub enum Verdict {
 pub struct Measure {
     /// Deflection, m (travel of the machine).
     pub deflection_m: Metre,
-    /// Deflection over the free length.
+    /// Shortening of the spring over its free length (without what soft seats give).
     pub share_of_free_length: f64,
     /// Axial force there, N.
     pub force_n: Newton,
-    /// Deflection / (working deflection + its tolerance) − 1.
+    /// Deflection / (working deflection + its tolerance) − 1; under a dead load the same ratio of
+    /// forces.
     pub margin: f64,
 }
 
@@ -118,8 +119,11 @@ pub struct ImperfectColumn {
     pub bow_at_working_error_m: Option<Metre>,
     /// Wire stress at the working deflection, Pa.
     pub stress_at_working_pa: Option<Pascal>,
-    /// Sign of the parallelism deviation that was worse: "+", "-" or `null` where it does not matter.
-    pub worse_parallelism_sign: Option<String>,
+    /// How the deviations lie to one another in the worst way, in words; `null` where there is
+    /// only one way.
+    pub worst_orientation: Option<String>,
+    /// Number of ways that were tried.
+    pub orientations_tried: usize,
     /// Southwell estimate; `null` where the path gives none.
     pub southwell: Option<Southwell>,
     /// Which branch the path took, in words.
@@ -136,13 +140,15 @@ pub struct ImperfectColumn {
 pub struct Limit {
     /// Which limit.
     pub name: LimitKind,
-    /// Deflection at which it is reached, m; `null`: never (before solid), or not checked.
+    /// Deflection at which it is reached, m; `null`: not before solid, not as far as the path goes
+    /// (`looked_up_to_m`), or not checked.
     pub deflection_m: Option<Metre>,
-    /// Deflection over the free length.
+    /// Shortening of the spring over its free length (without what soft seats give).
     pub share_of_free_length: Option<f64>,
     /// Axial force there, N.
     pub force_n: Option<Newton>,
-    /// Deflection / (working deflection + tolerance) − 1; `null`: never reached.
+    /// Deflection / (working deflection + tolerance) − 1, under a dead load the same ratio of
+    /// forces; `null`: not reached.
     pub margin: Option<f64>,
     /// Margin required of this limit.
     pub required_margin: f64,
@@ -152,6 +158,8 @@ pub struct Limit {
     pub governs: bool,
     /// Whether it lies beyond solid, so that the spring never gets there.
     pub beyond_solid: bool,
+    /// For a limit not found: how far the path is known, m, where that is short of solid.
+    pub looked_up_to_m: Option<Metre>,
     /// Which model it belongs to, and what was assumed, in words.
     pub note: String,
 }
@@ -181,22 +189,44 @@ pub struct Comparison {
     pub sentence: String,
 }
 
-/// What happens under a dead load.
+/// What happens under a dead load. All `null` but the first two: the force rises along the path.
 #[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct DeadLoad {
-    /// The largest force the path carries, N; `null`: it rises up to solid.
+    /// How far the path is known, m, where it ends short of solid.
+    pub path_ends_at_m: Option<Metre>,
+    /// The largest force the path carries, N.
     pub lost_at_force_n: Option<Newton>,
     /// Deflection at which it is lost, m.
     pub lost_at_deflection_m: Option<Metre>,
-    /// Deflection at which the spring comes to rest under the same force, m; solid where
-    /// nothing else stops it.
+    /// Deflection at which the spring comes to rest under the same force, m.
     pub rests_at_deflection_m: Option<Metre>,
+    /// Whether it rests solid, for want of a stable state before.
+    pub rests_solid: bool,
     /// How far it jumps, m.
     pub jump_m: Option<Metre>,
-    /// Energy freed by the jump, J.
+    /// Energy freed by the jump, J: work of the load less the strain energy gained.
     pub energy_freed_j: Option<Joule>,
-    /// The same in a sentence.
-    pub sentence: String,
+    /// Whether coils clash on the way: from there on the column model is a guide only.
+    pub clash_on_the_way: bool,
+}
+
+/// What happens when a set deflection is lost: the spring snaps sideways, its travel held.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Snap {
+    /// Travel at which it snaps, m.
+    pub lost_at_deflection_m: Metre,
+    /// Force just before, N.
+    pub force_before_n: Newton,
+    /// Force in the next stable state at the same travel, N; `null`: none on the path.
+    pub force_after_n: Option<Newton>,
+    /// Bow just before, m.
+    pub bow_before_m: Metre,
+    /// Bow in that state, m.
+    pub bow_after_m: Option<Metre>,
+    /// Energy freed, J, soft seats included.
+    pub energy_freed_j: Option<Joule>,
+    /// Whether coils clash on the way: from there on the column model is a guide only.
+    pub clash_on_the_way: bool,
 }
 
 /// Absolute stability: no buckling at any deflection.
@@ -274,6 +304,8 @@ pub struct Assessment {
     pub limits: Vec<Limit>,
     /// Under a dead load; `null` where the duty sets the deflection.
     pub dead_load: Option<DeadLoad>,
+    /// Where a set deflection is lost; `null` where it is not, or under a dead load.
+    pub snap: Option<Snap>,
     /// Absolute stability.
     pub absolute_stability: AbsoluteStability,
     /// Wire stress at solid.

@@ -10,7 +10,7 @@ mod wires;
 
 pub use assessment::{
     AbsoluteStability, Assessment, ClosedForm, ClosedFormCurve, Comparison, Computed, DeadLoad,
-    Failure, ImperfectColumn, Limit, Measure, Side, Southwell, StraightColumn, StressAtSolid,
+    Failure, ImperfectColumn, Limit, Measure, Side, Snap, Southwell, StraightColumn, StressAtSolid,
     Verdict,
 };
 pub use echo::{DutyEcho, ImperfectionEcho, SpringEcho, SupportEcho, SupportsEcho};

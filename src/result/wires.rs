@@ -16,8 +16,12 @@ pub struct WireMaterial {
     pub expansion_per_k: f64,
     pub density_kg_per_m3: f64,
     pub source: &'static str,
-    /// "seen" in the source, or "from memory" of it.
+    /// How sure the moduli are: "seen" in the source, or "from memory" of it.
     pub sureness: &'static str,
+    /// Source of the change with temperature and how sure it is.
+    pub modulus_loss_source: &'static str,
+    /// Source of expansion and density and how sure they are.
+    pub expansion_and_density_source: &'static str,
 }
 
 impl From<&Material> for WireMaterial {
@@ -35,6 +39,8 @@ impl From<&Material> for WireMaterial {
                 Sureness::Seen => "seen",
                 Sureness::FromMemory => "from memory",
             },
+            modulus_loss_source: "EN 13906-1 (from memory), the share of G taken for E too",
+            expansion_and_density_source: "common handbook values, from memory",
         }
     }
 }

@@ -45,6 +45,11 @@ impl LimitKind {
         LimitKind::Solid,
     ];
 
+    /// Whether it is the loss of the load or of the travel itself.
+    pub fn is_loss(self) -> bool {
+        matches!(self, LimitKind::DeadLoadLost | LimitKind::TravelLost)
+    }
+
     /// Key used in case files and in JSON.
     pub fn key(self) -> &'static str {
         match self {
@@ -103,7 +108,7 @@ pub struct Duty {
     pub installed_deflection: Metre,
     /// Working deflection, m.
     pub working_deflection: Metre,
-    /// The working force, N, where the duty was given as a force.
+    /// The working force, N, where the duty was given as a force: always, under a dead load.
     pub working_force: Option<Newton>,
     /// Tolerance on the working deflection, m (half the band): added to it in every margin.
     pub working_tolerance: Metre,
@@ -125,9 +130,33 @@ impl Duty {
         self.working_deflection + self.working_tolerance
     }
 
-    /// Deflection that every limit must at least reach, m.
+    /// Deflection that a limit must at least reach, m, as counted by [`Duty::reached`].
     pub fn needed(&self, limit: LimitKind) -> Metre {
         let working = self.largest_working_deflection();
         (working * (1.0 + self.margins.of(limit))).max(working + self.overtravel)
+    }
+
+    /// What a state counts for against the working deflection, m. Where a machine sets the
+    /// deflection: that deflection. Under a dead load: the deflection that its force would give the
+    /// straight spring, so that ratios are ratios of forces; a bowed spring is shorter than that.
+    pub fn reached(&self, deflection: Metre, force: Newton) -> Metre {
+        match (self.loading, self.working_force) {
+            (Loading::Force, Some(working)) => force * self.working_deflection / working,
+            _ => deflection,
+        }
+    }
+
+    /// Margin of a state: [`Duty::reached`] over the largest working deflection, less 1.
+    pub fn margin(&self, deflection: Metre, force: Newton) -> f64 {
+        self.reached(deflection, force) / self.largest_working_deflection() - 1.0
+    }
+
+    /// Whether that limit exists under this kind of loading.
+    pub fn has(&self, limit: LimitKind) -> bool {
+        match limit {
+            LimitKind::DeadLoadLost => self.loading == Loading::Force,
+            LimitKind::TravelLost => self.loading == Loading::Deflection,
+            _ => true,
+        }
     }
 }

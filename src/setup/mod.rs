@@ -6,7 +6,7 @@ mod imperfections;
 mod support;
 
 pub use duty::{Duty, LimitKind, Loading, Margins};
-pub use imperfections::{BowShape, Imperfections, TopPosition};
+pub use imperfections::{BowShape, Imperfections, Orientation, TopPosition};
 pub use support::{Restraint, Support};
 
 use crate::spring::Spring;

@@ -135,6 +135,7 @@ fn limit(name: LimitKind, at: Option<(f64, f64)>, note: &str) -> Limit {
         error_m: found.map(|_| 2.3e-12),
         governs: false,
         beyond_solid: false,
+        looked_up_to_m: None,
         note: note.into(),
     }
 }
@@ -337,7 +338,8 @@ pub fn assessment(shape: Shape) -> Assessment {
             bow_at_working_m: Some(0.00175),
             bow_at_working_error_m: Some(6.1e-11),
             stress_at_working_pa: Some(6.12e8),
-            worse_parallelism_sign: None,
+            worst_orientation: None,
+            orientations_tried: 1,
             southwell: Some(Southwell {
                 deflection_m: 0.04815,
                 r_squared: 0.999_987,
@@ -364,16 +366,19 @@ pub fn assessment(shape: Shape) -> Assessment {
         limits,
         dead_load: if let Shape::Falling = shape {
             Some(DeadLoad {
+                path_ends_at_m: None,
+                rests_solid: true,
+                clash_on_the_way: true,
                 lost_at_force_n: Some(381.2),
                 lost_at_deflection_m: Some(0.04612),
                 rests_at_deflection_m: Some(SOLID),
                 jump_m: Some(SOLID - 0.04612),
                 energy_freed_j: Some(4.871),
-                sentence: "An invented jump.".into(),
             })
         } else {
             None
         },
+        snap: None,
         absolute_stability: AbsoluteStability {
             formula: Some(false),
             formula_below_m: Some(0.1032),

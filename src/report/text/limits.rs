@@ -30,7 +30,7 @@ pub fn limits(assessment: &Assessment, units: Units) -> String {
             let Some(deflection) = limit.deflection_m else {
                 return Row {
                     strong: limit.governs,
-                    ..Row::words(label, absent(assessment, limit))
+                    ..Row::words(label, absent(assessment, limit, units))
                 };
             };
             if limit.beyond_solid {
@@ -74,15 +74,21 @@ pub fn limits(assessment: &Assessment, units: Units) -> String {
 }
 
 /// Why a limit has no deflection.
-fn absent(assessment: &Assessment, limit: &Limit) -> &'static str {
+fn absent(assessment: &Assessment, limit: &Limit, units: Units) -> String {
     match limit.name {
         LimitKind::Stress if assessment.duty.allowable_stress_pa.is_none() => {
-            "not checked: no allowable stress given"
+            "not checked: no allowable stress given".into()
         }
         _ if assessment.imperfect_column.is_none() && limit.name != LimitKind::Critical => {
-            "not computed"
+            "not computed".into()
         }
-        LimitKind::Critical => never(assessment),
-        _ => "none before solid",
+        LimitKind::Critical => never(assessment).into(),
+        _ => match limit.looked_up_to_m {
+            Some(deflection) => format!(
+                "none up to {}, where the path ends",
+                units.length().show(deflection)
+            ),
+            None => "none before solid".into(),
+        },
     }
 }

@@ -245,16 +245,21 @@ fn imperfect_notes(assessment: &Assessment, column: &ImperfectColumn, units: Uni
             ),
         );
     }
-    let sign = column
-        .worse_parallelism_sign
+    let lying = column
+        .worst_orientation
         .as_ref()
-        .map(|sign| format!(" The worse sign of the parallelism deviation is {sign}."))
+        .map(|worst| {
+            format!(
+                " The deviations can lie to one another in {} ways; the worst is shown: {worst}.",
+                column.orientations_tried
+            )
+        })
         .unwrap_or_default();
     let branch = column.branch.trim_end_matches('.');
     out += &paragraph(
         "  ",
         &format!(
-            "Path: {branch}; {} elements in the finer mesh.{sign}",
+            "Path: {branch}; {} elements in the finer mesh.{lying}",
             column.elements
         ),
     );

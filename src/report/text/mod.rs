@@ -34,6 +34,7 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
         measures::comparisons(assessment, units),
         limits::limits(assessment, units),
         remarks::dead_load(assessment, units),
+        remarks::snap(assessment, units),
         remarks::absolute_stability(assessment, units),
         remarks::stress_at_solid(assessment, units),
         inputs::inputs(assessment, units),

@@ -10,28 +10,76 @@ pub fn dead_load(assessment: &Assessment, units: Units) -> String {
     let Some(load) = &assessment.dead_load else {
         return String::new();
     };
-    let text = match (load.lost_at_force_n, load.lost_at_deflection_m) {
-        (Some(force), Some(at)) => {
-            let mut text = format!(
-                "The load is lost at {}, at a deflection of {}.",
-                units.show_force(force),
-                units.show_length(at)
-            );
-            if let Some(jump) = load.jump_m {
-                text += &format!(" From there the spring jumps {}", units.show_length(jump));
-                if let Some(rest) = load.rests_at_deflection_m {
-                    text += &format!(", to rest at {}", units.show_length(rest));
-                }
-                if let Some(energy) = load.energy_freed_j {
-                    text += &format!(", and frees {}", units.show_energy(energy));
-                }
-                text += ".";
+    let mut text = match (load.lost_at_force_n, load.lost_at_deflection_m) {
+        (Some(force), Some(at)) => format!(
+            "The load is lost at {}, at a deflection of {}.",
+            units.show_force(force),
+            units.show_length(at)
+        ),
+        _ => match load.path_ends_at_m {
+            Some(end) => format!(
+                "The force rises up to {}, where the path ends: no dead load is lost before.",
+                units.show_length(end)
+            ),
+            None => {
+                "The force rises all the way to solid: a dead load is not lost before.".to_string()
             }
-            text
-        }
-        _ => "The force rises all the way to solid: a dead load is not lost before.".to_string(),
+        },
     };
+    if let (Some(jump), Some(rest)) = (load.jump_m, load.rests_at_deflection_m) {
+        let state = if load.rests_solid {
+            "until it is solid"
+        } else {
+            "to the next stable state"
+        };
+        text += &format!(
+            " From there the spring jumps {}, {state} at {}",
+            units.show_length(jump),
+            units.show_length(rest)
+        );
+        if let Some(energy) = load.energy_freed_j {
+            text += &format!(", and frees {}", units.show_energy(energy));
+        }
+        text += ".";
+    } else if load.lost_at_force_n.is_some() {
+        text += " Where it comes to rest is not on the path.";
+    }
+    text += clash(load.clash_on_the_way);
     section("Under a dead load", &paragraph("  ", &text))
+}
+
+/// Where a set deflection is lost, and what the snap frees.
+pub fn snap(assessment: &Assessment, units: Units) -> String {
+    let Some(snap) = &assessment.snap else {
+        return String::new();
+    };
+    let mut text = format!(
+        "At a travel of {} the spring snaps sideways, the travel held: the force falls from {}",
+        units.show_length(snap.lost_at_deflection_m),
+        units.show_force(snap.force_before_n)
+    );
+    match (snap.force_after_n, snap.bow_after_m, snap.energy_freed_j) {
+        (Some(force), Some(bow), Some(energy)) => {
+            text += &format!(
+                " to {}, the bow grows from {} to {}, and {} is freed.",
+                units.show_force(force),
+                units.show_length(snap.bow_before_m),
+                units.show_length(bow),
+                units.show_energy(energy)
+            );
+        }
+        _ => text += "; the next stable state is not on the path.",
+    }
+    text += clash(snap.clash_on_the_way);
+    section("Set travel lost", &paragraph("  ", &text))
+}
+
+fn clash(on_the_way: bool) -> &'static str {
+    if on_the_way {
+        " Its coils clash on the way: from there on the column model is a guide only."
+    } else {
+        ""
+    }
 }
 
 /// What formula and column say about buckling at no deflection at all.

@@ -1,0 +1,73 @@
+//! What happens when a dead load, or a set deflection, is lost: the jump to the next stable state of
+//! the path, and the energy it frees.
+
+use super::events::{Event, EventKind};
+use super::imperfect::Imperfect;
+use super::straight::seat_compliance;
+use crate::result::{DeadLoad, Snap};
+use crate::setup::{LimitKind, Loading, Setup};
+
+/// Under a dead load P the travel jumps: freed is P·Δs less the strain energy gained, the soft
+/// seats' energy being that of P before and after.
+pub(super) fn dead_load(setup: &Setup, imperfect: &Imperfect) -> Option<DeadLoad> {
+    if setup.duty.loading != Loading::Force {
+        return None;
+    }
+    let run = &imperfect.fine;
+    let lost = run.event(EventKind::Limit(LimitKind::DeadLoadLost));
+    let regained = run
+        .event(EventKind::ForceRegained)
+        .filter(|event| event.point.unstable_dead_load == 0);
+    let rest = regained.or_else(|| run.event(EventKind::Limit(LimitKind::Solid)));
+    let jump = lost.zip(rest);
+    let force = lost.map_or(0.0, |lost| lost.point.force_n);
+    let rests_at = jump.map(|(_, rest)| rest.point.shortening_m + force * seat_compliance(setup));
+    Some(DeadLoad {
+        path_ends_at_m: imperfect.ends_before_solid(),
+        lost_at_force_n: lost.map(|lost| lost.point.force_n),
+        lost_at_deflection_m: lost.map(|lost| lost.point.deflection_m),
+        rests_at_deflection_m: rests_at,
+        rests_solid: jump.is_some() && regained.is_none(),
+        jump_m: jump
+            .zip(rests_at)
+            .map(|((lost, _), at)| at - lost.point.deflection_m),
+        energy_freed_j: jump.map(|(lost, rest)| {
+            force * (rest.point.shortening_m - lost.point.shortening_m)
+                - (rest.strain_energy - lost.strain_energy)
+        }),
+        clash_on_the_way: jump.is_some_and(|(_, rest)| clashes_before(imperfect, rest)),
+    })
+}
+
+/// Under a set deflection the force drops: freed is the strain energy lost, that of the soft seats
+/// included.
+pub(super) fn snap(setup: &Setup, imperfect: &Imperfect) -> Option<Snap> {
+    if setup.duty.loading != Loading::Deflection {
+        return None;
+    }
+    let run = &imperfect.fine;
+    let lost = run.event(EventKind::Limit(LimitKind::TravelLost))?;
+    let rest = run
+        .event(EventKind::TravelRegained)
+        .filter(|event| event.point.unstable_set_deflection == 0);
+    let stored = |event: &Event| {
+        event.strain_energy + 0.5 * event.point.force_n.powi(2) * seat_compliance(setup)
+    };
+    Some(Snap {
+        lost_at_deflection_m: lost.point.deflection_m,
+        force_before_n: lost.point.force_n,
+        force_after_n: rest.map(|rest| rest.point.force_n),
+        bow_before_m: lost.point.bow_m,
+        bow_after_m: rest.map(|rest| rest.point.bow_m),
+        energy_freed_j: rest.map(|rest| stored(lost) - stored(rest)),
+        clash_on_the_way: rest.is_some_and(|rest| clashes_before(imperfect, rest)),
+    })
+}
+
+/// Whether the path reaches the first clash of coils before that event, by the bow it has there.
+fn clashes_before(imperfect: &Imperfect, event: &Event) -> bool {
+    imperfect
+        .fine
+        .event(EventKind::Limit(LimitKind::Clash))
+        .is_some_and(|clash| clash.point.bow_m < event.point.bow_m)
+}
