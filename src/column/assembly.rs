@@ -3,7 +3,7 @@
 use super::element::{Element, INNER};
 use super::layout::{Column, ColumnState, EndLaws, Hold};
 use crate::solve::{Assembled, SymmetricFactor, System};
-use nalgebra::{Matrix3, SMatrix, SVector, Vector3};
+use nalgebra::{Matrix3, SVector, Vector3};
 
 /// Negative eigenvalues of an element's inner matrix in every stable state: its two forces,
 /// multipliers of the geometry.
@@ -25,42 +25,28 @@ impl System<3, INNER> for Column {
             let forms = element.forms(&self.tables, a, b, inner);
             let factor = SymmetricFactor::new(&forms.inner_matrix());
             out.inner_negatives += i64::from(factor.negatives);
-            let coupling = forms.inner_to_outer();
-            let mut ahead = coupling;
-            factor.solve_columns(&mut ahead);
-            let mut step = forms.inner_residual();
-            factor.solve(&mut step);
-            let taken = lower_product(&coupling, &ahead);
-            let pulled = coupling.tr_mul(&step);
-            let (fx, fy) = (inner[3], inner[4]);
-            out.residual[e] += Vector3::new(
-                -fx - pulled[0],
-                -fy - pulled[1],
-                forms.moment[0] - pulled[2],
-            );
-            out.residual[e + 1] +=
-                Vector3::new(fx - pulled[3], fy - pulled[4], forms.moment[1] - pulled[5]);
-            let mut right = Matrix3::zeros();
-            for j in 0..3 {
-                for i in j..3 {
-                    out.tangent.diagonal[e][(i, j)] -= taken[(i, j)];
-                    out.tangent.diagonal[e + 1][(i, j)] -= taken[(3 + i, 3 + j)];
-                }
-                for i in 0..3 {
-                    right[(i, j)] = -taken[(3 + j, i)];
-                }
-            }
-            out.tangent.diagonal[e][(2, 2)] += forms.bending[0][0];
-            out.tangent.diagonal[e + 1][(2, 2)] += forms.bending[1][1];
-            right[(2, 2)] += forms.bending[1][0];
-            out.tangent.right[e] = right;
-            self.inner_ahead[e] = ahead;
-            self.inner_step[e] = step;
-        }
-        for block in &mut out.tangent.diagonal {
-            block[(0, 1)] = block[(1, 0)];
-            block[(0, 2)] = block[(2, 0)];
-            block[(1, 2)] = block[(2, 1)];
+            let right = forms.inner_right();
+            let mut answers = right;
+            factor.solve_rows(&mut answers);
+            let taken = |row: usize, other: usize| -> f64 {
+                (0..INNER)
+                    .map(|k| right[(row, k)] * answers[(other, k)])
+                    .sum()
+            };
+            // Rows of `right` for the differences of position have a single entry, 1.
+            let (xx, xy, yy) = (answers[(0, 3)], answers[(0, 4)], answers[(1, 4)]);
+            let (xa, ya) = (answers[(2, 3)], answers[(2, 4)]);
+            let (xb, yb) = (answers[(3, 3)], answers[(3, 4)]);
+            let (fx, fy) = (inner[3] - answers[(4, 3)], inner[4] - answers[(4, 4)]);
+            let aa = forms.bending[0][0] - taken(2, 2);
+            let ab = forms.bending[1][0] - taken(2, 3);
+            let bb = forms.bending[1][1] - taken(3, 3);
+            out.residual[e] += Vector3::new(-fx, -fy, forms.moment[0] - taken(2, 4));
+            out.residual[e + 1] += Vector3::new(fx, fy, forms.moment[1] - taken(3, 4));
+            out.tangent.diagonal[e] += Matrix3::new(-xx, -xy, xa, -xy, -yy, ya, xa, ya, aa);
+            out.tangent.diagonal[e + 1] += Matrix3::new(-xx, -xy, -xb, -xy, -yy, -yb, -xb, -yb, bb);
+            out.tangent.right[e] = Matrix3::new(xx, xy, xb, xy, yy, yb, -xa, -ya, ab);
+            self.inner_answers[e] = answers;
         }
         let last = self.elements.len();
         hold_end(&self.bottom, 0, state, out);
@@ -74,11 +60,9 @@ impl System<3, INNER> for Column {
     fn recover(&self, step: &mut ColumnState, with_residual: bool) {
         for e in 0..self.elements.len() {
             let (a, b) = (&step.nodes[e], &step.nodes[e + 1]);
-            let outer = SVector::<f64, 6>::new(a[0], a[1], a[2], b[0], b[1], b[2]);
-            let mut inner = -(self.inner_ahead[e] * outer);
-            if with_residual {
-                inner -= self.inner_step[e];
-            }
+            let residual = if with_residual { 1.0 } else { 0.0 };
+            let outer = SVector::from([b[0] - a[0], b[1] - a[1], a[2], b[2], residual]);
+            let inner = -self.inner_answers[e].tr_mul(&outer);
             step.inner[e] = inner;
         }
     }
@@ -86,22 +70,6 @@ impl System<3, INNER> for Column {
     fn load_scale(&self) -> f64 {
         self.load_scale
     }
-}
-
-/// Lower triangle of `aᵀ b`, which is symmetric.
-#[inline(always)]
-fn lower_product(a: &SMatrix<f64, INNER, 6>, b: &SMatrix<f64, INNER, 6>) -> SMatrix<f64, 6, 6> {
-    let mut product = SMatrix::zeros();
-    for j in 0..6 {
-        for i in j..6 {
-            let mut sum = 0.0;
-            for k in 0..INNER {
-                sum += a[(k, i)] * b[(k, j)];
-            }
-            product[(i, j)] = sum;
-        }
-    }
-    product
 }
 
 /// Adds the laws of an end: elastic ones to residual and tangent; held unknowns become identity

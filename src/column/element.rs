@@ -122,16 +122,17 @@ impl Element {
         };
         let half = 0.5 * self.length;
         let inverse_half = 1.0 / half;
+        let along = |table: &[f64; FUNCTIONS]| -> f64 {
+            table.iter().zip(rotations).map(|(n, q)| n * q).sum()
+        };
+        // All calls first: the loop below then runs without any.
+        let directions = tables.values.each_ref().map(|value| along(value).sin_cos());
         for g in 0..GAUSS_POINTS {
             let (value, slope) = (&tables.values[g], &tables.slopes[g]);
             let law = &self.points[g];
-            let (mut angle, mut turn) = (0.0, 0.0);
-            for i in 0..FUNCTIONS {
-                angle += value[i] * rotations[i];
-                turn += slope[i] * rotations[i];
-            }
+            let turn = along(slope);
             let weight = GAUSS_WEIGHT[g] * half;
-            let (sin, cos) = angle.sin_cos();
+            let (sin, cos) = directions[g];
             let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
             let (ca, cs) = (law.axial_compliance, law.shear_compliance);
             let c = ca - cs;
@@ -153,7 +154,7 @@ impl Element {
                 forms.coupling[i][0] += value[i] * mixed_x;
                 forms.coupling[i][1] += value[i] * mixed_y;
                 let (si, vi) = (slope[i] * stiff, value[i] * soft);
-                for j in 0..=i {
+                for j in 0..FUNCTIONS {
                     forms.bending[i][j] += si * slope[j] + vi * value[j];
                 }
             }
@@ -250,16 +251,24 @@ impl ElementForms {
         matrix
     }
 
-    /// Inner part of the residual.
+    /// Right-hand sides of the condensation, one a row, against the inner unknowns: the inner
+    /// rows' columns of x_B − x_A, y_B − y_A, θ_A, θ_B, and the inner residual. Only those
+    /// differences of position appear.
     #[inline(always)]
-    pub(super) fn inner_residual(&self) -> SVector<f64, INNER> {
-        SVector::from([
-            self.moment[2],
-            self.moment[3],
-            self.moment[4],
-            self.gap[0],
-            self.gap[1],
-        ])
+    pub(super) fn inner_right(&self) -> SMatrix<f64, 5, INNER> {
+        let mut right = SMatrix::zeros();
+        for k in 0..3 {
+            right[(2, k)] = self.bending[2 + k][0];
+            right[(3, k)] = self.bending[2 + k][1];
+            right[(4, k)] = self.moment[2 + k];
+        }
+        for axis in 0..2 {
+            right[(axis, 3 + axis)] = 1.0;
+            right[(2, 3 + axis)] = self.coupling[0][axis];
+            right[(3, 3 + axis)] = self.coupling[1][axis];
+            right[(4, 3 + axis)] = self.gap[axis];
+        }
+        right
     }
 }
 
@@ -337,7 +346,7 @@ mod tests {
     fn gradient(u: &[f64]) -> [f64; 11] {
         let (a, b, inner) = split(u);
         let forms = element().forms(&Tables::new(), &a, &b, &inner);
-        let r = forms.inner_residual();
+        let r = forms.inner_right().row(4).into_owned();
         let (fx, fy) = (inner[3], inner[4]);
         [
             -fx,
@@ -369,6 +378,12 @@ mod tests {
             let (a, b, inner) = split(&u);
             let forms = element().forms(&Tables::new(), &a, &b, &inner);
             let (ii, io) = (forms.inner_matrix(), forms.inner_to_outer());
+            let right = forms.inner_right();
+            for k in 0..INNER {
+                prop_assert_eq!([io[(k, 0)], io[(k, 1)]], [-right[(0, k)], -right[(1, k)]]);
+                prop_assert_eq!([io[(k, 3)], io[(k, 4)]], [right[(0, k)], right[(1, k)]]);
+                prop_assert_eq!([io[(k, 2)], io[(k, 5)]], [right[(2, k)], right[(3, k)]]);
+            }
             for k in 0..11 {
                 let difference = (8.0 * (energy_at(&shifted(k, step)) - energy_at(&shifted(k, -step)))
                     - energy_at(&shifted(k, 2.0 * step)) + energy_at(&shifted(k, -2.0 * step))) / (12.0 * step);

@@ -9,7 +9,7 @@ use super::element::{Element, INNER, Lever, PointLaw};
 use crate::solve::Unknowns;
 use crate::spring::Section;
 use crate::units::{Metre, Newton, NewtonMetre, Radian};
-use nalgebra::{SMatrix, SVector, Vector3};
+use nalgebra::{SMatrix, Vector3};
 
 /// State of a column: (x, y, θ) at the nodes, (c_1, c_2, c_3, F_x, F_y) in the elements.
 pub type ColumnState = Unknowns<3, INNER>;
@@ -94,9 +94,9 @@ pub struct Column {
     pub(super) natural_angles: Vec<f64>,
     pub(super) load_scale: f64,
     pub(super) tables: Tables,
-    /// For back-substitution: K_ii⁻¹ K_ib and K_ii⁻¹ r_i of the last assembly.
-    pub(super) inner_ahead: Vec<SMatrix<f64, INNER, 6>>,
-    pub(super) inner_step: Vec<SVector<f64, INNER>>,
+    /// For back-substitution, of the last assembly: what the inner unknowns answer to the columns
+    /// of [`super::element::ElementForms::inner_right`], one a row.
+    pub(super) inner_answers: Vec<SMatrix<f64, 5, INNER>>,
 }
 
 /// Force at which a load along a path counts as of order one: about (2π)² EI/L².
@@ -153,8 +153,7 @@ impl Column {
                 .collect(),
             load_scale: (first.axial / scale.force).min(LARGEST_LOAD_SCALE),
             tables: Tables::new(),
-            inner_ahead: vec![SMatrix::zeros(); elements],
-            inner_step: vec![SVector::zeros(); elements],
+            inner_answers: vec![SMatrix::zeros(); elements],
         }
     }
 

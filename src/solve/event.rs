@@ -35,6 +35,7 @@ pub fn locate<const B: usize, const I: usize>(
     function: impl Fn(&PathPoint<B, I>) -> f64,
 ) -> Option<Located<B, I>> {
     let (base, next) = (points.get(after)?, points.get(after + 1)?);
+    let before = after.checked_sub(1).and_then(|i| points.get(i));
     let (mut low, mut high) = (0.0, base.distance);
     let (mut at_low, mut at_high) = (function(base), function(next));
     let changes = at_low * at_high <= 0.0 && at_low != 0.0;
@@ -59,7 +60,7 @@ pub fn locate<const B: usize, const I: usize>(
         if at <= low || at >= high {
             break;
         }
-        let Ok(point) = at_distance(system, newton, base, at) else {
+        let Ok(point) = at_distance(system, newton, before, base, at) else {
             return Some(located(best, after, high, high - low, tolerance));
         };
         let value = function(&point);

@@ -7,6 +7,8 @@ use nalgebra::SVector;
 const MOST_ITERATIONS: usize = 14;
 /// A step below this is at round-off after it is taken, as convergence is quadratic.
 const SMALL_STEP: f64 = 1e-9;
+/// Where the next step, as quadratic convergence predicts it, is below this, it is not taken.
+const NO_STEP: f64 = 1e-13;
 /// A step that does not shrink any more is round-off, if it is below this.
 const ROUND_OFF_STEP: f64 = 1e-6;
 
@@ -136,7 +138,12 @@ impl<const B: usize, const I: usize> Newton<B, I> {
             }
             state.add(1.0, &self.step);
             load += load_step;
-            if size < SMALL_STEP || (size < ROUND_OFF_STEP && size > 0.25 * last) {
+            // Steps e, C e², C² e⁴ …: the next is size³/last².
+            let next = size * (size / last).powi(2);
+            if size < SMALL_STEP
+                || (size < ROUND_OFF_STEP && size > 0.25 * last)
+                || (size < ROUND_OFF_STEP && iteration > 1 && next < NO_STEP)
+            {
                 return Ok(load);
             }
             last = size;

@@ -2,10 +2,11 @@
 //!
 //! From a point (u, λ) with unit tangent (t, t_λ) the next one is found on the plane at distance h
 //! along the tangent: `t·(v − u)/n + t_λ (μ − λ)/λ_ref² = h`, with the norm
-//! `|(t, t_λ)|² = Σ|t_node|²/n + (t_λ/λ_ref)²` over the n nodes. The step adapts to the iterations
-//! taken and to the angle between successive tangents, and is halved where Newton fails or where the
-//! step would cross another path: a real branch point is then approached in short steps, while a
-//! path that only passes close by is not left.
+//! `|(t, t_λ)|² = Σ|t_node|²/n + (t_λ/λ_ref)²` over the n nodes. Newton starts at `u + h t + ½ h²
+//! (t − t₋)/h₋`, t₋ the tangent one step of h₋ before. The step adapts to the iterations taken and to
+//! the angle between successive tangents, and is halved where Newton fails or where the step would
+//! cross another path: a real branch point is then approached in short steps, while a path that only
+//! passes close by is not left.
 //!
 //! Source: Keller, in Applications of Bifurcation Theory (1977); Seydel, Practical Bifurcation and
 //! Stability Analysis (both from memory).
@@ -14,6 +15,9 @@ use super::{
     Newton, NotConverged, System, Unknowns, crosses_another, newton::Constraint, unknowns::dot,
 };
 use nalgebra::SVector;
+
+/// Cosine of the angle between successive tangents from which the bend is extrapolated.
+const LEAST_COMMON: f64 = 0.9;
 
 /// A point of a path with everything needed to go on from it.
 #[derive(Clone, Debug)]
@@ -107,10 +111,10 @@ pub fn follow<const B: usize, const I: usize>(
         if points.len() >= settings.most_points {
             return (Outcome::TooLong, walk);
         }
-        let Some(base) = points.last_mut() else {
+        let Some((base, earlier)) = points.split_last_mut() else {
             return (Outcome::Lost(trouble), walk);
         };
-        let next = match at_distance(system, newton, base, step) {
+        let next = match at_distance(system, newton, earlier.last(), base, step) {
             Ok(next) => next,
             Err(failed) => {
                 trouble = failed;
@@ -140,19 +144,31 @@ pub fn follow<const B: usize, const I: usize>(
     }
 }
 
-/// The point on the plane at `distance` along the tangent of `base`, with its own tangent.
+/// The point on the plane at `distance` along the tangent of `base`, with its own tangent. The
+/// point `before` it, if any, serves to tell how the path bends.
 ///
 /// # Errors
 /// Where Newton does not converge.
 pub(super) fn at_distance<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,
+    before: Option<&PathPoint<B, I>>,
     base: &PathPoint<B, I>,
     distance: f64,
 ) -> Result<PathPoint<B, I>, NotConverged> {
     let mut state = base.state.clone();
     state.add(distance, &base.direction);
     let mut load = base.load + distance * base.load_direction;
+    // Not across a turn onto another branch: there the directions have nothing in common.
+    if let Some(before) = before
+        && before.distance > 0.0
+        && inner_product(system, before, base) > LEAST_COMMON
+    {
+        let bend = 0.5 * distance * distance / before.distance;
+        state.add(bend, &base.direction);
+        state.add(-bend, &before.direction);
+        load += bend * (base.load_direction - before.load_direction);
+    }
     let weight = 1.0 / base.state.nodes.len() as f64;
     let row: Vec<SVector<f64, B>> = base.direction.nodes.iter().map(|t| t * weight).collect();
     let d = base.load_direction / system.load_scale().powi(2);

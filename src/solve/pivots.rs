@@ -7,22 +7,8 @@
 //! Source: Bunch & Kaufman, Math. Comp. 31 (1977) 163–179; Golub & Van Loan, Matrix
 //! Computations, section on symmetric indefinite systems (both from memory).
 
-use nalgebra::{SMatrix, SVector};
-
 /// (1 + √17)/8: balances the growth of 1×1 against 2×2 pivots (Bunch & Kaufman).
-const ALPHA: f64 = 0.640_388_203_202_208_1;
-
-/// Factor of a symmetric N×N matrix.
-#[derive(Clone, Copy, Debug)]
-pub struct SymmetricFactor<const N: usize> {
-    lower: SMatrix<f64, N, N>,
-    kinds: [Pivot; N],
-    order: [u8; N],
-    /// Number of negative eigenvalues.
-    pub negatives: u32,
-    /// Smallest pivot over largest entry of the matrix: tells how near to singular it is.
-    pub smallest_pivot: f64,
-}
+pub(super) const ALPHA: f64 = 0.640_388_203_202_208_1;
 
 /// What stands on the diagonal of D at one place.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Default)]
@@ -41,50 +27,6 @@ pub(super) enum Pivot {
 pub(super) struct Found {
     pub negatives: u32,
     pub smallest_pivot: f64,
-}
-
-impl<const N: usize> SymmetricFactor<N> {
-    /// Factor of `matrix`; only its lower triangle is read. A pivot that is zero is replaced by
-    /// the round-off of the matrix, so that solving stays finite; `smallest_pivot` tells.
-    #[inline]
-    pub fn new(matrix: &SMatrix<f64, N, N>) -> Self {
-        let mut lower = *matrix;
-        let mut kinds = [Pivot::Single; N];
-        let mut order = [0; N];
-        let found = factor(lower.as_mut_slice(), N, &mut kinds, &mut order);
-        SymmetricFactor {
-            lower,
-            kinds,
-            order,
-            negatives: found.negatives,
-            smallest_pivot: found.smallest_pivot,
-        }
-    }
-
-    /// The identity's factor: a place to write into.
-    pub fn identity() -> Self {
-        SymmetricFactor::new(&SMatrix::identity())
-    }
-
-    /// Solves `A x = b` in place.
-    #[inline]
-    pub fn solve(&self, b: &mut SVector<f64, N>) {
-        solve(
-            self.lower.as_slice(),
-            N,
-            &self.kinds,
-            &self.order,
-            b.as_mut_slice(),
-        );
-    }
-
-    /// Solves `A X = B` in place, column by column.
-    #[inline]
-    pub fn solve_columns<const M: usize>(&self, b: &mut SMatrix<f64, N, M>) {
-        for column in b.as_mut_slice().chunks_exact_mut(N) {
-            solve(self.lower.as_slice(), N, &self.kinds, &self.order, column);
-        }
-    }
 }
 
 /// Factors the lower triangle of the n×n matrix `a` (column by column) in place.
@@ -269,68 +211,5 @@ pub(super) fn solve(a: &[f64], n: usize, kinds: &[Pivot], order: &[u8], b: &mut 
         if other != k {
             b.swap(k, other);
         }
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-    use proptest::prelude::*;
-
-    /// Eigenvalues by nalgebra's dense symmetric solver: the independent count.
-    fn negatives(matrix: &SMatrix<f64, 6, 6>) -> u32 {
-        let full = matrix.symmetric_eigenvalues();
-        full.iter().filter(|value| **value < 0.0).count() as u32
-    }
-
-    fn symmetric(values: &[f64], zero_diagonal: bool) -> SMatrix<f64, 6, 6> {
-        let mut matrix = SMatrix::zeros();
-        let mut next = values.iter();
-        for j in 0..6 {
-            for i in j..6 {
-                let value = *next.next().expect("21 values");
-                matrix[(i, j)] = value;
-                matrix[(j, i)] = value;
-            }
-            if zero_diagonal {
-                matrix[(j, j)] = 0.0;
-            }
-        }
-        matrix
-    }
-
-    proptest! {
-        #[test]
-        fn random_matrices_are_solved_and_counted(
-            values in prop::collection::vec(-1.0..1.0_f64, 21),
-            zero_diagonal in any::<bool>(),
-            right in prop::collection::vec(-1.0..1.0_f64, 6),
-        ) {
-            let matrix = symmetric(&values, zero_diagonal);
-            let values = matrix.symmetric_eigenvalues();
-            prop_assume!(values.iter().all(|v| v.abs() > 1e-6));
-            let factor = SymmetricFactor::new(&matrix);
-            prop_assert_eq!(factor.negatives, negatives(&matrix));
-            let b = SVector::<f64, 6>::from_column_slice(&right);
-            let mut x = b;
-            factor.solve(&mut x);
-            prop_assert!((matrix * x - b).amax() <= 1e-13 * x.amax().max(1.0));
-        }
-    }
-
-    #[test]
-    fn a_zero_leading_entry_is_no_obstacle() {
-        let matrix = SMatrix::<f64, 2, 2>::new(0.0, 1.0, 1.0, 0.0);
-        let factor = SymmetricFactor::new(&matrix);
-        assert_eq!(factor.negatives, 1);
-        let mut b = SVector::<f64, 2>::new(3.0, 5.0);
-        factor.solve(&mut b);
-        assert_eq!(b, SVector::<f64, 2>::new(5.0, 3.0));
-    }
-
-    #[test]
-    fn a_singular_matrix_says_so() {
-        let matrix = SMatrix::<f64, 2, 2>::new(1.0, 1.0, 1.0, 1.0);
-        assert!(SymmetricFactor::new(&matrix).smallest_pivot < 1e-15);
     }
 }

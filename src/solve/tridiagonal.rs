@@ -140,8 +140,9 @@ impl<const B: usize> Factorisation<B> {
                 return;
             }
             let coupling = &matrix.right[i];
-            let mut ahead = *coupling;
-            pivot.solve_columns(&mut ahead);
+            let mut ahead = coupling.transpose();
+            pivot.solve_rows(&mut ahead);
+            let ahead = ahead.transpose();
             let taken = coupling.tr_mul(&ahead);
             let alone = taken.amax() / (matrix.diagonal[i + 1].amax() + coupling.amax());
             if alone > GROWTH {
