@@ -76,7 +76,7 @@ fn quantities_end_in_their_unit() {
         "_per_k",
         "_kg_per_m3",
     ];
-    const PURE: [&str; 16] = [
+    const PURE: [&str; 17] = [
         "spring_index",
         "slenderness",
         "active_coils",
