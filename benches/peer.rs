@@ -8,7 +8,7 @@ use coilstay::solve::{
     Assembled, Factorisation, Newton, PathPoint, PathSettings, System, follow, start,
 };
 use coilstay::spring::Section;
-use nalgebra::Vector3;
+use nalgebra::{DMatrix, Vector3};
 use serde_json::json;
 use std::error::Error;
 use std::hint::black_box;
@@ -106,7 +106,7 @@ fn step(directory: &Path) -> Result<(), Box<dyn Error>> {
     answer.nodes.copy_from_slice(column.load_pattern());
     factor.solve(&mut answer.nodes);
     column.recover(&mut answer, false);
-    let uncondensed = column.uncondensed(&state);
+    let uncondensed = DMatrix::from(&column.uncondensed(&state));
     let pattern: Vec<Vector3<f64>> = column.load_pattern().to_vec();
     let nodes: Vec<f64> = answer.nodes.iter().flatten().copied().collect();
     write(directory, "uncondensed", uncondensed.as_slice())?;

@@ -277,7 +277,7 @@ fn the_pivot_count_is_the_number_of_negative_eigenvalues() {
         let mut newton = Newton::new(&column);
         for (state, load) in states(&column) {
             let count = newton.evaluate(&mut column, &state, load) as usize;
-            let whole = column.uncondensed(&state);
+            let whole = DMatrix::from(&column.uncondensed(&state));
             let size = whole.amax();
             let values = SymmetricEigen::new(whole).eigenvalues;
             let smallest = values.iter().fold(f64::INFINITY, |s, v| s.min(v.abs()));
@@ -300,7 +300,7 @@ fn the_condensed_solve_meets_the_uncondensed_one() {
         for (state, load) in states(&column) {
             newton.evaluate(&mut column, &state, load);
             let n = column.elements();
-            let whole = column.uncondensed(&state);
+            let whole = DMatrix::from(&column.uncondensed(&state));
             let scale = whole.clone().singular_values();
             let condition = scale.max() / scale.min();
             let whole = whole.lu();

@@ -4,7 +4,7 @@
 use approx::assert_relative_eq;
 use coilstay::spring::{
     EndType, Hand, Section, Spring, TurnCompliance, Wire, compressed_radius, curvature_factor,
-    free_to_turn_growth, materials, named_material, torsion_stress,
+    materials, named_material, torsion_stress,
 };
 use proptest::prelude::*;
 use std::f64::consts::PI;
@@ -227,35 +227,13 @@ proptest! {
         prop_assert!(2.0 * radius >= mean * (1.0 - 1e-15));
     }
 
-    /// Growth with ends free to turn is a length, and nil for coils that touch already.
+    /// Stress goes with the torque, and the correction falls towards 1 as the index rises.
     #[test]
-    fn free_growth_is_a_length(mean in 5e-3..0.3, pitch in 0.1..0.6, wire in 0.05..0.1, factor in 0.1..10.0) {
-        let (pitch, wire) = (pitch * mean, wire * mean);
-        let growth = free_to_turn_growth(mean, pitch, wire);
-        assert_relative_eq!(
-            free_to_turn_growth(factor * mean, factor * pitch, factor * wire),
-            factor * growth,
-            max_relative = 1e-10,
-            epsilon = 1e-15
-        );
-        prop_assert!(free_to_turn_growth(mean, wire, wire).abs() < 1e-12 * mean);
-        prop_assert!(growth >= -1e-12 * mean);
-    }
-
-    /// Stress goes with the load, does not know the sign of force or moment, and each adds to it.
-    #[test]
-    fn stress_is_linear_and_blind_to_signs(
-        wire in wires(), index in 3.0..20.0, force in 0.0..1e4, moment in 0.0..1e3, factor in 0.1..10.0
+    fn stress_is_linear_in_the_torque(
+        wire in wires(), index in 3.0..20.0, torque in 0.0..1e4, factor in 0.1..10.0
     ) {
-        let radius = 0.5 * index * wire.radial_size();
-        let stress = |force, moment| torsion_stress(&wire, index, radius, force, moment);
-        let plain = stress(force, moment);
-        assert_relative_eq!(stress(factor * force, factor * moment), factor * plain, max_relative = 1e-13);
-        for (a, b) in [(-force, moment), (force, -moment), (-force, -moment)] {
-            assert_relative_eq!(stress(a, b), plain);
-        }
-        assert_relative_eq!(stress(force, 0.0) + stress(0.0, moment), plain, max_relative = 1e-13);
-        // The correction falls towards 1 as the index rises.
+        let stress = |torque| torsion_stress(&wire, index, torque);
+        assert_relative_eq!(stress(factor * torque), factor * stress(torque), max_relative = 1e-13);
         prop_assert!(curvature_factor(index) > curvature_factor(index + 1.0));
         prop_assert!(curvature_factor(index) > 1.0);
     }

@@ -46,6 +46,9 @@ pub(super) fn stability(
 /// diameter and supports as they are.
 fn stable_below(setup: &Setup, elements: usize) -> Option<Metre> {
     let diameter = setup.spring.mean_diameter;
+    // Inward arms must not cross: the pivots would meet, and the column turn about them.
+    let arms = -(setup.bottom.arm + setup.top.arm) / diameter;
+    let shortest = SHORTEST.max(1.05 * arms);
     let mut changed = setup.clone();
     let mut unstable_at = |slenderness: f64| {
         changed.spring.free_length = slenderness * diameter;
@@ -53,8 +56,8 @@ fn stable_below(setup: &Setup, elements: usize) -> Option<Metre> {
         StraightScan::new(&mut column).is_ever_unstable()
     };
     let (mut low, mut high) = (
-        SHORTEST,
-        setup.spring.slenderness().clamp(SHORTEST, LONGEST),
+        shortest,
+        setup.spring.slenderness().clamp(shortest, LONGEST),
     );
     if unstable_at(low) {
         return None;

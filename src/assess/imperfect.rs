@@ -49,6 +49,17 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
             (coarse, orientation) = (run, *other);
         }
     }
+    if !coarse.corners.is_empty() {
+        // Between seats that are not true the two sides of a branch need not be mirror images.
+        let other = Orientation {
+            branch: -1.0,
+            ..orientation
+        };
+        let run = on_coarse(other);
+        if run.severity(setup) > coarse.severity(setup) {
+            (coarse, orientation) = (run, other);
+        }
+    }
     let buckling = perfect(fine_mesh);
     let fine = Run::new(
         setup,

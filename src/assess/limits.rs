@@ -159,13 +159,8 @@ pub(super) fn stress_at_solid(setup: &Setup) -> StressAtSolid {
         spring.pitch(),
         spring.wire.axial_size(),
     );
-    let stress_pa = torsion_stress(
-        &spring.wire,
-        spring.index(),
-        radius,
-        spring.rate() * spring.solid_deflection(),
-        0.0,
-    );
+    let force = spring.rate() * spring.solid_deflection();
+    let stress_pa = torsion_stress(&spring.wire, spring.index(), force * radius);
     StressAtSolid {
         stress_pa,
         allowable_pa: setup.duty.allowable_stress,

@@ -5,7 +5,7 @@ use crate::column::{Column, Peak, Station};
 use crate::result::PathPoint;
 use crate::setup::Setup;
 use crate::solve;
-use crate::spring::{Wire, compressed_radius, curvature_factor};
+use crate::spring::{Wire, compressed_radius, torsion_stress};
 use std::f64::consts::PI;
 
 /// A path point of the column's system.
@@ -57,14 +57,30 @@ impl Observer {
         let force_along = solved.load_direction * scale.force;
         let travel_along =
             -solved.direction.nodes[last][0] * scale.length + force_along * self.seats;
+        let dead = setup.spring.dead_height() / (2.0 * scale.length);
         let growth = |sign: f64| {
-            Peak::of(stations.iter().zip(&self.start).map(|(now, then)| {
+            let along = Peak::of(stations.iter().zip(&self.start).map(|(now, then)| {
                 (
                     now.place,
                     sign * (now.y - then.y),
                     sign * (now.y_slope - then.y_slope),
                 )
-            }))
+            }));
+            // The end planes, beyond the dead coils.
+            let ends = [(0, -dead, 0.0), (stations.len() - 1, dead, 1.0)];
+            ends.iter().fold(along, |peak, (i, dead, place)| {
+                let (now, then) = (&stations[*i], &self.start[*i]);
+                let end = |station: &Station| station.y + dead * station.angle.sin();
+                let value = sign * (end(now) - end(then));
+                if value > peak.value {
+                    Peak {
+                        place: *place,
+                        value,
+                    }
+                } else {
+                    peak
+                }
+            })
         };
         let (left, right) = (growth(1.0), growth(-1.0));
         let (bow, lateral) = if left.value >= right.value {
@@ -129,7 +145,7 @@ fn wire_stress(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
         .value
     };
     let worst = torque(1.0).max(torque(-1.0)) * column.scale.moment();
-    spring.wire.torsion_stress_per_torque() * worst * curvature_factor(spring.index())
+    torsion_stress(&spring.wire, spring.index(), worst)
 }
 
 /// Smallest axial gap between neighbouring coils, m: on the inside of the bow

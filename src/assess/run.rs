@@ -71,7 +71,14 @@ impl Run {
         };
         let observer = Observer::new(setup, &column, &first);
         let mut points = vec![first];
-        let walked = walk(setup, &mut column, &mut newton, &mut points, reach);
+        let walked = walk(
+            setup,
+            &mut column,
+            &mut newton,
+            &mut points,
+            reach,
+            orientation.branch,
+        );
         run.seen = points
             .iter()
             .map(|point| observer.see(setup, &column, point))
@@ -102,23 +109,27 @@ impl Run {
         run
     }
 
-    /// How near the nearest limit is to what is needed of it: needed over reached, the largest; by
-    /// a little, the bow at the working deflection. A path that was lost counts as the worst.
-    pub fn severity(&self, setup: &Setup) -> f64 {
-        if matches!(self.end, PathEnd::Lost(_)) {
-            return f64::INFINITY;
-        }
+    /// How bad the path is, to be compared: first whether it was lost; then, for its limits from
+    /// the nearest on, what is needed of each over what it reaches; last the bow at the working
+    /// deflection.
+    pub fn severity(&self, setup: &Setup) -> (bool, Vec<f64>) {
         let duty = &setup.duty;
-        let limits = self.events.iter().filter_map(|event| match event.kind {
-            EventKind::Limit(kind) if duty.has(kind) => {
-                Some(duty.needed(kind) / duty.reached(event.reached.0, event.reached.1))
-            }
-            _ => None,
-        });
-        let bow = self
-            .event(EventKind::LargestWorking)
-            .map_or(0.0, |event| 1e-9 * event.point.bow_m / duty.bow_limit);
-        limits.fold(0.0, f64::max) + bow
+        let mut nearness: Vec<f64> = self
+            .events
+            .iter()
+            .filter_map(|event| match event.kind {
+                EventKind::Limit(kind) if duty.has(kind) => {
+                    Some(duty.needed(kind) / duty.reached(event.reached.0, event.reached.1))
+                }
+                _ => None,
+            })
+            .collect();
+        nearness.sort_by(|a, b| b.total_cmp(a));
+        nearness.push(
+            self.event(EventKind::LargestWorking)
+                .map_or(0.0, |event| event.point.bow_m / duty.bow_limit),
+        );
+        (matches!(self.end, PathEnd::Lost(_)), nearness)
     }
 
     /// The event of that kind.

@@ -63,8 +63,13 @@ impl Imperfect {
                 "one path from the unloaded state: the imperfections bow it from the start".into()
             }
             (n, _) => format!(
-                "up to a branch point, and from there on the branch that leaves to the left (+y); \
-                 its mirror image is as likely ({n} branch point{} met)",
+                "up to a branch point, and from there on the branch that leaves to the {}, the \
+                 worse or as bad as the other ({n} branch point{} met)",
+                if self.orientation.branch > 0.0 {
+                    "left (+y)"
+                } else {
+                    "right (-y)"
+                },
                 if n == 1 { "" } else { "s" }
             ),
         }

@@ -56,13 +56,14 @@ pub(super) struct Walked {
     pub end: PathEnd,
 }
 
-/// Follows from the one point given and appends.
+/// Follows from the one point given and appends; at a branch point to the side of `branch`.
 pub(super) fn walk(
     setup: &Setup,
     column: &mut Column,
     newton: &mut Newton<3, 5>,
     points: &mut Vec<Solved>,
     reach: Reach,
+    branch: f64,
 ) -> Walked {
     let last = column.elements();
     let top = points[0].state.nodes[last][0];
@@ -97,7 +98,7 @@ pub(super) fn walk(
                 points.pop();
                 points[after].distance = found.located.distance;
                 branches.push((points.len(), found.located.point.clone()));
-                points.push(found.turned(sideways(&found.mode).signum()));
+                points.push(found.turned(branch * sideways(&found.mode).signum()));
                 settings.first_step = FIRST_ON_BRANCH;
             }
             Outcome::Stopped => {

@@ -4,6 +4,7 @@ use super::element::{Element, INNER};
 use super::layout::{Column, ColumnState, EndLaws, Hold};
 use crate::solve::{Assembled, SymmetricFactor, System};
 use nalgebra::{Matrix3, SVector, Vector3};
+use nalgebra_sparse::{CooMatrix, CscMatrix};
 
 /// Negative eigenvalues of an element's inner matrix in every stable state: its two forces,
 /// multipliers of the geometry.
@@ -121,47 +122,57 @@ impl Column {
         ]
     }
 
-    /// The uncondensed tangent at a state as a dense matrix, order node 0 (x, y, θ), element 0
-    /// (c_1, c_2, c_3, F_x, F_y), node 1, …: 8 rows an element and 3 more. Held rows are identity.
-    /// For checks against general solvers, and to hand the matrix out.
-    pub fn uncondensed(&self, state: &ColumnState) -> nalgebra::DMatrix<f64> {
+    /// The uncondensed tangent at a state, order node 0 (x, y, θ), element 0 (c_1, c_2, c_3, F_x,
+    /// F_y), node 1, …: 8 rows an element and 3 more. Held rows and columns are the identity's. For
+    /// checks against general solvers, and to hand the matrix out.
+    pub fn uncondensed(&self, state: &ColumnState) -> CscMatrix<f64> {
         let n = self.elements.len();
-        let mut matrix = nalgebra::DMatrix::zeros(8 * n + 3, 8 * n + 3);
-        for (e, element) in self.elements.iter().enumerate() {
-            let (a, b, inner) = (&state.nodes[e], &state.nodes[e + 1], &state.inner[e]);
-            let forms = element.forms(&self.tables, a, b, inner);
-            let (matrix_ii, matrix_io) = (forms.inner_matrix(), forms.inner_to_outer());
-            let base = 8 * e;
-            let outer = [base, base + 1, base + 2, base + 8, base + 9, base + 10];
-            for i in 0..INNER {
-                for j in 0..INNER {
-                    matrix[(base + 3 + i, base + 3 + j)] += matrix_ii[(i.max(j), i.min(j))];
-                }
-                for (j, column) in outer.iter().enumerate() {
-                    matrix[(base + 3 + i, *column)] += matrix_io[(i, j)];
-                    matrix[(*column, base + 3 + i)] += matrix_io[(i, j)];
-                }
-            }
-            let ends = [base + 2, base + 10];
-            for i in 0..2 {
-                for j in 0..2 {
-                    matrix[(ends[i], ends[j])] += forms.bending[i.max(j)][i.min(j)];
-                }
-            }
-        }
+        let size = 8 * n + 3;
+        let mut held = vec![false; size];
+        let mut matrix = CooMatrix::new(size, size);
         for (first, laws) in [(0, &self.bottom), (8 * n, &self.top)] {
             for (k, hold) in laws.0.iter().enumerate() {
                 match *hold {
                     Hold::Free => {}
-                    Hold::Elastic { stiffness, .. } => matrix[(first + k, first + k)] += stiffness,
+                    Hold::Elastic { stiffness, .. } => matrix.push(first + k, first + k, stiffness),
                     Hold::Held(_) => {
-                        matrix.row_mut(first + k).fill(0.0);
-                        matrix.column_mut(first + k).fill(0.0);
-                        matrix[(first + k, first + k)] = 1.0;
+                        held[first + k] = true;
+                        matrix.push(first + k, first + k, 1.0);
                     }
                 }
             }
         }
-        matrix
+        let mut add = |row: usize, column: usize, value: f64| {
+            if !held[row] && !held[column] {
+                matrix.push(row, column, value);
+            }
+        };
+        for (e, element) in self.elements.iter().enumerate() {
+            let (a, b, inner) = (&state.nodes[e], &state.nodes[e + 1], &state.inner[e]);
+            let forms = element.forms(&self.tables, a, b, inner);
+            let base = 8 * e;
+            // Rows of the rotations [θ_A, θ_B, c_1, c_2, c_3] and of the forces.
+            let turns = [base + 2, base + 10, base + 3, base + 4, base + 5];
+            let forces = [base + 6, base + 7];
+            for (i, row) in turns.iter().enumerate() {
+                for (j, column) in turns.iter().enumerate() {
+                    add(*row, *column, forms.bending[i.max(j)][i.min(j)]);
+                }
+                for (axis, column) in forces.iter().enumerate() {
+                    add(*row, *column, forms.coupling[i][axis]);
+                    add(*column, *row, forms.coupling[i][axis]);
+                }
+            }
+            for (i, row) in forces.iter().enumerate() {
+                for (j, column) in forces.iter().enumerate() {
+                    add(*row, *column, forms.compliance[i + j]);
+                }
+                for (place, sign) in [(base + i, -1.0), (base + 8 + i, 1.0)] {
+                    add(*row, place, sign);
+                    add(place, *row, sign);
+                }
+            }
+        }
+        CscMatrix::from(&matrix)
     }
 }

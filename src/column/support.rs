@@ -112,7 +112,7 @@ impl Column {
     }
 
     /// Adds a stress-free bow of the given height (share of the length) in the shape that the
-    /// rotations of `mode` give: its axis without shear, from chord to crown.
+    /// rotations of `mode` give: its axis without shear.
     fn add_bow(&mut self, mode: &ColumnState, height: f64) {
         // Sideways course of the rotations, node by node: ∫θ dS by the elements' own quadrature.
         let mut course = vec![0.0];
@@ -139,9 +139,8 @@ impl Column {
         }
         let last = self.elements() as f64;
         let end = course[self.elements()];
-        // From the chord where both ends are held sideways, from the bottom's axis elsewhere.
-        let between =
-            matches!(self.top.0[1], Hold::Held(_)) && matches!(self.bottom.0[1], Hold::Held(_));
+        // From the chord where both ends are held sideways; else from side to side.
+        let between = self.top.0[1] != Hold::Free && self.bottom.0[1] != Hold::Free;
         let chord = if between { end / last } else { 0.0 };
         let heights = |sign: f64| {
             Peak::of(
@@ -157,7 +156,12 @@ impl Column {
             .value
         };
         let (left, right) = (heights(1.0), heights(-1.0));
-        let crown = if left >= right { left } else { -right };
+        let size = if between {
+            left.max(right)
+        } else {
+            left + right
+        };
+        let crown = if left >= right { size } else { -size };
         self.add_natural_field(mode, height / crown);
     }
 }

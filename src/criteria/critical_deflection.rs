@@ -44,13 +44,6 @@ pub fn second_share(section: &Section, effective_length: Metre) -> Option<f64> {
     (under >= 0.0 && m > 0.0 && share < 1.0).then_some(share)
 }
 
-/// Share at which the effect of the load peaks, C1 = 1/(2m); `None` for m ≤ ½, where it lies at or
-/// beyond the whole length.
-pub fn peak_share(section: &Section) -> Option<f64> {
-    let m = 1.0 - section.axial / section.shear;
-    (m > 0.5).then(|| 0.5 / m)
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;

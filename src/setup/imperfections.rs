@@ -32,7 +32,8 @@ pub struct Imperfections {
     /// Deviation from parallel of the end planes e2, m, over the outer diameter: a further angle
     /// e2/D_outer at one end.
     pub parallelism: Metre,
-    /// Height of the stress-free bow, m.
+    /// Height of the stress-free bow, m: of the half sine; of the mode from its chord where both
+    /// ends are held sideways, else from side to side.
     pub bow: Metre,
     /// Shape of the stress-free bow.
     pub bow_shape: BowShape,
@@ -55,6 +56,8 @@ pub struct Orientation {
     pub bow: f64,
     /// Sign of the eccentricity.
     pub eccentricity: f64,
+    /// Side (+1: +y) of the branch that is taken where the path runs into a branch point.
+    pub branch: f64,
 }
 
 impl Orientation {
@@ -66,6 +69,7 @@ impl Orientation {
             wedge_at_top: true,
             bow: 1.0,
             eccentricity: 1.0,
+            branch: 1.0,
         }
     }
 }

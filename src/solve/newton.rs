@@ -203,13 +203,6 @@ impl<const B: usize, const I: usize> Newton<B, I> {
         load
     }
 
-    /// Flexibility `qᵀ K⁻¹ q` of the state last evaluated: how far the load's own displacement
-    /// moves with the load.
-    pub fn flexibility(&mut self, system: &impl System<B, I>) -> f64 {
-        self.factor
-            .inverse_quadratic(system.load_pattern(), &mut self.work[0])
-    }
-
     /// Solves `K x = b` in place with the last factor, improved once.
     pub fn solve_linear(&mut self, b: &mut [SVector<f64, B>]) {
         let [right, product] = &mut self.work;

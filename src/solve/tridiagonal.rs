@@ -12,8 +12,8 @@
 //! size (2), which is singular only where the next leading part is singular too. Where both are
 //! nearly so, the one farther from singular is divided by.
 
+use super::SymmetricFactor;
 use super::pivots::{self, Found, Pivot};
-use super::{SymmetricFactor, unknowns::dot};
 use nalgebra::{SMatrix, SVector};
 
 /// Growth of an eliminated block over the block it is taken from, beyond which two block rows
@@ -90,8 +90,6 @@ pub struct Factorisation<const B: usize> {
     pairs: PairPivots,
     /// Number of negative eigenvalues.
     pub negatives: u32,
-    /// Smallest relative pivot of the last block, which carries the singularity of the whole.
-    pub smallest_pivot: f64,
 }
 
 /// Dense pivots of two block rows, in flat storage.
@@ -119,7 +117,6 @@ impl<const B: usize> Factorisation<B> {
                 count: 0,
             },
             negatives: 0,
-            smallest_pivot: 0.0,
         }
     }
 
@@ -134,7 +131,6 @@ impl<const B: usize> Factorisation<B> {
             let pivot = SymmetricFactor::new(&block);
             if i + 1 == n {
                 self.negatives += pivot.negatives;
-                self.smallest_pivot = pivot.smallest_pivot;
                 self.pivots[i] = pivot;
                 self.rows[i] = Row::Alone;
                 return;
@@ -149,7 +145,6 @@ impl<const B: usize> Factorisation<B> {
                 let found = self.factor_pair(i, &block, coupling, &matrix.diagonal[i + 1]);
                 if i + 2 == n {
                     self.negatives += found.negatives;
-                    self.smallest_pivot = found.smallest_pivot;
                     return;
                 }
                 let (coupling, next) = (&matrix.right[i + 1], &matrix.diagonal[i + 2]);
@@ -295,17 +290,5 @@ impl<const B: usize> Factorisation<B> {
         for (x, correction) in b.iter_mut().zip(right.iter()) {
             *x += correction;
         }
-    }
-
-    /// Whether any two rows had to be taken together.
-    pub fn has_pairs(&self) -> bool {
-        self.pairs.count > 0
-    }
-
-    /// `bᵀ A⁻¹ b`, with `work` of the same size.
-    pub fn inverse_quadratic(&self, b: &[SVector<f64, B>], work: &mut [SVector<f64, B>]) -> f64 {
-        work.copy_from_slice(b);
-        self.solve(work);
-        dot(b, work)
     }
 }

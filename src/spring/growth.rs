@@ -10,11 +10,3 @@ use std::f64::consts::PI;
 pub fn compressed_radius(mean_diameter: Metre, free_pitch: Metre, pitch_now: Metre) -> Metre {
     (mean_diameter.powi(2) + (free_pitch.powi(2) - pitch_now.powi(2)) / PI.powi(2)).sqrt() / 2.0
 }
-
-/// Growth of the diameter at solid, m, for ends free to turn:
-/// `ΔD ≈ 0.1 (p² − 0.8 p d − 0.2 d²)/D`.
-///
-/// Source: EN 13906-1 (from memory). A torque-free helix grows less than 3 % differently.
-pub fn free_to_turn_growth(mean_diameter: Metre, free_pitch: Metre, wire: Metre) -> Metre {
-    0.1 * (free_pitch.powi(2) - 0.8 * free_pitch * wire - 0.2 * wire.powi(2)) / mean_diameter
-}

@@ -185,12 +185,15 @@ static MATERIALS: [Material; 11] = [
         MUSIC,
         Sureness::Seen,
     ),
-    stainless(
-        "stainless-17-7ph",
-        "stainless steel 17-7PH (other tables print G = 11 Mpsi)",
-        29.5 * MPSI,
-        10.5 * MPSI,
-        MUSIC,
-        Sureness::Seen,
-    ),
+    Material {
+        expansion_per_kelvin: 11.0e-6,
+        ..stainless(
+            "stainless-17-7ph",
+            "stainless steel 17-7PH (other tables print G = 11 Mpsi)",
+            29.5 * MPSI,
+            10.5 * MPSI,
+            MUSIC,
+            Sureness::Seen,
+        )
+    },
 ];

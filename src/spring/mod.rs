@@ -11,7 +11,7 @@ mod wire;
 
 pub use coil::{Hand, Spring};
 pub use ends::EndType;
-pub use growth::{compressed_radius, free_to_turn_growth};
+pub use growth::compressed_radius;
 pub use material::{Material, Sureness, materials, named_material};
 pub use section::{Section, TurnCompliance};
 pub use stress::{curvature_factor, torsion_stress};
