@@ -402,3 +402,41 @@ fn transverse_rate_vanishes_at_the_critical_deflection() {
         }
     }
 }
+
+/// Shigley's Mechanical Engineering Design, the worked spring of music wire with d = 0.037 in,
+/// D = 0.400 in, L0 = 2.06 in, 12.5 coils, squared ends, pressed by 1.56 in (from memory). The rule
+/// of thumb L0 < 2.63 D/α = 2.10 in calls it stable; with the moduli of its own wire size, 29.0 and
+/// 11.85 Mpsi (seen), the limit is 2.0276 in and it buckles at 0.696 L0 (independent program).
+#[test]
+fn the_worked_spring_of_the_handbook_buckles() {
+    let text = r#"
+        [spring]
+        wire = "0.037 in"
+        mean_diameter = "0.400 in"
+        free_length = "2.06 in"
+        total_coils = 12.5
+        ends = "closed"
+        [material]
+        name = "music-wire-to-0.063in"
+        [bottom]
+        kind = "clamped"
+        [top]
+        kind = "clamped"
+        [duty]
+        working_deflection = "1.56 in"
+    "#;
+    let case = coilstay::case::parse("worked.toml", text).expect("reads");
+    let answer = coilstay::assess::assess(&case.setup, "worked.toml");
+    let inch = 0.0254;
+    let formula = &answer.closed_form.curves[0];
+    let limit = formula.absolute_stability_below_m.expect("m > 1/2") / inch;
+    assert!((limit - 2.0276).abs() < 5e-5, "{limit}");
+    let share = formula.critical_deflection_m.expect("buckles") / case.setup.spring.free_length;
+    assert!((share - 0.696).abs() < 5e-4, "{share}");
+    let column = answer
+        .straight_column
+        .critical_deflection_m
+        .expect("buckles");
+    assert!((column / formula.critical_deflection_m.expect("buckles") - 1.0).abs() < 1e-8);
+    assert_eq!(answer.verdict, coilstay::result::Verdict::DoesNotHold);
+}
