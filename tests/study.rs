@@ -34,6 +34,10 @@ fn answers_do_not_depend_on_the_number_of_threads() {
             .num_threads(threads)
             .build()
             .unwrap();
-        assert_eq!(pool.install(|| assess_all(&questions)), alone, "{threads}");
+        assert_eq!(
+            pool.install(|| assess_all(&questions, &|| {})),
+            alone,
+            "{threads}"
+        );
     }
 }

@@ -9,6 +9,7 @@ use crate::setup::Setup;
 use crate::store::{self, Existing, Output};
 use crate::study::{Question, assess_all};
 use clap::Args;
+use indicatif::{ProgressBar, ProgressStyle};
 use std::path::{Path, PathBuf};
 
 /// Arguments of `assess`.
@@ -63,7 +64,9 @@ impl AssessRequest {
     /// Assesses every case that could be read.
     pub fn run(&self, cases: Vec<Loaded>) -> Vec<Outcome> {
         let questions: Vec<Question> = cases.iter().flatten().cloned().collect();
-        let mut answers = assess_all(&questions).into_iter();
+        let progress = progress(questions.len());
+        let mut answers = assess_all(&questions, &|| progress.inc(1)).into_iter();
+        progress.finish_and_clear();
         cases
             .into_iter()
             .filter_map(|case| match case {
@@ -137,6 +140,19 @@ impl AssessRequest {
         }
         Ok(outputs)
     }
+}
+
+/// Cases below which the work is done before a bar would be read.
+const FEW_CASES: usize = 8;
+
+/// A bar of cases done with the time left, on standard error if that is a terminal.
+fn progress(cases: usize) -> ProgressBar {
+    if cases < FEW_CASES {
+        return ProgressBar::hidden();
+    }
+    let style = ProgressStyle::with_template("assessed {pos} of {len} cases, {eta} left {bar:30}")
+        .unwrap_or_else(|_| ProgressStyle::default_bar());
+    ProgressBar::new(cases as u64).with_style(style)
 }
 
 /// The verdict of several: the worst.

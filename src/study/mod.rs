@@ -16,9 +16,14 @@ pub struct Question {
 
 /// Assesses every question, as many at once as there are processors. The answers stand in the
 /// order of the questions and do not depend on the number of threads: no two share anything.
-pub fn assess_all(questions: &[Question]) -> Vec<Assessment> {
+/// `done` is called after each.
+pub fn assess_all(questions: &[Question], done: &(dyn Fn() + Sync)) -> Vec<Assessment> {
     questions
         .par_iter()
-        .map(|question| assess(&question.setup, &question.file))
+        .map(|question| {
+            let answer = assess(&question.setup, &question.file);
+            done();
+            answer
+        })
         .collect()
 }
