@@ -209,7 +209,9 @@ fn meaning(assessment: &Assessment) -> String {
 fn notes(assessment: &Assessment, units: Units) -> String {
     let closed = &assessment.closed_form;
     let mut out = meaning(assessment);
-    out += &paragraph("  Formula: ", &closed.note);
+    if !closed.curves.is_empty() {
+        out += &paragraph("  Formula: ", &closed.note);
+    }
     for curve in &closed.curves {
         let start = format!("  End constant {}: ", shortest(curve.end_constant));
         out += &paragraph(&start, &format!("{}.", curve.source.trim_end_matches('.')));

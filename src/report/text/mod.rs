@@ -48,8 +48,8 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
 /// A case that could not be read. The mistakes stand on standard error with the text they are in.
 fn refused(refusal: &Refusal) -> String {
     let count = match refusal.mistakes.len() {
-        1 => "one mistake".to_string(),
-        many => format!("{many} mistakes"),
+        1 => "one mistake",
+        _ => "mistakes",
     };
     let words = format!("{count} in the input, explained on standard error.");
     let verdict = styled("COULD NOT BE DECIDED:", OPEN);
