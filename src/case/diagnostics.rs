@@ -3,6 +3,7 @@
 use annotate_snippets::{
     AnnotationKind, Group, Level, Origin, Renderer, Snippet, normalize_untrusted_str,
 };
+use std::collections::BTreeMap;
 use std::fmt;
 use std::ops::Range;
 
@@ -11,6 +12,9 @@ pub(super) type Place = Range<usize>;
 
 /// More mistakes than this are counted, not listed.
 const LISTED: usize = 200;
+
+/// Of one kind, more than this are counted, not listed.
+const LISTED_OF_A_KIND: usize = 20;
 
 /// A line longer than this many bytes is named, not shown.
 const SHOWN_BYTES: usize = 2000;
@@ -86,14 +90,18 @@ pub struct Diagnostics {
     file: String,
     text: String,
     items: Vec<Item>,
+    /// How many more there are of a kind that has too many, behind an example of it.
+    repeated: Vec<(String, usize)>,
     unlisted: usize,
 }
 
 impl Diagnostics {
     pub(super) fn new(file: &str, text: &str, mut mistakes: Vec<Mistake>) -> Self {
         mistakes.sort_by_key(|m| m.place.as_ref().map_or(0, |place| place.start));
-        let unlisted = mistakes.len().saturating_sub(LISTED);
+        let count = mistakes.len();
+        let repeated = thin_out(&mut mistakes);
         mistakes.truncate(LISTED);
+        let unlisted = count - mistakes.len();
         let lines = Lines::of(text);
         let items = mistakes
             .into_iter()
@@ -116,6 +124,7 @@ impl Diagnostics {
             file: file.to_string(),
             text: text.to_string(),
             items,
+            repeated,
             unlisted,
         }
     }
@@ -125,7 +134,7 @@ impl Diagnostics {
         &self.file
     }
 
-    /// The mistakes, in the order of the text; at most the first 200.
+    /// The mistakes, in the order of the text; at most 20 of one kind, and 200 in all.
     pub fn items(&self) -> &[Item] {
         &self.items
     }
@@ -149,8 +158,13 @@ impl Diagnostics {
             out += &renderer.render(&[self.group(item, &lines)]);
             out += "\n\n";
         }
-        if self.unlisted > 0 {
-            out += &format!("... and {} more mistakes after these\n\n", self.unlisted);
+        for (example, more) in &self.repeated {
+            let example = normalize_untrusted_str(example);
+            out += &format!("... and {more} more like this: {example}\n\n");
+        }
+        let others = self.unlisted - self.repeated.iter().map(|(_, more)| more).sum::<usize>();
+        if others > 0 {
+            out += &format!("... and {others} more mistakes after these\n\n");
         }
         let plural = if self.count() == 1 { "" } else { "s" };
         let file = normalize_untrusted_str(&self.file);
@@ -199,6 +213,35 @@ impl Diagnostics {
     }
 }
 
+/// Leaves of each kind of mistake the first few; returns an example of each kind that had more, and
+/// how many were taken out. Two are of a kind if their messages differ only in what they quote.
+fn thin_out(mistakes: &mut Vec<Mistake>) -> Vec<(String, usize)> {
+    let mut kinds: BTreeMap<String, usize> = BTreeMap::new();
+    let mut repeated: Vec<(String, usize)> = Vec::new();
+    let mut places: BTreeMap<String, usize> = BTreeMap::new();
+    mistakes.retain(|mistake| {
+        let kind = kind(&mistake.message);
+        let count = kinds.entry(kind.clone()).or_insert(0);
+        *count += 1;
+        if *count <= LISTED_OF_A_KIND {
+            return true;
+        }
+        let place = *places.entry(kind).or_insert_with(|| {
+            repeated.push((mistake.message.clone(), 0));
+            repeated.len() - 1
+        });
+        repeated[place].1 += 1;
+        false
+    });
+    repeated
+}
+
+/// A message without what it quotes.
+fn kind(message: &str) -> String {
+    let quoted = |quote: char, text: &str| -> String { text.split(quote).step_by(2).collect() };
+    quoted('"', &quoted('`', message))
+}
+
 fn said(label: &str) -> Option<&str> {
     Some(label).filter(|label| !label.is_empty())
 }
@@ -243,6 +286,11 @@ impl<'a> Lines<'a> {
     /// Text of line `index`, without its end.
     pub fn text(&self, index: usize) -> &'a str {
         self.between(index, index)
+    }
+
+    /// Indices of all lines.
+    pub fn indices(&self) -> Range<usize> {
+        0..self.starts.len()
     }
 
     /// Where the words of line `index` stand, without the blanks around them.

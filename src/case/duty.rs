@@ -5,7 +5,7 @@ use super::field::{Absent, Field, Form, Kind, Range, Rule};
 use super::filled::{Filled, Log};
 use crate::setup::{Duty, LimitKind, Loading, Margins, Restraint, Support};
 use crate::spring::Spring;
-use crate::units::{Dimension, MILLIMETRE, Metre, Newton};
+use crate::units::{Dimension, MILLIMETRE, Metre, Newton, significant};
 
 const LENGTH: Kind = Kind::Quantity(Dimension::LENGTH, Range::Positive);
 const TRAVEL: Kind = Kind::Quantity(Dimension::LENGTH, Range::NotNegative);
@@ -187,6 +187,17 @@ pub(super) fn duty(
     let overtravel = filled.number(&OVERTRAVEL, log);
     let general = filled.number(&REQUIRED_MARGIN, log);
     let own = own_margins(filled, log);
+    if let Some(margin) = general {
+        doubt_margin(margin, |meant| format!("required_margin = {meant}"), log);
+    }
+    for (kind, margin) in &own {
+        let key = kind.key();
+        doubt_margin(
+            *margin,
+            |meant| format!("margins = {{ {key} = {meant} }}"),
+            log,
+        );
+    }
     let bow_limit = if filled.is_given(&BOW_LIMIT) {
         filled.number(&BOW_LIMIT, log)
     } else {
@@ -209,6 +220,21 @@ pub(super) fn duty(
         rate_loss_share: rate_loss_share?,
         allowable_stress: filled.number(&ALLOWABLE_STRESS, log),
     })
+}
+
+/// Margins above this are probably percentages that lack their sign.
+const LARGEST_USUAL_MARGIN: f64 = 3.0;
+
+fn doubt_margin(margin: f64, line: impl Fn(&str) -> String, log: &mut Log) {
+    if margin > LARGEST_USUAL_MARGIN {
+        let meant = significant(0.01 * margin, 6);
+        let meant = meant.trim_end_matches('0').trim_end_matches('.');
+        log.warnings.push(format!(
+            "a margin of {margin} is {} %: if {margin} % was meant, write {}",
+            100.0 * margin,
+            line(meant)
+        ));
+    }
 }
 
 fn own_margins(filled: &Filled, log: &mut Log) -> Vec<(LimitKind, f64)> {

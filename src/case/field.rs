@@ -77,6 +77,8 @@ pub(super) enum Range {
     Positive,
     /// Nought or above.
     NotNegative,
+    /// Nought or above: the size of a deviation, whose sign the assessment chooses.
+    Size,
     /// Either sign.
     Any,
     /// Above nought and below one.

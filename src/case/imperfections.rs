@@ -10,27 +10,27 @@ use crate::units::{Dimension, MILLIMETRE};
 /// What holds where the whole table is left out.
 pub(super) const LEFT_OUT: &str = "squareness 0.05 of the free length and parallelism 0.03 of the outer diameter, as EN 15800 grade 2 (from memory)";
 
-const DEVIATION: Kind = Kind::Quantity(Dimension::LENGTH, Range::NotNegative);
+const DEVIATION: Kind = Kind::Quantity(Dimension::LENGTH, Range::Size);
 
 static SQUARENESS: Field = Field::new(
     "squareness",
     DEVIATION,
     "10 mm",
-    "Deviation from square e1: the free spring, stood on one end, leans by this much at its top.",
+    "Deviation from square e1: the free spring, stood on one end, leans by this much at its top. A size.",
 )
 .or(Absent::Value("0 mm"));
 static PARALLELISM: Field = Field::new(
     "parallelism",
     DEVIATION,
     "2 mm",
-    "Deviation from parallel of the end planes e2, over the outer diameter. The worse sign is taken.",
+    "Deviation from parallel of the end planes e2, over the outer diameter. A size; at which end it lies is tried.",
 )
 .or(Absent::Value("0 mm"));
 static BOW: Field = Field::new(
     "bow",
     DEVIATION,
     "0.5 mm",
-    "Height of the bow of the unloaded spring.",
+    "Height of the bow of the unloaded spring. A size.",
 )
 .or(Absent::Value("0 mm"));
 static BOW_SHAPE: Field = Field::new(
@@ -42,9 +42,9 @@ static BOW_SHAPE: Field = Field::new(
 .or(Absent::Value("half-sine"));
 static ECCENTRICITY: Field = Field::new(
     "eccentricity",
-    Kind::Quantity(Dimension::LENGTH, Range::Any),
+    DEVIATION,
     "0.5 mm",
-    "Distance of the line of load from the axis, the same at both ends.",
+    "Distance of the line of load from the axis, the same at both ends. A size.",
 )
 .or(Absent::Value("0 mm"));
 static TOP_POSITION: Field = Field::new(
@@ -56,7 +56,8 @@ static TOP_POSITION: Field = Field::new(
 .or(Absent::Value("piloted"));
 
 pub(super) static FORM: Form = Form {
-    doc: "Deviations from the perfect spring and seat. In a table that is given, what is left out \
+    doc: "Deviations from the perfect spring and seat, as sizes: how they lie to one another (all \
+          signs, and which end is out of parallel) is tried, and the worst is taken. In a table that is given, what is left out \
           is 0. Left out as a whole: squareness 0.05 of the free length and parallelism 0.03 of \
           the outer diameter, as EN 15800 grade 2 (from memory).",
     fields: &[

@@ -1,7 +1,7 @@
 //! `[material]`: a built-in wire or given moduli, and the service temperature.
 
 use super::diagnostics::Mistake;
-use super::field::{Absent, Field, Form, Kind, Range, Rule};
+use super::field::{Absent, Field, Form, Kind, Range, Rule, listed};
 use super::filled::{Content, Filled, Log};
 use crate::spring::{Material, materials, named_material};
 use crate::units::{Celsius, Dimension, Pascal};
@@ -198,6 +198,7 @@ pub(super) fn moduli(filled: &Filled, log: &mut Log) -> Option<Moduli> {
             ));
         }
     }
+    note_unused(filled, log);
     warn(&moduli, log);
     Some(moduli)
 }
@@ -247,6 +248,26 @@ fn given(filled: &Filled, temperature: Option<Celsius>, log: &mut Log) -> Option
         );
     }
     Some(moduli)
+}
+
+/// What is given for studies of a batch has no part in the assessment of one spring.
+fn note_unused(filled: &Filled, log: &mut Log) {
+    let given: Vec<&Field> = [&YOUNGS_UNCERTAINTY, &SHEAR_UNCERTAINTY, &DENSITY]
+        .into_iter()
+        .filter(|field| filled.is_given(field))
+        .collect();
+    if given.is_empty() {
+        return;
+    }
+    let (are, them) = if given.len() == 1 {
+        ("is", "it")
+    } else {
+        ("are", "them")
+    };
+    log.warnings.push(format!(
+        "{} {are} kept for studies of a batch; this assessment does not use {them}",
+        listed(&given, "and")
+    ));
 }
 
 fn warn(moduli: &Moduli, log: &mut Log) {

@@ -13,6 +13,7 @@ mod file;
 mod filled;
 mod form;
 mod imperfections;
+mod look_alike;
 mod material;
 mod nearest;
 mod quantity;
@@ -78,7 +79,7 @@ pub fn parse(file_name: &str, text: &str) -> Result<Case, Diagnostics> {
     let filled = reader::read(table.get_ref(), &form::CASE, "", 0..0, &mut log);
     let resolved = resolve::resolve(&filled, file_name, &mut log);
     let syntax = syntax::mistakes(text, &errors);
-    let mut mistakes = syntax::unexplained(text, &syntax, log.mistakes);
+    let mut mistakes = syntax::unexplained(text, &errors, &syntax, log.mistakes);
     mistakes.extend(syntax);
     match resolved {
         Some((setup, material)) if mistakes.is_empty() => Ok(Case {

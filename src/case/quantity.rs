@@ -1,6 +1,7 @@
 //! Text becomes a number: "62 mm", "12 N/mm", "5 %".
 
 use super::field::{Field, Range};
+use super::look_alike::{decimal_of_fraction, foreign_character};
 use super::nearest::{excerpt, nearest};
 use crate::units::{Dimension, Unit, UnitError, symbols};
 
@@ -37,7 +38,7 @@ pub(super) fn quantity(
     let unit = match Unit::parse(unit) {
         Ok(unit) => unit,
         Err(UnitError::Empty) => Unit::ONE,
-        Err(error) => return Err(bad_unit(field, unit, &error)),
+        Err(error) => return Err(bad_unit(field, unit, dimension, &error)),
     };
     if unit.dimension != dimension {
         return Err(Fault {
@@ -77,6 +78,14 @@ pub(super) fn checked(
         return fault("must be a finite number: not infinite, not NaN, not beyond 1e308");
     }
     match range {
+        Range::Size if value < 0.0 => {
+            return Err(Fault {
+                message: format!("`{}` is a size: it must not be negative", field.key),
+                label: String::new(),
+                cure: "leave out the sign: every way the deviations can lie to one another is tried, and the worst is taken"
+                    .to_string(),
+            });
+        }
         Range::Positive if value <= 0.0 => return fault("must be above 0"),
         Range::NotNegative if value < 0.0 => return fault("must not be negative"),
         Range::ProperShare if value <= 0.0 || value >= 1.0 => {
@@ -84,32 +93,63 @@ pub(super) fn checked(
         }
         _ => {}
     }
-    let (least, most, words) = reach(dimension);
-    let outside = match range {
-        Range::Positive => value < least || value > most,
-        _ if dimension == Dimension::TEMPERATURE => value < least || value > most,
-        _ => value.abs() > most,
+    let reach = Reach::of(dimension);
+    let least = match range {
+        _ if dimension == Dimension::TEMPERATURE => reach.least,
+        Range::Positive => reach.least,
+        Range::NotNegative | Range::Size | Range::ProperShare => 0.0,
+        Range::Any => -reach.most,
     };
-    if outside {
+    // What is written exactly at an end may miss it by round-off of its unit.
+    let slack = 1e-9 * reach.least.abs();
+    if value < least - slack || value > reach.most * (1.0 + 1e-9) {
+        let words = match range {
+            _ if dimension == Dimension::TEMPERATURE => reach.words(),
+            Range::Positive => reach.words(),
+            Range::NotNegative | Range::Size | Range::ProperShare => {
+                format!("0 to {}", reach.most_words)
+            }
+            Range::Any => format!("-{0} to {0}", reach.most_words),
+        };
         return fault(&format!("is outside what can be computed, {words}"));
     }
     Ok(value)
 }
 
-/// Sanity only: what is outside is a slip, or would leave the range of a computer's numbers.
-fn reach(dimension: Dimension) -> (f64, f64, &'static str) {
-    match dimension {
-        Dimension::LENGTH => (1e-6, 1e3, "1 um to 1 km"),
-        Dimension::FORCE => (1e-6, 1e12, "1 uN to 1 TN"),
-        Dimension::STRESS => (1.0, 1e14, "1 Pa to 100 TPa"),
-        Dimension::ANGLE => (0.0, std::f64::consts::FRAC_PI_2, "up to 90 deg"),
-        Dimension::TEMPERATURE => (-273.15, 2000.0, "-273.15 degC to 2000 degC"),
-        Dimension::STIFFNESS | Dimension::ROTATIONAL_STIFFNESS => {
-            (1e-9, 1e15, "1e-9 to 1e15 in SI units")
+/// Values that can be computed. Sanity only: what is outside is a slip, or would leave the range of
+/// a computer's numbers.
+struct Reach {
+    /// Least size, but for nought; of temperatures the least value.
+    least: f64,
+    most: f64,
+    least_words: &'static str,
+    most_words: &'static str,
+}
+
+impl Reach {
+    fn of(dimension: Dimension) -> Self {
+        let (least, most, least_words, most_words) = match dimension {
+            Dimension::LENGTH => (1e-6, 1e3, "1 um", "1000 m"),
+            Dimension::FORCE => (1e-6, 1e12, "0.001 mN", "1e6 MN"),
+            Dimension::STRESS => (1.0, 1e14, "1 Pa", "1e5 GPa"),
+            Dimension::ANGLE => (0.0, std::f64::consts::FRAC_PI_2, "0 deg", "90 deg"),
+            Dimension::TEMPERATURE => (-273.15, 2000.0, "-273.15 degC", "2000 degC"),
+            Dimension::STIFFNESS => (1e-9, 1e15, "1e-9 N/m", "1e15 N/m"),
+            Dimension::ROTATIONAL_STIFFNESS => (1e-9, 1e15, "1e-9 N m/rad", "1e15 N m/rad"),
+            Dimension::DENSITY => (1e-3, 1e6, "0.001 kg/m^3", "1e6 kg/m^3"),
+            Dimension::PER_KELVIN => (0.0, 0.01, "0 1/K", "0.01 1/K"),
+            _ => (1e-3, 1e5, "0.001", "100000"),
+        };
+        Reach {
+            least,
+            most,
+            least_words,
+            most_words,
         }
-        Dimension::DENSITY => (1e-3, 1e6, "1e-3 to 1e6 kg/m^3"),
-        Dimension::PER_KELVIN => (0.0, 0.01, "up to 0.01 1/K"),
-        _ => (1e-3, 1e5, "0.001 to 100000"),
+    }
+
+    fn words(&self) -> String {
+        format!("{} to {}", self.least_words, self.most_words)
     }
 }
 
@@ -120,6 +160,9 @@ fn wanted(dimension: Dimension) -> String {
 /// Splits `text` into its number and the text of its unit.
 fn parts<'t>(field: &Field, text: &'t str) -> Result<(f64, &'t str), Fault> {
     let text = text.trim();
+    if let Some(fault) = foreign_character(field, text) {
+        return Err(fault);
+    }
     let fault = |cause: String, cure: String| Fault {
         message: format!("`{}` {cause}", field.key),
         label: String::new(),
@@ -163,8 +206,15 @@ fn parts<'t>(field: &Field, text: &'t str) -> Result<(f64, &'t str), Fault> {
     {
         return Err(fault(
             "has more than one number".to_string(),
-            "write one decimal number, then its unit: \"0.5 in\" for half an inch, \"1200 mm\" without a gap"
-                .to_string(),
+            match decimal_of_fraction(text) {
+                Some(decimal) => format!(
+                    "write one decimal number, then its unit: {} = {}",
+                    field.key,
+                    field.toml(&decimal)
+                ),
+                None => "write one decimal number, then its unit: \"0.5 in\" for half an inch, \"1200 mm\" without a gap"
+                    .to_string(),
+            },
         ));
     }
     Ok((value, unit))
@@ -201,11 +251,24 @@ fn number_length(text: &str) -> usize {
     end
 }
 
-fn bad_unit(field: &Field, unit: &str, error: &UnitError) -> Fault {
+/// The unit that people mean by a symbol they know from elsewhere.
+fn usual_slip(symbol: &str, dimension: Dimension) -> Option<&'static str> {
+    let temperature = matches!(dimension, Dimension::TEMPERATURE | Dimension::PER_KELVIN);
+    match symbol {
+        "C" | "c" | "Celsius" | "celsius" if temperature => Some("degC"),
+        "F" | "f" | "Fahrenheit" | "fahrenheit" if temperature => Some("degF"),
+        "inch" | "inches" | "\"" => Some("in"),
+        "Nm" => Some("N m"),
+        "Nmm" => Some("N mm"),
+        _ => None,
+    }
+}
+
+fn bad_unit(field: &Field, unit: &str, dimension: Dimension, error: &UnitError) -> Fault {
     let cure = match error {
         UnitError::Unknown { symbol } => {
             let known = symbols().iter().map(|s| s.text);
-            match nearest(symbol, known) {
+            match usual_slip(symbol, dimension).or_else(|| nearest(symbol, known)) {
                 Some(near) => format!(
                     "did you mean `{near}`? For example {}",
                     field.example_line()

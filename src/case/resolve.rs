@@ -66,19 +66,23 @@ fn supports(
     let mut read = |field| {
         let table = file.table(field)?;
         let support = support::support(table, log)?;
-        if let Some(free_length) = free_length {
-            support::check_arm(table, &support, free_length, log);
-        }
-        Some((table, support))
+        let sound = free_length
+            .is_none_or(|free_length| support::check_arm(table, &support, free_length, log));
+        Some((table, support, sound))
     };
     let (bottom, top) = (read(&form::BOTTOM), read(&form::TOP));
-    if let (Some((bottom_table, bottom)), Some((top_table, top))) = (&bottom, &top)
+    // An arm that is too long is the cause of what it makes impossible.
+    let sound = [&bottom, &top]
+        .iter()
+        .all(|read| read.as_ref().is_some_and(|(_, _, sound)| *sound));
+    if sound
+        && let (Some((bottom_table, bottom, _)), Some((top_table, top, _))) = (&bottom, &top)
         && !hold(bottom, top, free_length.unwrap_or(f64::INFINITY))
     {
         log.mistakes
             .push(support::not_held(bottom_table, top_table));
     }
-    (bottom.map(|(_, s)| s), top.map(|(_, s)| s))
+    (bottom.map(|(_, s, _)| s), top.map(|(_, s, _)| s))
 }
 
 fn imperfections(

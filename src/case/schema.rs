@@ -93,7 +93,7 @@ fn text(pattern: &str) -> Value {
 fn number(range: Range) -> Value {
     match range {
         Range::Positive => json!({ "type": "number", "exclusiveMinimum": 0 }),
-        Range::NotNegative => json!({ "type": "number", "minimum": 0 }),
+        Range::NotNegative | Range::Size => json!({ "type": "number", "minimum": 0 }),
         Range::Any => json!({ "type": "number" }),
         Range::ProperShare => {
             json!({ "type": "number", "exclusiveMinimum": 0, "exclusiveMaximum": 1 })

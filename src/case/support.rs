@@ -56,14 +56,15 @@ static TILT: Field = Field::new(
     "tilt",
     Kind::Quantity(Dimension::ANGLE, Range::Any),
     "0.3 deg",
-    "Angle of the seat as built, in the plane of bowing.",
+    "Angle of the seat as built, in the plane of bowing; with its sign: positive leans so that the \
+     section turns towards +y.",
 )
 .or(Absent::Value("0 deg"));
 static OFFSET: Field = Field::new(
     "offset",
     Kind::Quantity(Dimension::LENGTH, Range::Any),
     "0.2 mm",
-    "Sideways position of the seat as built, in the plane of bowing.",
+    "Sideways position of the seat as built, in the plane of bowing; with its sign: positive is towards +y.",
 )
 .or(Absent::Value("0 mm"));
 
@@ -104,9 +105,15 @@ pub(super) fn support(filled: &Filled, log: &mut Log) -> Option<Support> {
     })
 }
 
-/// Notes an inward arm that reaches beyond the middle of the spring.
-pub(super) fn check_arm(filled: &Filled, support: &Support, free_length: Metre, log: &mut Log) {
-    if support.arm < -free_length / 2.0 {
+/// Notes an inward arm that reaches beyond the middle of the spring; says whether the arm is sound.
+pub(super) fn check_arm(
+    filled: &Filled,
+    support: &Support,
+    free_length: Metre,
+    log: &mut Log,
+) -> bool {
+    let sound = support.arm >= -free_length / 2.0;
+    if !sound {
         log.mistakes.push(Mistake::at(
             filled.at(&ARM),
             format!(
@@ -116,6 +123,7 @@ pub(super) fn check_arm(filled: &Filled, support: &Support, free_length: Metre, 
             "an inward arm is negative and at most half the free length; outward ones are positive",
         ));
     }
+    sound
 }
 
 /// The mistake of two supports that together do not hold the spring.

@@ -6,7 +6,11 @@ use super::nearest::excerpt;
 use std::collections::BTreeSet;
 use toml::de::Error;
 
-/// The mistakes of syntax, at most one a line: the others on that line follow from it.
+/// How the parser begins to say that a value has no quotes.
+const UNQUOTED: &str = "string values must be quoted";
+
+/// The mistakes of syntax, at most one a line: the others on that line follow from it. Of brackets
+/// that are not closed only the first: it swallows the lines after it.
 pub(super) fn mistakes(text: &str, errors: &[Error]) -> Vec<Mistake> {
     let lines = Lines::of(text);
     let mut places: Vec<(Place, &Error)> = errors
@@ -15,11 +19,38 @@ pub(super) fn mistakes(text: &str, errors: &[Error]) -> Vec<Mistake> {
         .collect();
     places.sort_by_key(|(place, _)| place.start);
     let mut seen = BTreeSet::new();
+    let mut swallowed = false;
     places
         .into_iter()
         .filter(|(place, _)| seen.insert(lines.index(place.start)))
-        .map(|(place, error)| mistake(text, &lines, place, error.message()))
+        .filter(|(_, error)| {
+            let first = !swallowed;
+            let swallows = swallows(&lines, error);
+            swallowed |= swallows;
+            first || !swallows
+        })
+        .map(|(place, error)| mistake(text, &lines, place, error))
         .collect()
+}
+
+/// Whether the parser takes what follows for part of a bracket, or gives up.
+fn swallows(lines: &Lines<'_>, error: &Error) -> bool {
+    let message = error.message();
+    is_header_in_value(lines, error)
+        || message.starts_with("missing comma")
+        || message.contains("inline table")
+        || is_too_deep(message)
+}
+
+/// Whether a table header is taken for a value, inside a bracket that is not closed.
+fn is_header_in_value(lines: &Lines<'_>, error: &Error) -> bool {
+    let start = error.span().map_or(0, |place| place.start);
+    let line = lines.text(lines.index(start));
+    error.message().starts_with(UNQUOTED) && line.trim_start().starts_with('[')
+}
+
+fn is_too_deep(parser: &str) -> bool {
+    parser.contains("recurse") || parser.contains("recursion")
 }
 
 /// `text` with the lines blanked out at which the parser would stop building tables, byte for byte
@@ -46,10 +77,20 @@ pub(super) fn without_stops(text: &str, errors: &[Error]) -> Option<String> {
     Some(blanked.collect())
 }
 
-fn mistake(text: &str, lines: &Lines<'_>, place: Place, parser: &str) -> Mistake {
+fn mistake(text: &str, lines: &Lines<'_>, place: Place, error: &Error) -> Mistake {
+    let parser = error.message();
     let here = text.get(place.clone()).unwrap_or_default();
     let line = lines.text(lines.index(place.start));
-    let (message, cure) = if parser.starts_with("string values must be quoted") {
+    let (message, cure) = if parser.starts_with("missing comma")
+        || parser.contains("inline table")
+        || is_header_in_value(lines, error)
+    {
+        (
+            "a comma is missing, or a bracket is not closed".to_string(),
+            "put commas between the parts, and close the bracket, as in { radial = \"6 mm\", axial = \"4 mm\" }"
+                .to_string(),
+        )
+    } else if parser.starts_with(UNQUOTED) {
         unquoted(here)
     } else if parser.starts_with("invalid literal string")
         && here.is_empty()
@@ -76,14 +117,14 @@ fn mistake(text: &str, lines: &Lines<'_>, place: Place, parser: &str) -> Mistake
             "a table header is not closed".to_string(),
             "end it with a bracket, as in [spring]".to_string(),
         )
-    } else if parser.starts_with("unexpected key or value") {
-        more_on_the_line(text, &place)
-    } else if parser.starts_with("missing comma") {
+    } else if is_too_deep(parser) {
         (
-            "a comma is missing, or a bracket is not closed".to_string(),
-            "put commas between the parts, and close the bracket, as in { radial = \"6 mm\", axial = \"4 mm\" }"
+            "brackets or keys are nested too deeply".to_string(),
+            "a case file is flat: [table] headers with key = value below, at most { key = value } in a value"
                 .to_string(),
         )
+    } else if parser.starts_with("unexpected key or value") {
+        more_on_the_line(text, &place)
     } else if parser.contains("unquoted key") {
         (
             "not a key: keys have letters, digits, `_` and `-`".to_string(),
@@ -137,9 +178,15 @@ fn more_on_the_line(text: &str, place: &Place) -> (String, String) {
     }
 }
 
-/// Drops of `others` what the mistakes of syntax explain: whatever stands on one of their lines,
-/// and the absence of a key that such a line has, or of any key where a header is broken.
-pub(super) fn unexplained(text: &str, syntax: &[Mistake], others: Vec<Mistake>) -> Vec<Mistake> {
+/// Drops of `others` what the mistakes of syntax, found as `errors`, explain: whatever stands on one
+/// of their lines, the absence of a key that such a line has, of any key where a header is broken or
+/// a bracket swallows what follows, and the keys under a header that is not seen as one.
+pub(super) fn unexplained(
+    text: &str,
+    errors: &[Error],
+    syntax: &[Mistake],
+    others: Vec<Mistake>,
+) -> Vec<Mistake> {
     let lines = Lines::of(text);
     let line_of = |mistake: &Mistake| {
         mistake
@@ -151,17 +198,40 @@ pub(super) fn unexplained(text: &str, syntax: &[Mistake], others: Vec<Mistake>) 
     if broken.is_empty() {
         return others;
     }
-    let multi_line = text.contains("\"\"\"") || text.contains("'''");
-    let all_absent = multi_line
+    let is_header = |line: usize| lines.text(line).trim_start().starts_with('[');
+    let lost_header = |line: usize| {
+        let words = lines.text(line).trim();
+        !is_header(line) && words.ends_with(']') && !words.contains('=')
+    };
+    // A key is read as one of another table where the header last above it is lost.
+    let headers: BTreeSet<usize> = lines
+        .indices()
+        .filter(|line| is_header(*line) || (broken.contains(line) && lost_header(*line)))
+        .collect();
+    let is_astray = |mistake: &Mistake| {
+        let above = headers.range(..=line_of(mistake)).next_back();
+        above.is_some_and(|above| !is_header(*above))
+    };
+    // A text in triple quotes that is not closed runs on to where that was noticed.
+    let runs_on = |mistake: &Mistake| {
+        mistake.place.as_ref().is_some_and(|place| {
+            let value = text.get(place.clone()).unwrap_or_default();
+            (value.starts_with("\"\"\"") || value.starts_with("'''"))
+                && broken.contains(&lines.index(place.end))
+        })
+    };
+    let all_absent = text.contains("\"\"\"")
+        || text.contains("'''")
+        || errors.iter().any(|error| swallows(&lines, error))
         || broken
             .iter()
-            .any(|line| lines.text(*line).trim_start().starts_with('['));
+            .any(|line| is_header(*line) || lost_header(*line));
     let has = |key: &&str| broken.iter().any(|line| lines.text(*line).contains(*key));
     others
         .into_iter()
         .filter(|mistake| {
             if mistake.absent.is_empty() {
-                !broken.contains(&line_of(mistake))
+                !broken.contains(&line_of(mistake)) && !is_astray(mistake) && !runs_on(mistake)
             } else {
                 !all_absent && !mistake.absent.iter().any(has)
             }

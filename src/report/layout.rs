@@ -117,9 +117,11 @@ impl Row {
     }
 }
 
+/// Between two columns of a table.
+pub const GAP: &str = "  ";
+
 /// A table: a heading with the names and units of the columns, then rows.
 pub fn table(title: &str, columns: &[&str], units: &[&str], rows: &[Row]) -> String {
-    const GAP: &str = "  ";
     let label_width = rows
         .iter()
         .map(|row| row.label.width())

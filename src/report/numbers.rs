@@ -45,6 +45,11 @@ impl Unit {
         format!("{} {}", shortest(self.of(si)), self.symbol)
     }
 
+    /// The SI value with up to four significant digits and the symbol: "4 mm".
+    pub fn show_rounded(self, si: f64) -> String {
+        format!("{} {}", rounded(self.of(si)), self.symbol)
+    }
+
     /// An error estimate with the symbol: "3e-9 mm".
     pub fn show_error(self, si: f64) -> String {
         format!("{} {}", error(self.of(si)), self.symbol)
@@ -152,6 +157,9 @@ pub fn column_decimals(values: impl IntoIterator<Item = f64>, digits: i32) -> us
     decimals_for(largest, digits).min(9)
 }
 
+/// From here on a number is written with a power of ten, so that it fits its column.
+const LARGE: f64 = 1e7;
+
 /// `value` with so many decimals, without a negative zero; "not a number" is said in words.
 pub fn fixed(value: f64, decimals: usize) -> String {
     if value.is_nan() {
@@ -164,6 +172,9 @@ pub fn fixed(value: f64, decimals: usize) -> String {
             "-unlimited"
         }
         .into();
+    }
+    if value.abs() >= LARGE {
+        return format!("{value:.3e}");
     }
     let text = format!("{value:.decimals$}");
     match text.strip_prefix('-') {
@@ -205,15 +216,29 @@ pub fn error(value: f64) -> String {
     }
 }
 
-/// A share as a percentage, three significant digits but not more than two decimals: "-4.02 %".
+/// A share as a percentage, three significant digits but not more than two decimals unless it has
+/// fewer than two digits then: "-4.02 %", "0.0034 %".
 pub fn percent(share: f64) -> String {
     let value = 100.0 * share;
-    format!("{} %", fixed(value, decimals_for(value, 3).min(2)))
+    let decimals = decimals_for(value, 3).min(2);
+    format!("{} %", fixed(value, decimals.max(decimals_of_small(value))))
 }
 
-/// A share in per cent for a column of a table, without the sign.
+/// A share in per cent for a column of a table, without the sign; small ones with two significant
+/// digits.
 pub fn percent_number(share: f64, decimals: usize) -> String {
-    fixed(100.0 * share, decimals)
+    let value = 100.0 * share;
+    fixed(value, decimals.max(decimals_of_small(value)))
+}
+
+/// Decimals that show a small percentage with two significant digits. What is smaller still is
+/// round-off.
+fn decimals_of_small(value: f64) -> usize {
+    const ROUND_OFF: f64 = 1e-6;
+    if value.abs() < ROUND_OFF {
+        return 0;
+    }
+    decimals_for(value, 2)
 }
 
 /// A derived number with four significant digits and no trailing zeros.
@@ -264,5 +289,22 @@ mod tests {
         assert_eq!(Units::Inch.show_stress(6.894_757_293_168e6), "1.000 ksi");
         assert_eq!(percent(-0.0402), "-4.02 %");
         assert_eq!(percent(0.123_456), "12.3 %");
+    }
+
+    #[test]
+    fn small_shares_keep_two_digits_and_round_off_is_nought() {
+        assert_eq!(percent(0.000_034), "0.0034 %");
+        assert_eq!(percent(-0.000_5), "-0.050 %");
+        assert_eq!(percent(0.0), "0 %");
+        assert_eq!(percent_number(0.000_034, 2), "0.0034");
+        assert_eq!(percent_number(0.000_4, 1), "0.040");
+        assert_eq!(percent_number(0.05, 1), "5.0");
+        assert_eq!(percent_number(-1.1e-16, 2), "0.00");
+    }
+
+    #[test]
+    fn large_numbers_fit_a_column() {
+        assert_eq!(fixed(123_456.78, 1), "123456.8");
+        assert_eq!(fixed(-2.5e12, 2), "-2.500e12");
     }
 }

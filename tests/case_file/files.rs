@@ -104,7 +104,9 @@ fn the_cases_and_the_starter_are_read() {
         if path.extension().is_some_and(|e| e == "toml") {
             let case = case::load(&path).unwrap_or_else(|mistakes| panic!("{mistakes}"));
             assert!(case.setup.is_held());
-            assert!(case.setup.warnings.is_empty(), "{:?}", case.setup.warnings);
+            let unused = |warning: &String| warning.contains("kept for studies of a batch");
+            let warnings = &case.setup.warnings;
+            assert!(warnings.iter().all(unused), "{warnings:?}");
             count += 1;
         }
     }

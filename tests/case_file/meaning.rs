@@ -336,6 +336,31 @@ fn warnings_do_not_refuse() {
         )
         .contains("E/G = 0.39")
     );
+    let margins = warned(
+        "[duty]",
+        "[duty]\nrequired_margin = 15\nmargins = { solid = 5, bow = 3 }",
+    );
+    assert!(margins.contains("a margin of 15 is 1500 %"));
+    assert!(margins.contains("write required_margin = 0.15"));
+    assert!(margins.contains("write margins = { solid = 0.05 }"));
+    assert!(!margins.contains("bow"));
+}
+
+/// What is accepted for later use is said not to count, in one line.
+#[test]
+fn inputs_that_do_not_count_are_named() {
+    let text = with(
+        "name = \"patented-carbon-steel\"",
+        "youngs_modulus = \"206 GPa\"\nshear_modulus = \"80 GPa\"\n\
+         youngs_modulus_uncertainty = \"2 %\"\ndensity = \"7850 kg/m^3\"",
+    );
+    assert_eq!(
+        read(&text).setup.warnings,
+        [
+            "`youngs_modulus_uncertainty` and `density` are kept for studies of a batch; this \
+             assessment does not use them"
+        ]
+    );
 }
 
 /// Extreme but possible springs are not forbidden.

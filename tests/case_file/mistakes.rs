@@ -211,6 +211,15 @@ fn geometry_that_cannot_exist() {
             "no field `imperfections2`",
             "`imperfections`",
         ),
+        // The arm is the cause, not what it makes of the supports.
+        (
+            "kind = \"hinged\"",
+            "kind = \"hinged\"\narm = \"-215 mm\"",
+            14,
+            7,
+            "beyond the middle",
+            "at most half",
+        ),
         (
             "kind = \"clamped\"",
             "kind = \"sliding\"\narm = \"-106 mm\"",
@@ -392,9 +401,51 @@ fn tables_are_checked_on_their_own() {
 
 #[test]
 fn a_flood_of_mistakes_is_counted() {
-    let flood: String = (0..5000).map(|i| format!("x{i} = 1\n")).collect();
-    let mistakes = refused(&(flood + BASE));
-    assert_eq!(mistakes.items().len(), 200);
-    assert_eq!(mistakes.count(), 5000);
-    assert!(mistakes.render(false).contains("and 4800 more"));
+    let flood: String = (0..60_000).map(|i| format!("x{i} = 1\n")).collect();
+    let mistakes = refused(&(flood + &with("\"8 mm\"", "\"8 N\"")));
+    // Twenty of a kind, and the one of another kind behind them.
+    assert_eq!(mistakes.items().len(), 21);
+    assert_eq!(mistakes.count(), 60_001);
+    let text = mistakes.render(false);
+    assert!(text.contains("and 59980 more like this: a case file has no field `x20`"));
+    assert!(text.contains("`wire` must be a length"));
+    assert!(text.lines().count() < 200, "{}", text.lines().count());
+}
+
+/// A bracket or quote that is not closed swallows what follows: no table is called missing.
+#[test]
+fn what_is_swallowed_is_not_missing() {
+    for (from, to, message) in [
+        ("[spring]", "x = [[1,\n[spring]", "bracket is not closed"),
+        (
+            "\"8 mm\"",
+            "{ radial = \"8 mm\", axial = \"3 mm\"",
+            "bracket is not closed",
+        ),
+        ("\"8 mm\"", "\"\"\"8 mm", "not closed"),
+        ("[material]", "material]", "neither `key = value`"),
+        ("[material]", "[[material", "unclosed"),
+    ] {
+        let mistakes = refused(&with(from, to));
+        let mut messages = mistakes.items().iter().map(|item| &item.message);
+        assert!(messages.any(|said| said.contains(message)), "{mistakes}");
+        for item in mistakes.items() {
+            assert!(
+                !item.message.contains("is missing") || item.message.contains("comma"),
+                "{mistakes}"
+            );
+            assert!(!item.message.contains("lacks"), "{mistakes}");
+            assert!(!item.message.contains("has no field `name`"), "{mistakes}");
+        }
+        assert!(mistakes.count() <= 2, "{mistakes}");
+    }
+    for deep in [
+        format!("x = {}{}\n", "[".repeat(500), "]".repeat(500)),
+        format!("x = {}1{}\n", "{a = ".repeat(500), "}".repeat(500)),
+        format!("[{}]\n", ["a"; 500].join(".")),
+    ] {
+        let item = only_mistake(&(deep.clone() + BASE));
+        assert!(item.message.contains("nested too deeply"), "{deep}");
+        assert!(item.cure.contains("flat"));
+    }
 }

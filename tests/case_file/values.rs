@@ -1,6 +1,7 @@
 //! Values, keys and words that cannot be read.
 
-use super::{check, refused, with};
+use super::{check, only_mistake, read, refused, with};
+use coilstay::case;
 
 #[test]
 fn values_that_are_no_quantity() {
@@ -69,7 +70,7 @@ fn values_that_are_no_quantity() {
             3,
             8,
             "more than one number",
-            "0.5 in",
+            "wire = \"0.3125 in\"",
         ),
         (
             "\"8 mm\"",
@@ -77,7 +78,7 @@ fn values_that_are_no_quantity() {
             3,
             8,
             "more than one number",
-            "0.5 in",
+            "wire = \"1.5 in\"",
         ),
         ("\"8 mm\"", "\"nan mm\"", 3, 8, "finite", "8 mm"),
         ("\"8 mm\"", "\"-inf mm\"", 3, 8, "finite", "8 mm"),
@@ -121,6 +122,142 @@ fn values_that_are_no_quantity() {
         ),
         ("\"Test\"", "\" \"", 1, 9, "is empty", "title = "),
     ]);
+}
+
+#[test]
+fn characters_that_only_look_right() {
+    check(&[
+        (
+            "\"95 mm\"",
+            "\"\u{2212}95 mm\"",
+            17,
+            22,
+            "`\u{2212}` (U+2212), a dash that is not the plain minus",
+            "working_deflection = \"-95 mm\"",
+        ),
+        (
+            "\"8 mm\"",
+            "\"\u{ff18} mm\"",
+            3,
+            8,
+            "(U+FF18), a full-width character",
+            "wire = \"8 mm\"",
+        ),
+        (
+            "\"8 mm\"",
+            "\"8\u{200b} mm\"",
+            3,
+            8,
+            "(U+200B), which cannot be seen",
+            "wire = \"8 mm\"",
+        ),
+        (
+            "\"8 mm\"",
+            "\"\u{bd} in\"",
+            3,
+            8,
+            "(U+00BD), which is not a plain digit",
+            "plain digits",
+        ),
+    ]);
+    // A superscript belongs to a unit.
+    let text = with("[duty]", "[duty]\nallowable_stress = \"700 N/mm\u{b2}\"");
+    assert_eq!(read(&text).setup.duty.allowable_stress, Some(700e6));
+}
+
+#[test]
+fn units_known_from_elsewhere() {
+    check(&[
+        (
+            "[bottom]",
+            "service_temperature = \"20 C\"\n[bottom]",
+            10,
+            23,
+            "unknown unit, `C`",
+            "did you mean `degC`",
+        ),
+        (
+            "\"hinged\"",
+            "\"elastic\"\nsideways_stiffness = \"none\"\nrotational_stiffness = \"40 Nm/rad\"",
+            15,
+            24,
+            "unknown unit, `Nm`",
+            "did you mean `N m`",
+        ),
+    ]);
+}
+
+#[test]
+fn a_size_has_no_sign() {
+    for field in ["squareness", "parallelism", "bow", "eccentricity"] {
+        let line = format!("{field} = \"-1 mm\"");
+        let item = only_mistake(&with("squareness = \"4 mm\"", &line));
+        assert!(item.message.contains("is a size"), "{}", item.message);
+        assert!(item.cure.contains("the worst is taken"), "{}", item.cure);
+    }
+    let text = with(
+        "\"hinged\"",
+        "\"hinged\"\ntilt = \"-1 deg\"\noffset = \"-1 mm\"",
+    );
+    assert!(read(&text).setup.top.tilt < 0.0 && read(&text).setup.top.offset < 0.0);
+}
+
+/// What a message calls the ends of a range is accepted, and what lies a little beyond is not.
+#[test]
+fn ranges_are_those_in_the_messages() {
+    let ends = |from: &str, beyond: &str| {
+        let item = only_mistake(&with(from, beyond));
+        let words = item.message.split("computed, ").nth(1).unwrap();
+        let (low, high) = words.split_once(" to ").unwrap();
+        [low.to_string(), high.to_string()]
+    };
+    let outside = |text: &str| match case::parse("test.toml", text) {
+        Ok(_) => false,
+        Err(mistakes) => mistakes
+            .items()
+            .iter()
+            .any(|i| i.message.contains("outside")),
+    };
+    for (from, key, low, high) in [
+        ("wire = \"8 mm\"", "wire", "0.9 um", "1001 m"),
+        ("squareness = \"4 mm\"", "squareness", "", "1001 m"),
+        ("[imperfections]", "arm", "-1001 m", "1001 m"),
+        ("[imperfections]", "tilt", "-91 deg", "91 deg"),
+        (
+            "[imperfections]",
+            "axial_stiffness",
+            "0.9e-9 N/m",
+            "1.1e15 N/m",
+        ),
+        ("[bottom]", "service_temperature", "-274 degC", "2001 degC"),
+        (
+            "working_deflection = \"95 mm\"",
+            "working_force",
+            "0.0009 mN",
+            "1.1e6 MN",
+        ),
+        (
+            "working_deflection = \"95 mm\"",
+            "allowable_stress",
+            "0.9 Pa",
+            "1.1e5 GPa",
+        ),
+    ] {
+        let line = |value: &str| {
+            let line = format!("{key} = \"{value}\"");
+            match from.strip_prefix('[') {
+                Some(_) => format!("{line}\n{from}"),
+                None if key == "allowable_stress" => format!("{from}\n{line}"),
+                None => line,
+            }
+        };
+        for beyond in [low, high].into_iter().filter(|value| !value.is_empty()) {
+            assert!(outside(&with(from, &line(beyond))), "{key} {beyond}");
+        }
+        for end in ends(from, &line(high)) {
+            assert!(!outside(&with(from, &line(&end))), "{key} {end}");
+        }
+    }
 }
 
 #[test]

@@ -75,7 +75,8 @@ fn marks_are_numbered_named_and_the_governing_one_said() {
         "formula, end constant 0.7",
         "formula, end constant 0.707",
         "first coils clash",
-        "solid (off the picture)",
+        "solid (force of the straight spring) (off the picture)",
+        "past the first clash of coils: the column model is a guide only",
         "axial deflection, mm",
         "axial force, N",
         "bow, mm",
@@ -92,6 +93,38 @@ fn marks_are_numbered_named_and_the_governing_one_said() {
         let count = texts.iter().filter(|text| **text == number).count();
         assert!(count >= 2, "{number}");
     }
+}
+
+/// The column is a guide only past the first clash: broken there, and named in the key; a path
+/// without a clash is drawn in one.
+#[test]
+fn the_path_past_the_clash_is_broken() {
+    let said = |svg: &str| {
+        texts(svg)
+            .iter()
+            .any(|text| text.starts_with("past the first clash"))
+    };
+    assert!(said(&drawn(Shape::Rising)) && !said(&drawn(Shape::Straight)));
+    let assessment = assessment(Shape::Rising);
+    let whole = &assessment.imperfect_column.as_ref().unwrap().path;
+    let mut unclashed = whole.clone();
+    unclashed.marks.retain(|mark| mark.name != "clash");
+    let svg = picture(&assessment, &unclashed);
+    let strokes = |svg: &str| svg.matches("<polyline").count();
+    assert!(strokes(&svg) < strokes(&drawn(Shape::Rising)));
+}
+
+#[test]
+fn a_new_rest_after_a_jump_is_named() {
+    let mut assessment = assessment(Shape::Falling);
+    let path = &mut assessment.imperfect_column.as_mut().unwrap().path;
+    let mut rest = path.marks[0].clone();
+    rest.name = "force_regained".into();
+    rest.point.deflection_m = 0.058;
+    path.marks.push(rest);
+    let path = path.clone();
+    let svg = picture(&assessment, &path);
+    assert!(texts(&svg).contains(&"rests again, same force"));
 }
 
 #[test]

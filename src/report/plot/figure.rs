@@ -3,6 +3,7 @@
 use super::key::{self, Entry};
 use super::marks::{Marked, Shape, marked};
 use super::panel::{BLACK, BLUE, Curve, Dash, GREY, Panel, Sheet, VERMILION, tenths};
+use super::parts::parted;
 use super::scale::{Axis, apart};
 use super::{PlotError, drawing_error, symbols};
 use crate::report::Units;
@@ -32,6 +33,7 @@ pub struct Figure {
     deflection: Axis,
     force: Panel,
     bow: Panel,
+    past_clash: bool,
     length_unit: Unit,
     force_unit: Unit,
 }
@@ -62,10 +64,22 @@ impl Figure {
             })
             .filter(|point| point.iter().all(|value| value.is_finite()))
             .collect();
-        let deflection = deflection_axis(&points, &all);
+        // The last step of a path goes past solid.
+        let of_path = |kind: LimitKind| {
+            let mark = path.marks.iter().find(|mark| mark.name == kind.key())?;
+            let point = mark.point;
+            Some([
+                length.of(point.deflection_m),
+                force.of(point.force_n),
+                length.of(point.bow_m),
+            ])
+        };
+        let points = parted(&points, of_path(LimitKind::Solid)).0;
+        let highest = highest_force(&points, &all);
+        let deflection = deflection_axis(&points, &all, highest);
         let (marks, off): (Vec<_>, Vec<_>) = all
             .into_iter()
-            .partition(|mark| deflection.contains(mark.deflection));
+            .partition(|mark| deflection.contains(mark.deflection) && mark.force <= highest);
 
         let seen = points.iter().filter(|point| deflection.contains(point[0]));
         let forces = seen
@@ -74,15 +88,26 @@ impl Figure {
             .chain(marks.iter().map(|m| m.force));
         let limit = length.of(assessment.duty.bow_limit_m);
         let bows = seen.map(|p| p[2]).chain([limit]);
-        let curve = |value: usize, color| Curve {
-            line: points.iter().map(|p| (p[0], p[value])).collect(),
-            color,
-            dash: Dash::Solid,
-            width: 2.0,
+        let (known, guide) = parted(&points, of_path(LimitKind::Clash));
+        let past_clash = !guide.is_empty();
+        let curves_of = |value: usize, color| {
+            [(&known, Dash::Solid), (&guide, Dash::Broken)].map(|(part, dash)| Curve {
+                line: part.iter().map(|p| (p[0], p[value])).collect(),
+                color,
+                dash,
+                width: 2.0,
+            })
         };
         // The perfect column's line lies below, to be seen where the two part.
         let mut curves: Vec<Curve> = perfect_path(&marks).into_iter().collect();
-        curves.push(curve(1, BLUE));
+        curves.extend(curves_of(1, BLUE));
+        let mut bow_curves = curves_of(2, VERMILION).to_vec();
+        bow_curves.push(Curve {
+            line: vec![(deflection.from, limit), (deflection.to, limit)],
+            color: BLACK,
+            dash: Dash::Dotted,
+            width: 1.2,
+        });
         let force_panel = Panel {
             name: format!("axial force, {}", force.symbol),
             axis: value_axis(forces, 6),
@@ -91,15 +116,7 @@ impl Figure {
         let bow_panel = Panel {
             name: format!("bow, {}", length.symbol),
             axis: value_axis(bows, 4),
-            curves: vec![
-                curve(2, VERMILION),
-                Curve {
-                    line: vec![(deflection.from, limit), (deflection.to, limit)],
-                    color: BLACK,
-                    dash: Dash::Dotted,
-                    width: 1.2,
-                },
-            ],
+            curves: bow_curves,
         };
         Figure {
             title: assessment.title.clone(),
@@ -109,6 +126,7 @@ impl Figure {
             deflection,
             force: force_panel,
             bow: bow_panel,
+            past_clash,
             length_unit: length,
             force_unit: force,
         }
@@ -117,7 +135,10 @@ impl Figure {
     /// Width and height, pixels.
     pub fn size(&self) -> (u32, u32) {
         let rows = self.marks.len() + self.off.len();
-        (WIDTH as u32, (KEY_TOP + key::height(rows)).ceil() as u32)
+        (
+            WIDTH as u32,
+            (KEY_TOP + key::height(rows, self.past_clash)).ceil() as u32,
+        )
     }
 
     /// The figure in words, for readers who cannot see it.
@@ -177,6 +198,7 @@ impl Figure {
             (18.0, KEY_TOP),
             &self.entries(),
             [self.length_unit.symbol, self.force_unit.symbol],
+            self.past_clash,
         )
     }
 
@@ -246,26 +268,44 @@ fn badges(places: &[i32]) -> Vec<i32> {
 
 /// From nought past the path and its points; limits, formula and solid too where that does not
 /// squeeze the path.
-fn deflection_axis(points: &[[f64; 3]], marks: &[Marked]) -> Axis {
-    let on_path = |mark: &&Marked| {
-        matches!(mark.shape, Shape::OpenCircle | Shape::FilledCircle) || mark.governs
-    };
+fn deflection_axis(points: &[[f64; 3]], marks: &[Marked], highest: f64) -> Axis {
     let reach = points
         .iter()
         .map(|point| point[0])
-        .chain(marks.iter().filter(on_path).map(|mark| mark.deflection))
+        .chain(marks.iter().filter(must_show).map(|mark| mark.deflection))
         .fold(0.0, f64::max);
-    let room = if reach > 0.0 {
-        1.6 * reach
-    } else {
-        f64::INFINITY
-    };
+    let room = room_beyond(reach);
     let to = marks
         .iter()
+        .filter(|mark| mark.force <= highest)
         .map(|mark| mark.deflection)
         .filter(|deflection| *deflection <= room)
         .fold(reach, f64::max);
     Axis::over(0.0, 1.03 * to, 8)
+}
+
+/// Whether the picture reaches as far as this mark in any case.
+fn must_show(mark: &&Marked) -> bool {
+    matches!(mark.shape, Shape::OpenCircle | Shape::FilledCircle) || mark.governs
+}
+
+/// How far marks beyond the path may stretch an axis.
+fn room_beyond(reach: f64) -> f64 {
+    if reach > 0.0 {
+        1.6 * reach
+    } else {
+        f64::INFINITY
+    }
+}
+
+/// Marks above this force would squeeze the path: they are named only.
+fn highest_force(points: &[[f64; 3]], marks: &[Marked]) -> f64 {
+    let reach = points
+        .iter()
+        .map(|point| point[1])
+        .chain(marks.iter().filter(must_show).map(|mark| mark.force))
+        .fold(0.0, f64::max);
+    room_beyond(reach)
 }
 
 /// From nought (or below, where values are) to a little above the largest value.
@@ -281,7 +321,7 @@ fn value_axis(values: impl Iterator<Item = f64>, count: usize) -> Axis {
 /// The straight path of the perfect column as built: a straight line from the origin to its
 /// critical point or, where it has none before solid, to solid.
 fn perfect_path(marks: &[Marked]) -> Option<Curve> {
-    let of = |kind: LimitKind| marks.iter().find(|mark| mark.title == kind.title());
+    let of = |kind: LimitKind| marks.iter().find(|mark| mark.key == kind.key());
     let end = of(LimitKind::Critical).or_else(|| of(LimitKind::Solid))?;
     Some(Curve {
         line: vec![(0.0, 0.0), (end.deflection, end.force)],

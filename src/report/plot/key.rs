@@ -5,6 +5,7 @@ use super::panel::{BLACK, BLUE, Dash, Sheet, VERMILION, stroke, tenths};
 use super::{PlotError, symbols};
 
 const LINES: f64 = 24.0;
+const PAST_CLASH: &str = "past the first clash of coils: the column model is a guide only";
 const HEAD: f64 = 20.0;
 const ROW: f64 = 20.0;
 /// Right edges of the columns of values, pixels from the left edge of the key.
@@ -24,9 +25,14 @@ pub struct Entry {
     pub values: [String; 3],
 }
 
-/// Height of a key with so many rows, pixels.
-pub fn height(rows: usize) -> f64 {
-    LINES + HEAD + ROW * rows as f64 + 14.0
+/// Height of the samples of lines, pixels.
+fn height_of_lines(past_clash: bool) -> f64 {
+    if past_clash { 2.0 * LINES } else { LINES }
+}
+
+/// Height of a key with so many rows, pixels; with a line for what is past the first clash or not.
+pub fn height(rows: usize, past_clash: bool) -> f64 {
+    height_of_lines(past_clash) + HEAD + ROW * rows as f64 + 14.0
 }
 
 /// Draws the key with its top left corner at `corner` (pixels).
@@ -35,6 +41,7 @@ pub fn draw(
     (left, top): (f64, f64),
     entries: &[Entry],
     [length, force]: [&str; 2],
+    past_clash: bool,
 ) -> Result<(), PlotError> {
     let text = symbols::Text::new(sheet);
     let samples = [
@@ -49,7 +56,7 @@ pub fn draw(
         ),
         (590.0, BLACK, Dash::Dotted, 1.2, "bow limit"),
     ];
-    let middle = top + LINES / 2.0;
+    let mut middle = top + LINES / 2.0;
     for (x, color, dash, width, name) in samples {
         let line = vec![
             (tenths(left + x), tenths(middle)),
@@ -58,8 +65,20 @@ pub fn draw(
         stroke(sheet, line, color, dash, width)?;
         text.entry(name, (left + x + 35.0, middle), false)?;
     }
+    if past_clash {
+        middle += LINES;
+        for (up, color) in [(-2.5, BLUE), (2.5, VERMILION)] {
+            let line = vec![
+                (tenths(left), tenths(middle + up)),
+                (tenths(left + 28.0), tenths(middle + up)),
+            ];
+            stroke(sheet, line, color, Dash::Broken, 2.0)?;
+        }
+        text.entry(PAST_CLASH, (left + 35.0, middle), false)?;
+    }
 
-    let middle = top + LINES + HEAD / 2.0;
+    let heads_top = top + height_of_lines(past_clash);
+    let middle = heads_top + HEAD / 2.0;
     let heads = [
         format!("deflection, {length}"),
         format!("force, {force}"),
@@ -68,7 +87,7 @@ pub fn draw(
     for (head, column) in heads.iter().zip(COLUMNS) {
         text.figure(head, (left + column, middle), false)?;
     }
-    let rule = top + LINES + HEAD;
+    let rule = heads_top + HEAD;
     let line = vec![
         (tenths(left), tenths(rule)),
         (tenths(left + COLUMNS[2]), tenths(rule)),

@@ -18,6 +18,8 @@ pub enum Shape {
     TriangleDown,
     /// Largest travel.
     TriangleLeft,
+    /// At rest again after a jump.
+    TriangleRight,
     /// Bow limit.
     Diamond,
     /// Rate lost.
@@ -39,6 +41,8 @@ pub enum Shape {
 /// A point to be marked.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Marked {
+    /// Key of what happens there, where it is a limit's or a path's mark.
+    pub key: String,
     /// Name in the key.
     pub title: String,
     /// Its shape.
@@ -63,10 +67,11 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
             "largest_travel" => has(path, LimitKind::TravelLost.key()),
             _ => false,
         };
-        if repeated {
+        if repeated || is_beyond_solid(assessment, &mark.name) {
             continue;
         }
         marks.push(Marked {
+            key: mark.name.clone(),
             title: mark_title(&mark.name),
             shape: shape(&mark.name),
             deflection: mark.point.deflection_m,
@@ -82,7 +87,8 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
     for limit in off_path {
         if let (Some(deflection), Some(force)) = (limit.deflection_m, limit.force_n) {
             marks.push(Marked {
-                title: limit.name.title().to_string(),
+                key: limit.name.key().to_string(),
+                title: off_path_title(limit.name),
                 shape: shape(limit.name.key()),
                 deflection,
                 force,
@@ -92,6 +98,7 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
         }
     }
     let perfect = |title: String, shape, measure: &crate::result::Measure| Marked {
+        key: String::new(),
         title,
         shape,
         deflection: measure.deflection_m,
@@ -115,6 +122,21 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
     marks
 }
 
+fn is_beyond_solid(assessment: &Assessment, key: &str) -> bool {
+    assessment
+        .limits
+        .iter()
+        .any(|limit| limit.beyond_solid && limit.name.key() == key)
+}
+
+/// Name of a limit that is not on the path.
+fn off_path_title(limit: LimitKind) -> String {
+    match limit {
+        LimitKind::Solid => "solid (force of the straight spring)".to_string(),
+        other => other.title().to_string(),
+    }
+}
+
 fn has(path: &Path, name: &str) -> bool {
     path.marks.iter().any(|mark| mark.name == name)
 }
@@ -126,6 +148,7 @@ fn shape(key: &str) -> Shape {
         "critical" => Shape::TriangleUp,
         "dead_load_lost" | "largest_force" => Shape::TriangleDown,
         "travel_lost" | "largest_travel" => Shape::TriangleLeft,
+        "force_regained" | "travel_regained" => Shape::TriangleRight,
         "bow" => Shape::Diamond,
         "rate_lost" => Shape::Square,
         "stress" => Shape::Pentagon,

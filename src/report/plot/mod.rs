@@ -7,6 +7,7 @@ mod key;
 mod marks;
 mod panel;
 mod paper;
+mod parts;
 mod scale;
 mod symbols;
 

@@ -38,6 +38,8 @@ pub enum Dash {
     Solid,
     /// Long strokes.
     Dashed,
+    /// Strokes and gaps of one length, for what is a guide only.
+    Broken,
     /// Short strokes.
     Dotted,
 }
@@ -185,6 +187,7 @@ pub fn stroke(
     match dash {
         Dash::Solid => sheet.draw(&PathElement::new(line, style)),
         Dash::Dashed => sheet.draw(&dashed(7.0, 4.0)),
+        Dash::Broken => sheet.draw(&dashed(4.5, 4.5)),
         Dash::Dotted => sheet.draw(&dashed(1.6, 3.0)),
     }
     .map_err(drawing_error)

@@ -154,6 +154,7 @@ pub fn draw(sheet: &Sheet, shape: Shape, at: (i32, i32), governs: bool) -> Resul
         Shape::TriangleUp => closed(regular(3, 6.2, -PI / 2.0)),
         Shape::TriangleDown => closed(regular(3, 6.2, PI / 2.0)),
         Shape::TriangleLeft => closed(regular(3, 6.2, PI)),
+        Shape::TriangleRight => closed(regular(3, 6.2, 0.0)),
         Shape::Diamond => closed(regular(4, 5.8, 0.0)),
         Shape::Square => closed(regular(4, 6.0, PI / 4.0)),
         Shape::Pentagon => closed(regular(5, 5.4, -PI / 2.0)),

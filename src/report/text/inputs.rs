@@ -53,7 +53,16 @@ pub fn inputs(assessment: &Assessment, units: Units) -> String {
     if !others.is_empty() {
         body += &paragraph("  Also taken by default: ", &others.join(", "));
     }
-    section("Inputs as resolved", &body)
+    let temperature = assessment.spring.service_temperature_degc;
+    let heading = if temperature == 20.0 {
+        "Inputs as resolved".to_string()
+    } else {
+        format!(
+            "Inputs as resolved, at the service temperature of {} degC",
+            shortest(temperature)
+        )
+    };
+    section(&heading, &body)
 }
 
 /// What of an input was taken by default, in brackets.

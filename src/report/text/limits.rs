@@ -3,8 +3,13 @@
 use super::measures::{beyond_solid, never};
 use crate::report::Units;
 use crate::report::layout::{Row, paragraph, table};
-use crate::report::numbers::{column_decimals, error, fixed, percent_number, shortest};
+use crate::report::numbers::{
+    column_decimals, error, fixed, percent_input, percent_number, shortest,
+};
 use crate::result::{Assessment, Limit, LimitKind};
+
+const MODELS: &str = "Critical: of the perfect column as built, dead coils and arms included. Solid: \
+     of the spring's geometry. All others: of the imperfect column.";
 
 /// The table of limits and their notes.
 pub fn limits(assessment: &Assessment, units: Units) -> String {
@@ -26,7 +31,7 @@ pub fn limits(assessment: &Assessment, units: Units) -> String {
         .iter()
         .map(|limit| {
             let mark = if limit.governs { "> " } else { "  " };
-            let label = format!("{mark}{}", limit.name.title());
+            let label = format!("{mark}{}", label(limit.name));
             let Some(deflection) = limit.deflection_m else {
                 return Row {
                     strong: limit.governs,
@@ -38,7 +43,7 @@ pub fn limits(assessment: &Assessment, units: Units) -> String {
             }
             let or_dash = |text: Option<String>| text.unwrap_or_else(|| "-".into());
             Row {
-                remark: if limit.governs { "governs" } else { "" }.into(),
+                remark: remark(limits, limit),
                 strong: limit.governs,
                 ..Row::of(
                     label,
@@ -67,8 +72,98 @@ pub fn limits(assessment: &Assessment, units: Units) -> String {
         &[length.symbol, "%", force.symbol, "%", "%", length.symbol],
         &rows,
     );
-    for limit in limits.iter().filter(|limit| !limit.note.is_empty()) {
-        out += &paragraph(&format!("  {}: ", limit.name.title()), &limit.note);
+    out += &legend(assessment, units);
+    out
+}
+
+/// Name of a limit in the table; what model the critical one is of, the legend says.
+fn label(limit: LimitKind) -> &'static str {
+    match limit {
+        LimitKind::Critical => "critical, perfect column",
+        other => other.title(),
+    }
+}
+
+/// Words behind the row of a limit.
+fn remark(limits: &[Limit], limit: &Limit) -> String {
+    let mut words = Vec::new();
+    if limit.governs {
+        words.push("governs");
+    }
+    if is_in_jump(limits, limit) {
+        words.push("in the jump");
+    }
+    if is_past_clash(limits, limit) {
+        words.push("past clash");
+    }
+    words.join(", ")
+}
+
+/// Whether the path of the column gets there.
+fn is_of_path(limit: &Limit) -> bool {
+    !matches!(limit.name, LimitKind::Critical | LimitKind::Solid)
+}
+
+fn is_reached(limit: &Limit) -> bool {
+    limit.deflection_m.is_some() && !limit.beyond_solid
+}
+
+/// Whether it is reached only in the jump that begins where load or travel is lost: it is given
+/// the deflection of that.
+fn is_in_jump(limits: &[Limit], limit: &Limit) -> bool {
+    let is_loss = |limit: &Limit| limit.name.is_loss();
+    is_of_path(limit)
+        && !is_loss(limit)
+        && is_reached(limit)
+        && limits
+            .iter()
+            .any(|lost| is_loss(lost) && lost.deflection_m == limit.deflection_m)
+}
+
+/// Whether coils touch before: the column model is a guide only there.
+fn is_past_clash(limits: &[Limit], limit: &Limit) -> bool {
+    is_of_path(limit)
+        && limits
+            .iter()
+            .filter(|clash| clash.name == LimitKind::Clash && is_reached(clash))
+            .any(|clash| limit.deflection_m > clash.deflection_m)
+}
+
+/// Which model each limit belongs to, and what those mean that are reached.
+fn legend(assessment: &Assessment, units: Units) -> String {
+    let mut out = paragraph("  ", MODELS);
+    for limit in assessment.limits.iter().filter(|limit| is_reached(limit)) {
+        let meaning = match limit.name {
+            LimitKind::Bow => format!(
+                "{} from where the axis stood unloaded in its seats",
+                units.length().show_rounded(assessment.duty.bow_limit_m)
+            ),
+            LimitKind::RateLost => format!(
+                "slope of the path down to {} of the straight spring's rate",
+                percent_input(1.0 - assessment.duty.rate_loss_share)
+            ),
+            LimitKind::Stress => "corrected shear stress at the worst section".to_string(),
+            LimitKind::Clash => {
+                "on the inside of the bow; past it the column model is a guide only".to_string()
+            }
+            LimitKind::DeadLoadLost => "largest force of the path".to_string(),
+            LimitKind::TravelLost => "largest travel of the path".to_string(),
+            LimitKind::Solid => limit.note.clone(),
+            LimitKind::Critical => String::new(),
+        };
+        if !meaning.is_empty() {
+            out += &paragraph(&format!("  {}: ", limit.name.title()), &meaning);
+        }
+    }
+    if assessment
+        .limits
+        .iter()
+        .any(|limit| is_in_jump(&assessment.limits, limit))
+    {
+        out += &paragraph(
+            "  in the jump: ",
+            "reached on the way to the next stable state, so counted where the jump starts",
+        );
     }
     out
 }

@@ -10,6 +10,13 @@ use crate::result::{
 
 const NOTHING: &str = "-";
 
+const MODEL_ERROR: &str = "Error estimates are those of solving the model; the column model itself \
+     differs from a real coil by some per cent (see README, Validity).";
+const FORCE_MARGINS: &str =
+    "Margins of a dead load are ratios of forces: limit force / working load - 1.";
+const SOFT_SEATS: &str = "Deflections are travel of the machine, soft seats included; shares are of \
+     the spring alone.";
+
 /// One line of the table before its columns have their decimals.
 struct Line {
     label: String,
@@ -182,10 +189,29 @@ fn imperfect_line(column: &ImperfectColumn) -> Line {
     }
 }
 
+/// What the columns of the table mean.
+fn meaning(assessment: &Assessment) -> String {
+    let mut out = paragraph("  ", MODEL_ERROR);
+    if assessment.duty.loading == "force" {
+        out += &paragraph("  ", FORCE_MARGINS);
+    }
+    let supports = &assessment.supports;
+    if [&supports.bottom, &supports.top]
+        .iter()
+        .any(|support| support.axial_stiffness_n_per_m.is_some())
+    {
+        out += &paragraph("  ", SOFT_SEATS);
+    }
+    out
+}
+
 /// Sources and side results under the table.
 fn notes(assessment: &Assessment, units: Units) -> String {
     let closed = &assessment.closed_form;
-    let mut out = paragraph("  ", &closed.note);
+    let mut out = meaning(assessment);
+    if !closed.curves.is_empty() {
+        out += &paragraph("  Formula: ", &closed.note);
+    }
     for curve in &closed.curves {
         let start = format!("  End constant {}: ", shortest(curve.end_constant));
         out += &paragraph(&start, &format!("{}.", curve.source.trim_end_matches('.')));
@@ -198,41 +224,14 @@ fn notes(assessment: &Assessment, units: Units) -> String {
         out += &paragraph("  ", &text);
     }
     if let Some(column) = &assessment.imperfect_column {
-        out += &imperfect_notes(assessment, column, units);
+        out += &imperfect_notes(column, units);
     }
     out
 }
 
-fn imperfect_notes(assessment: &Assessment, column: &ImperfectColumn, units: Units) -> String {
+fn imperfect_notes(column: &ImperfectColumn, units: Units) -> String {
     let length = units.length();
     let mut out = String::new();
-    match column.bow_at_working_m {
-        Some(bow) => {
-            let estimate = column
-                .bow_at_working_error_m
-                .map(|e| format!(", error estimate {}", length.show_error(e)))
-                .unwrap_or_default();
-            let stress = column
-                .stress_at_working_pa
-                .map(|stress| format!("; its wire carries {}", units.show_stress(stress)))
-                .unwrap_or_default();
-            out += &paragraph(
-                "  ",
-                &format!(
-                    "At the working deflection, tolerance included, the imperfect column bows {} \
-                     (limit {}{estimate}){stress}.",
-                    length.show(bow),
-                    length.show_input(assessment.duty.bow_limit_m),
-                ),
-            );
-        }
-        None => {
-            out += &paragraph(
-                "  ",
-                "The path of the imperfect column does not reach the working deflection.",
-            );
-        }
-    }
     if let Some(southwell) = column.southwell {
         out += &paragraph(
             "  ",

@@ -1,4 +1,5 @@
-//! The verdict as text, to be read aloud: the answer first, then what it rests on.
+//! The verdict as text, to be read aloud: the answer first, then what to beware of,
+//! then what it rests on.
 
 mod answer;
 mod inputs;
@@ -30,6 +31,7 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
         title(&assessment.title, &assessment.file),
         answer::question(assessment, units),
         answer::answer(assessment, units),
+        remarks::warnings(assessment),
         measures::measures(assessment, units),
         measures::comparisons(assessment, units),
         limits::limits(assessment, units),
@@ -38,7 +40,6 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
         remarks::absolute_stability(assessment, units),
         remarks::stress_at_solid(assessment, units),
         inputs::inputs(assessment, units),
-        remarks::warnings(assessment),
         section("Caution", &paragraph("  ", CAUTION)),
     ];
     join(&sections)
@@ -47,8 +48,8 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
 /// A case that could not be read. The mistakes stand on standard error with the text they are in.
 fn refused(refusal: &Refusal) -> String {
     let count = match refusal.mistakes.len() {
-        1 => "one mistake".to_string(),
-        many => format!("{many} mistakes"),
+        1 => "one mistake",
+        _ => "mistakes",
     };
     let words = format!("{count} in the input, explained on standard error.");
     let verdict = styled("COULD NOT BE DECIDED:", OPEN);
@@ -58,13 +59,12 @@ fn refused(refusal: &Refusal) -> String {
     )
 }
 
+/// The title, and the file below it; a case without a title is called by its file already.
 fn title(title: &str, file: &str) -> String {
     let title = paragraph("", title);
-    format!(
-        "{}\n{}",
-        styled(title.trim_end(), STRONG),
-        paragraph("", file)
-    )
+    let file = paragraph("", file);
+    let below = if file == title { "" } else { &file };
+    format!("{}\n{below}", styled(title.trim_end(), STRONG))
 }
 
 /// A section under its heading; none where there is nothing to say.
