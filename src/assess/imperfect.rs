@@ -9,6 +9,9 @@ use crate::column::{Column, Idealisation, StraightScan};
 use crate::result::{Failure, PathPoint};
 use crate::setup::{LimitKind, Loading, Orientation, Setup};
 
+/// Share of the lost load or travel above which a bowed state beside is not worth a word.
+const NEARLY_ALL: f64 = 0.999;
+
 /// Both meshes, for the worst of the orientations.
 pub(super) struct Imperfect {
     pub fine: Run,
@@ -148,6 +151,6 @@ impl Imperfect {
             .map(|seen| value(&seen.point))
             .fold(f64::INFINITY, f64::min);
         let share = lowest / value(&lost.point);
-        (share < 1.0).then_some(share)
+        (share < NEARLY_ALL).then_some(share)
     }
 }

@@ -15,10 +15,12 @@ pub(super) fn dead_load(setup: &Setup, imperfect: &Imperfect) -> Option<DeadLoad
     }
     let run = &imperfect.fine;
     let lost = run.event(EventKind::Limit(LimitKind::DeadLoadLost));
+    let solid = run.event(EventKind::Limit(LimitKind::Solid));
     let regained = run
         .event(EventKind::ForceRegained)
-        .filter(|event| event.point.unstable_dead_load == 0);
-    let rest = regained.or_else(|| run.event(EventKind::Limit(LimitKind::Solid)));
+        .filter(|event| event.point.unstable_dead_load == 0)
+        .filter(|event| solid.is_none_or(|solid| event.place < solid.place));
+    let rest = regained.or(solid);
     let jump = lost.zip(rest);
     let force = lost.map_or(0.0, |lost| lost.point.force_n);
     let rests_at = jump.map(|(_, rest)| rest.point.shortening_m + force * seat_compliance(setup));

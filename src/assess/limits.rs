@@ -4,7 +4,7 @@ use super::events::EventKind;
 use super::imperfect::Imperfect;
 use super::straight::{Critical, is_beyond_solid, seat_compliance, share_of_free_length};
 use crate::result::{Limit, StressAtSolid};
-use crate::setup::{LimitKind, Setup};
+use crate::setup::{LimitKind, Loading, Setup};
 use crate::spring::{compressed_radius, torsion_stress};
 
 /// Below this share of the solid deflection, a clash differs from solid by round-off only.
@@ -84,6 +84,10 @@ fn solid_limit(setup: &Setup, imperfect: &Imperfect) -> Limit {
     let shortening = setup.spring.solid_deflection();
     let on_path = imperfect.fine.event(EventKind::Limit(LimitKind::Solid));
     let (force, whose) = match on_path {
+        // Under a dead load nothing stops the spring between the loss and solid.
+        Some(event) if event.in_jump && setup.duty.loading == Loading::Force => {
+            (event.reached.1, "reached in the jump of the lost load")
+        }
         Some(event) => (event.point.force_n, "force of the imperfect column"),
         None => (
             setup.spring.rate() * shortening,
