@@ -92,10 +92,6 @@ fn a_snap_frees_the_loop_of_the_path() {
             })
             .sum();
         let freed = snap.energy_freed_j.expect("frees");
-            "{slenderness} {bow} {area} {freed} {} {}",
-            area / freed - 1.0,
-            points.len()
-        );
         assert!((area / freed - 1.0).abs() < 1e-2, "{area} {freed}");
         assert!(snap.force_after_n.expect("rests") < snap.force_before_n);
     }
