@@ -3,12 +3,14 @@
 use super::MESHES;
 use super::events::{Event, EventKind};
 use super::run::Run;
-use super::straight::FLOOR;
+use super::straight::floor;
 use super::walk::{PathEnd, Reach};
 use crate::column::{Column, Idealisation, StraightScan};
 use crate::result::{Failure, PathPoint};
 use crate::setup::{LimitKind, Loading, Orientation, Setup};
 
+/// Relative difference of what two orientations reach that is discretisation, not a difference.
+const SAME_SEVERITY: f64 = 1e-6;
 /// Share of the lost load or travel above which a bowed state beside is not worth a word.
 const NEARLY_ALL: f64 = 0.999;
 
@@ -48,7 +50,7 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
     let mut coarse = on_coarse(orientation);
     for other in orientations.iter().skip(1) {
         let run = on_coarse(*other);
-        if run.severity(setup) > coarse.severity(setup) {
+        if is_worse(&run, &coarse, setup) {
             (coarse, orientation) = (run, *other);
         }
     }
@@ -59,7 +61,7 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
             ..orientation
         };
         let run = on_coarse(other);
-        if run.severity(setup) > coarse.severity(setup) {
+        if is_worse(&run, &coarse, setup) {
             (coarse, orientation) = (run, other);
         }
     }
@@ -91,6 +93,22 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
     }
 }
 
+/// Whether one run is worse than another by more than round-off.
+fn is_worse(one: &Run, other: &Run, setup: &Setup) -> bool {
+    let ((lost, nearness), (other_lost, other_nearness)) =
+        (one.severity(setup), other.severity(setup));
+    if lost != other_lost {
+        return lost;
+    }
+    let different = |(mine, its): &(&f64, &f64)| {
+        (*mine - *its).abs() > SAME_SEVERITY * mine.abs().max(its.abs())
+    };
+    match nearness.iter().zip(&other_nearness).find(different) {
+        Some((mine, its)) => mine > its,
+        None => nearness.len() > other_nearness.len(),
+    }
+}
+
 /// The largest deflection that any limit of this duty must reach, m, as the duty counts it.
 fn farthest_needed(setup: &Setup) -> f64 {
     LimitKind::ALL
@@ -102,7 +120,7 @@ fn farthest_needed(setup: &Setup) -> f64 {
 
 impl Imperfect {
     /// An event with its error estimate: the difference of the two meshes and the last bracket.
-    pub fn event(&self, kind: EventKind) -> Option<(&Event, f64)> {
+    pub fn event(&self, setup: &Setup, kind: EventKind) -> Option<(&Event, f64)> {
         let fine = self.fine.event(kind)?;
         let other = self.coarse.event(kind).map_or_else(
             // Only the finer mesh has the event: the coarser says it is not before its end.
@@ -110,7 +128,10 @@ impl Imperfect {
             |coarse| coarse.reached.0,
         );
         let difference = (other - fine.reached.0).abs();
-        Some((fine, difference + fine.bracket + FLOOR * fine.reached.0))
+        Some((
+            fine,
+            difference + fine.bracket + floor(setup, fine.reached.0),
+        ))
     }
 
     /// Whether the path is known, on both meshes, as far as the limits of this duty need it.

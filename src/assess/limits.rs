@@ -133,7 +133,7 @@ fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
     }
     let solid = setup.spring.solid_deflection();
     let found = imperfect
-        .event(EventKind::Limit(kind))
+        .event(setup, EventKind::Limit(kind))
         .filter(|(event, _)| {
             kind != LimitKind::Clash || event.point.shortening_m < (1.0 - SAME_AS_SOLID) * solid
         });

@@ -92,6 +92,10 @@ fn without_effect(setup: &Setup) -> Vec<String> {
             }
         }
     }
+    let cannot_turn = |s: &Support| s.rotation == Restraint::Held;
+    if sizes.eccentricity != 0.0 && cannot_turn(&setup.bottom) && cannot_turn(&setup.top) {
+        notes.push("The eccentricity has no effect: neither end can turn.".to_owned());
+    }
     for (name, support) in [("bottom", &setup.bottom), ("top", &setup.top)] {
         if support.tilt != 0.0 && support.rotation == Restraint::Free {
             notes.push(format!(

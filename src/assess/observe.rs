@@ -149,8 +149,7 @@ fn wire_stress(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
 }
 
 /// Smallest axial gap between neighbouring coils, m: on the inside of the bow
-/// `p(1 + ε − R|θ'|) − √(d² − (γp)²)`, for rectangular wire less its axial size. The stiffness is
-/// taken as constant between stations.
+/// `p(1 + ε − R|θ'|) − √(d² − (γp)²)`, for rectangular wire less its axial size.
 fn clearance(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
     let spring = &setup.spring;
     let (pitch, diameter) = (spring.pitch(), spring.mean_diameter);
@@ -165,7 +164,7 @@ fn clearance(setup: &Setup, column: &Column, stations: &[Station]) -> f64 {
             let slide_slope = -s.axial_force * s.curvature * per(s.slide, s.shear_force);
             let arm_slope = -pitch.powi(2) * open * stretch_slope
                 / (4.0 * PI.powi(2) * radius * column.scale.length);
-            let turn_slope = sign * s.moment_slope * s.compliance;
+            let turn_slope = sign * s.curvature_slope;
             let (wire, wire_slope) = match spring.wire {
                 Wire::Round { diameter } => {
                     let wire = (diameter.powi(2) - (s.slide * pitch).powi(2))

@@ -19,8 +19,14 @@ pub(super) struct Critical {
     pub straightens_again: Option<Metre>,
 }
 
-/// Share of a deflection below which refining it is round-off.
-pub(super) const FLOOR: f64 = 1e-11;
+/// Share of a deflection, and of the free length, below which refining it is round-off.
+const FLOOR_OF_DEFLECTION: f64 = 1e-11;
+const FLOOR_OF_LENGTH: f64 = 1e-12;
+
+/// What refining a deflection leaves as round-off, m.
+pub(super) fn floor(setup: &Setup, deflection: Metre) -> Metre {
+    FLOOR_OF_DEFLECTION * deflection + FLOOR_OF_LENGTH * setup.spring.free_length
+}
 
 /// What the machine travels more than the spring shortens, per newton: its seats' axial compliance.
 pub(super) fn seat_compliance(setup: &Setup) -> f64 {
@@ -52,7 +58,7 @@ fn critical(setup: &Setup, idealisation: Idealisation) -> Option<Critical> {
     Some(Critical {
         deflection,
         force,
-        error: difference + bracket + FLOOR * deflection,
+        error: difference + bracket + floor(setup, deflection),
         straightens_again,
     })
 }

@@ -22,7 +22,7 @@ impl Imperfect {
             .iter()
             .find(|limit| own.contains(&limit.name) && limit.deflection_m.is_some());
         let working = self
-            .event(EventKind::LargestWorking)
+            .event(setup, EventKind::LargestWorking)
             .map(|(event, _)| event);
         let coarse_bow = self
             .coarse

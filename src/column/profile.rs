@@ -26,8 +26,8 @@ pub struct Station {
     pub moment: f64,
     /// Curvature θ' now, the stress-free one included.
     pub curvature: f64,
-    /// 1/EI.
-    pub compliance: f64,
+    /// Its derivative dθ'/dS, for a stiffness that changes little.
+    pub curvature_slope: f64,
     /// Axial strain ε.
     pub stretch: f64,
     /// Shear strain γ.
@@ -86,6 +86,7 @@ impl Column {
                 let angle = angle_at(t);
                 let (axial_force, shear_force, stretch, slide, slopes) = strains(angle, t);
                 let moment = seat_moment - ((x - seat[0]) * fy - (y - seat[1]) * fx);
+                let moment_slope = -(slopes.0 * fy - slopes.1 * fx);
                 let law = element.law_at(t);
                 out.push(Station {
                     place: start + 0.5 * (1.0 + t) * element.length,
@@ -96,12 +97,13 @@ impl Column {
                     shear_force,
                     moment,
                     curvature: moment / law.bending + law.natural_curvature,
-                    compliance: 1.0 / law.bending,
+                    curvature_slope: moment_slope / law.bending
+                        + element.natural_curvature_slope(t),
                     stretch,
                     slide,
                     x_slope: slopes.0,
                     y_slope: slopes.1,
-                    moment_slope: -(slopes.0 * fy - slopes.1 * fx),
+                    moment_slope,
                 });
                 if k + 1 < STATIONS + 1 {
                     for (at, weight) in GAUSS_AT.iter().zip(GAUSS_WEIGHT) {
@@ -140,6 +142,26 @@ impl Element {
             law.natural_curvature += share * point.natural_curvature;
         }
         law
+    }
+
+    /// Derivative of the stress-free curvature along the axis at `t`, of the same cubic.
+    fn natural_curvature_slope(&self, t: f64) -> f64 {
+        let mut slope = 0.0;
+        for (i, point) in self.points.iter().enumerate() {
+            for left_out in 0..GAUSS_AT.len() {
+                if left_out == i {
+                    continue;
+                }
+                let mut share = 1.0 / (GAUSS_AT[i] - GAUSS_AT[left_out]);
+                for (j, at) in GAUSS_AT.iter().enumerate() {
+                    if j != i && j != left_out {
+                        share *= (t - at) / (GAUSS_AT[i] - at);
+                    }
+                }
+                slope += share * point.natural_curvature;
+            }
+        }
+        slope * 2.0 / self.length
     }
 }
 
