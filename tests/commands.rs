@@ -248,3 +248,27 @@ fn a_closed_pipe_is_no_trouble() {
         assert_eq!(text(&output.stderr), "", "{arguments:?}");
     }
 }
+
+/// README shows what its first command prints; lines with an error estimate may differ in its last
+/// digit from one processor to the next.
+#[test]
+fn readme_shows_the_real_answer() {
+    let root = Path::new(env!("CARGO_MANIFEST_DIR"));
+    let readme = fs::read_to_string(root.join("README.md")).unwrap();
+    let shown = readme.split("```text\n").nth(1).unwrap();
+    let shown = shown.split("```").next().unwrap();
+    let output = Command::cargo_bin("coilstay")
+        .unwrap()
+        .current_dir(root)
+        .args(["assess", "cases/rail-clamp.toml"])
+        .output()
+        .unwrap();
+    let printed = String::from_utf8(output.stdout).unwrap();
+    let plain = |text: &str| -> Vec<String> {
+        let lines = text.lines().filter(|line| !line.contains("e-"));
+        lines.map(|line| line.trim_end().to_owned()).collect()
+    };
+    let (shown, printed) = (plain(shown), plain(&printed));
+    assert!(shown.len() > 30);
+    assert_eq!(shown, printed[..shown.len()]);
+}
