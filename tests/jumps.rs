@@ -96,3 +96,50 @@ fn a_snap_frees_the_loop_of_the_path() {
         assert!(snap.force_after_n.expect("rests") < snap.force_before_n);
     }
 }
+
+/// Between soft seats a snap can end solid at less shortening than any travel passed: solid then
+/// counts as reached where the snap starts, with all that lies in it, and does not govern.
+#[test]
+fn solid_in_a_snap_is_reached_where_it_starts() {
+    let text = r#"
+        [spring]
+        wire = "2 mm"
+        mean_diameter = "12 mm"
+        free_length = "33 mm"
+        active_coils = 5
+        total_coils = 7
+        [material]
+        name = "patented-carbon-steel"
+        [bottom]
+        kind = "elastic"
+        rotational_stiffness = "600 N m/rad"
+        sideways_stiffness = "12 N/mm"
+        arm = "-2 mm"
+        tilt = "2 deg"
+        [top]
+        kind = "elastic"
+        rotational_stiffness = "0.25 N m/rad"
+        sideways_stiffness = "300 N/mm"
+        axial_stiffness = "5 N/mm"
+        [imperfections]
+        parallelism = "0.6 mm"
+        [duty]
+        working_deflection = "50 mm"
+    "#;
+    let case = coilstay::case::parse("soft.toml", text).expect("reads");
+    let answer = assess(&case.setup, "");
+    let snap = answer.snap.as_ref().expect("snaps");
+    assert!(snap.rests_solid);
+    let solid = answer
+        .limits
+        .iter()
+        .find(|limit| limit.name.key() == "solid")
+        .expect("listed");
+    assert_eq!(solid.deflection_m, Some(snap.lost_at_deflection_m));
+    // Solid, the seat takes up the rest of the travel.
+    let rest = snap.lost_at_deflection_m - case.setup.spring.solid_deflection();
+    let force = snap.force_after_n.expect("rests");
+    assert!((force / (5000.0 * rest) - 1.0).abs() < 1e-9);
+    assert!(force < snap.force_before_n);
+    assert!(snap.energy_freed_j.expect("frees") > 0.0);
+}

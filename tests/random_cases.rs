@@ -164,3 +164,41 @@ proptest! {
         }
     }
 }
+
+/// A way for the deviations to lie whose path is lost far beyond what is asked must not hide a worse
+/// one: where lean and wedge just cancel at one end, the answer is that of a hair beside it.
+#[test]
+fn a_path_lost_far_out_hides_no_worse_one() {
+    let margin = |parallelism: f64| {
+        let text = format!(
+            r#"
+            [spring]
+            wire = "8 mm"
+            mean_diameter = "62 mm"
+            free_length = "620 mm"
+            active_coils = 20
+            total_coils = 22
+            [material]
+            name = "patented-carbon-steel"
+            [bottom]
+            kind = "clamped"
+            [top]
+            kind = "elastic"
+            rotational_stiffness = "rigid"
+            sideways_stiffness = "1.5 N/mm"
+            [imperfections]
+            squareness = "10 mm"
+            parallelism = "{parallelism} mm"
+            [duty]
+            working_deflection = "50 mm"
+            "#
+        );
+        let case = coilstay::case::parse("lean.toml", &text).expect("reads");
+        let answer = assess(&case.setup, "");
+        let governing = answer.limits.iter().find(|limit| limit.governs);
+        governing.and_then(|limit| limit.margin).expect("governed")
+    };
+    let cancelling = 2.0 * 10.0 * 70.0 / 620.0;
+    let (at, beside) = (margin(cancelling), margin(cancelling - 1e-4));
+    assert!((at - beside).abs() < 1e-4, "{at} {beside}");
+}

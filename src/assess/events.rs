@@ -39,6 +39,16 @@ pub(super) enum EventKind {
     LargestWorking,
 }
 
+impl Event {
+    /// Whether its state is stable under that kind of loading.
+    pub fn is_stable(&self, loading: Loading) -> bool {
+        match loading {
+            Loading::Force => self.point.unstable_dead_load == 0,
+            Loading::Deflection => self.point.unstable_set_deflection == 0,
+        }
+    }
+}
+
 /// A path to look for events on.
 pub(super) struct Track<'a> {
     pub setup: &'a Setup,
@@ -186,7 +196,9 @@ fn account_for_jump(loading: Loading, events: &mut [Event]) {
     let Some(lost) = find(EventKind::Limit(lost)) else {
         return;
     };
-    let end = find(regained).map_or(f64::INFINITY, |event| event.place);
+    let end = find(regained)
+        .filter(|event| event.is_stable(loading))
+        .map_or(f64::INFINITY, |event| event.place);
     for event in events {
         let limit = matches!(event.kind, EventKind::Limit(_)) && event.kind != lost.kind;
         if limit && event.place >= lost.place && event.place < end {

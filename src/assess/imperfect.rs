@@ -25,7 +25,8 @@ pub(super) struct Imperfect {
     pub left_its_path: bool,
 }
 
-/// Follows the path for every orientation on the coarser mesh, and for the worst on the finer.
+/// Follows the path for every orientation on the coarser mesh, which decides between them, and for
+/// the worst on the finer.
 pub(super) fn run(setup: &Setup) -> Imperfect {
     let [coarse_mesh, fine_mesh] = MESHES;
     let perfect = |elements: usize| {
@@ -43,28 +44,22 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
             Reach::FARTHER,
         )
     };
-    let mut orientation = orientations
-        .first()
-        .copied()
-        .unwrap_or(Orientation::plain());
-    let mut coarse = on_coarse(orientation);
-    for other in orientations.iter().skip(1) {
-        let run = on_coarse(*other);
-        if is_worse(&run, &coarse, setup) {
-            (coarse, orientation) = (run, *other);
+    let mut worst: Option<(Run, Orientation)> = None;
+    for orientation in &orientations {
+        let run = on_coarse(*orientation);
+        let branches = !run.corners.is_empty();
+        keep_worse(&mut worst, run, *orientation, setup);
+        if branches {
+            // Between seats that are not true the two sides of a branch need not be mirror images.
+            let other = Orientation {
+                branch: -1.0,
+                ..*orientation
+            };
+            keep_worse(&mut worst, on_coarse(other), other, setup);
         }
     }
-    if !coarse.corners.is_empty() {
-        // Between seats that are not true the two sides of a branch need not be mirror images.
-        let other = Orientation {
-            branch: -1.0,
-            ..orientation
-        };
-        let run = on_coarse(other);
-        if is_worse(&run, &coarse, setup) {
-            (coarse, orientation) = (run, other);
-        }
-    }
+    let plain = Orientation::plain();
+    let (coarse, orientation) = worst.unwrap_or_else(|| (on_coarse(plain), plain));
     let buckling = perfect(fine_mesh);
     let fine = Run::new(
         setup,
@@ -73,7 +68,7 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
         buckling.as_ref(),
         Reach::SOLID,
     );
-    let needed = farthest_needed(setup);
+    let needed = setup.duty.farthest_needed();
     let mut failures: Vec<Failure> = Vec::new();
     for run in [&fine, &coarse] {
         if let PathEnd::Lost(failure) = &run.end {
@@ -93,12 +88,27 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
     }
 }
 
+/// Keeps the worse of two runs.
+fn keep_worse(
+    worst: &mut Option<(Run, Orientation)>,
+    run: Run,
+    orientation: Orientation,
+    setup: &Setup,
+) {
+    if worst
+        .as_ref()
+        .is_none_or(|(other, _)| is_worse(&run, other, setup))
+    {
+        *worst = Some((run, orientation));
+    }
+}
+
 /// Whether one run is worse than another by more than round-off.
 fn is_worse(one: &Run, other: &Run, setup: &Setup) -> bool {
-    let ((lost, nearness), (other_lost, other_nearness)) =
+    let ((grade, nearness), (other_grade, other_nearness)) =
         (one.severity(setup), other.severity(setup));
-    if lost != other_lost {
-        return lost;
+    if grade != other_grade {
+        return grade > other_grade;
     }
     let different = |(mine, its): &(&f64, &f64)| {
         (*mine - *its).abs() > SAME_SEVERITY * mine.abs().max(its.abs())
@@ -107,15 +117,6 @@ fn is_worse(one: &Run, other: &Run, setup: &Setup) -> bool {
         Some((mine, its)) => mine > its,
         None => nearness.len() > other_nearness.len(),
     }
-}
-
-/// The largest deflection that any limit of this duty must reach, m, as the duty counts it.
-fn farthest_needed(setup: &Setup) -> f64 {
-    LimitKind::ALL
-        .iter()
-        .filter(|kind| setup.duty.has(**kind))
-        .map(|kind| setup.duty.needed(*kind))
-        .fold(0.0, f64::max)
 }
 
 impl Imperfect {
@@ -136,13 +137,8 @@ impl Imperfect {
 
     /// Whether the path is known, on both meshes, as far as the limits of this duty need it.
     pub fn is_known_far_enough(&self, setup: &Setup) -> bool {
-        let duty = &setup.duty;
-        let known = |run: &Run| {
-            run.end == PathEnd::Solid
-                || run.farthest(|seen| duty.reached(seen.point.deflection_m, seen.point.force_n))
-                    >= farthest_needed(setup)
-        };
-        !self.left_its_path && known(&self.fine) && known(&self.coarse)
+        let both = [&self.fine, &self.coarse];
+        !self.left_its_path && both.iter().all(|run| run.is_known_far_enough(setup))
     }
 
     /// Largest travel of the path, m, where it ends short of solid: bowed far over, or lost.

@@ -18,7 +18,7 @@ pub(super) fn dead_load(setup: &Setup, imperfect: &Imperfect) -> Option<DeadLoad
     let solid = run.event(EventKind::Limit(LimitKind::Solid));
     let regained = run
         .event(EventKind::ForceRegained)
-        .filter(|event| event.point.unstable_dead_load == 0)
+        .filter(|event| event.is_stable(Loading::Force))
         .filter(|event| solid.is_none_or(|solid| event.place < solid.place));
     let rest = regained.or(solid);
     let jump = lost.zip(rest);
@@ -49,19 +49,31 @@ pub(super) fn snap(setup: &Setup, imperfect: &Imperfect) -> Option<Snap> {
     }
     let run = &imperfect.fine;
     let lost = run.event(EventKind::Limit(LimitKind::TravelLost))?;
-    let rest = run
+    let solid = run.event(EventKind::Limit(LimitKind::Solid));
+    let regained = run
         .event(EventKind::TravelRegained)
-        .filter(|event| event.point.unstable_set_deflection == 0);
-    let stored = |event: &Event| {
-        event.strain_energy + 0.5 * event.point.force_n.powi(2) * seat_compliance(setup)
+        .filter(|event| event.is_stable(Loading::Deflection))
+        .filter(|event| solid.is_none_or(|solid| event.place < solid.place));
+    let rest = regained.or(solid);
+    let seats = seat_compliance(setup);
+    // Solid, the spring shortens no more: the soft seats take up what is left of the travel.
+    let force_after = |rest: &Event| {
+        if regained.is_some() {
+            rest.point.force_n
+        } else {
+            (lost.point.deflection_m - rest.point.shortening_m) / seats
+        }
     };
+    let stored = |event: &Event, force: f64| event.strain_energy + 0.5 * force.powi(2) * seats;
     Some(Snap {
         lost_at_deflection_m: lost.point.deflection_m,
         force_before_n: lost.point.force_n,
-        force_after_n: rest.map(|rest| rest.point.force_n),
+        force_after_n: rest.map(force_after),
+        rests_solid: rest.is_some() && regained.is_none(),
         bow_before_m: lost.point.bow_m,
         bow_after_m: rest.map(|rest| rest.point.bow_m),
-        energy_freed_j: rest.map(|rest| stored(lost) - stored(rest)),
+        energy_freed_j: rest
+            .map(|rest| stored(lost, lost.point.force_n) - stored(rest, force_after(rest))),
         clash_on_the_way: rest.is_some_and(|rest| clashes_before(imperfect, rest)),
     })
 }

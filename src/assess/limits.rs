@@ -4,7 +4,7 @@ use super::events::EventKind;
 use super::imperfect::Imperfect;
 use super::straight::{Critical, is_beyond_solid, seat_compliance, share_of_free_length};
 use crate::result::{Limit, StressAtSolid};
-use crate::setup::{LimitKind, Loading, Setup};
+use crate::setup::{LimitKind, Setup};
 use crate::spring::{compressed_radius, torsion_stress};
 
 /// Below this share of the solid deflection, a clash differs from solid by round-off only.
@@ -80,30 +80,33 @@ fn critical_limit(setup: &Setup, critical: Option<&Critical>) -> Limit {
 }
 
 /// Solid by the spring's geometry; the force is the path's where it gets there, else the rate's.
+/// Nothing stops a spring between the loss of its load or travel and solid: in that jump, solid
+/// counts as reached where the jump starts.
 fn solid_limit(setup: &Setup, imperfect: &Imperfect) -> Limit {
     let shortening = setup.spring.solid_deflection();
-    let on_path = imperfect.fine.event(EventKind::Limit(LimitKind::Solid));
-    let (force, whose) = match on_path {
-        // Under a dead load nothing stops the spring between the loss and solid.
-        Some(event) if event.in_jump && setup.duty.loading == Loading::Force => {
-            (event.reached.1, "reached in the jump of the lost load")
+    let reached_with = |force: f64| shortening + force * seat_compliance(setup);
+    let by_rate = setup.spring.rate() * shortening;
+    let (reached, whose) = match imperfect.event(setup, EventKind::Limit(LimitKind::Solid)) {
+        Some((event, error)) if event.in_jump => (
+            (event.reached.0, event.reached.1, Some(error)),
+            "reached in the jump that starts here",
+        ),
+        Some((event, _)) => {
+            let force = event.point.force_n;
+            (
+                (reached_with(force), force, None),
+                "force of the imperfect column",
+            )
         }
-        Some(event) => (event.point.force_n, "force of the imperfect column"),
         None => (
-            setup.spring.rate() * shortening,
+            (reached_with(by_rate), by_rate, None),
             "force of the straight spring",
         ),
     };
-    let deflection = shortening + force * seat_compliance(setup);
     let note = format!("{}; {whose}", setup.spring.solid_rule);
     Limit {
         beyond_solid: false,
-        ..limit(
-            setup,
-            LimitKind::Solid,
-            Some((deflection, force, None)),
-            note,
-        )
+        ..limit(setup, LimitKind::Solid, Some(reached), note)
     }
 }
 

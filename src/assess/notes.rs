@@ -55,6 +55,13 @@ pub(super) fn notes(setup: &Setup, imperfect: &Imperfect) -> Vec<String> {
 /// The path of a spring whose deviations leave its buckling mode alone is too good to be true.
 fn no_imperfection_acts(setup: &Setup, imperfect: &Imperfect) -> Option<String> {
     let diameter = setup.spring.mean_diameter;
+    if imperfect.fine.seen.len() < 2 {
+        return Some(
+            "The path ends where it starts: a section is turned further, unloaded, than any path \
+             is followed."
+                .to_owned(),
+        );
+    }
     let straight = imperfect.fine.farthest(|seen| seen.point.bow_m) < 1e-9 * diameter;
     if imperfect.meets_a_branch() {
         Some(

@@ -13,6 +13,17 @@ use crate::solve::{Newton, System, start};
 /// bow-out, but not by less than this (EI/L²): on very soft seats the path goes on far beyond it.
 const SMALLEST_LOAD_SCALE: f64 = 1.0;
 
+/// What a path says of its limits, the worst last.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub(super) enum Grade {
+    /// All are met.
+    Met,
+    /// None is missed as far as the path is known, which is not far enough.
+    Unknown,
+    /// One is missed.
+    Missed,
+}
+
 /// A path on one mesh.
 pub(super) struct Run {
     pub seen: Vec<Seen>,
@@ -109,10 +120,10 @@ impl Run {
         run
     }
 
-    /// How bad the path is, to be compared: first whether it was lost; then, for its limits from
-    /// the nearest on, what is needed of each over what it reaches; last the bow at the working
-    /// deflection.
-    pub fn severity(&self, setup: &Setup) -> (bool, Vec<f64>) {
+    /// How bad the path is, to be compared: whether a limit is missed, or the path is lost before
+    /// it is known that none is; then, for the limits from the nearest on, what is needed of each
+    /// over what it reaches; last the bow at the working deflection.
+    pub fn severity(&self, setup: &Setup) -> (Grade, Vec<f64>) {
         let duty = &setup.duty;
         let mut nearness: Vec<f64> = self
             .events
@@ -125,11 +136,26 @@ impl Run {
             })
             .collect();
         nearness.sort_by(|a, b| b.total_cmp(a));
+        let grade = if nearness.first().is_some_and(|nearest| *nearest > 1.0) {
+            Grade::Missed
+        } else if self.is_known_far_enough(setup) {
+            Grade::Met
+        } else {
+            Grade::Unknown
+        };
         nearness.push(
             self.event(EventKind::LargestWorking)
                 .map_or(0.0, |event| event.point.bow_m / duty.bow_limit),
         );
-        (matches!(self.end, PathEnd::Lost(_)), nearness)
+        (grade, nearness)
+    }
+
+    /// Whether the path goes as far as the limits of this duty need it to be known.
+    pub fn is_known_far_enough(&self, setup: &Setup) -> bool {
+        let duty = &setup.duty;
+        self.end == PathEnd::Solid
+            || self.farthest(|seen| duty.reached(seen.point.deflection_m, seen.point.force_n))
+                >= duty.farthest_needed()
     }
 
     /// The event of that kind.

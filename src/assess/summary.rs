@@ -57,6 +57,9 @@ impl Imperfect {
             .seen
             .iter()
             .any(|seen| seen.point.bow_m > 1e-6 * setup.spring.mean_diameter);
+        if self.fine.seen.len() < 2 {
+            return "one point: it ends where it starts".into();
+        }
         match (self.fine.corners.len(), bent) {
             (0, false) => "straight all the way: no imperfection acts and no branch leaves".into(),
             (0, true) => {

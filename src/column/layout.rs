@@ -263,14 +263,6 @@ impl Column {
         state
     }
 
-    /// Length of the unloaded straight column with its rigid pieces, in units of its length.
-    pub fn straight_length(&self) -> f64 {
-        self.elements
-            .iter()
-            .map(|e| e.length + e.from_a.along + e.to_b.along)
-            .sum()
-    }
-
     /// Strain energy of column and end springs, in units of force × length.
     pub fn strain_energy(&self, state: &ColumnState) -> f64 {
         let column: f64 = self

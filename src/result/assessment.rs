@@ -219,6 +219,8 @@ pub struct Snap {
     pub force_before_n: Newton,
     /// Force in the next stable state at the same travel, N; `null`: none on the path.
     pub force_after_n: Option<Newton>,
+    /// Whether that state is solid, for want of a stable one before.
+    pub rests_solid: bool,
     /// Bow just before, m.
     pub bow_before_m: Metre,
     /// Bow in that state, m.

@@ -136,6 +136,15 @@ impl Duty {
         (working * (1.0 + self.margins.of(limit))).max(working + self.overtravel)
     }
 
+    /// The largest deflection that any limit of this duty must reach, m.
+    pub fn farthest_needed(&self) -> Metre {
+        LimitKind::ALL
+            .iter()
+            .filter(|kind| self.has(**kind))
+            .map(|kind| self.needed(*kind))
+            .fold(0.0, f64::max)
+    }
+
     /// What a state counts for against the working deflection, m. Where a machine sets the
     /// deflection: that deflection. Under a dead load: the deflection that its force would give the
     /// straight spring, so that ratios are ratios of forces; a bowed spring is shorter than that.

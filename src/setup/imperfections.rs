@@ -87,14 +87,6 @@ impl Imperfections {
         }
     }
 
-    /// Whether nothing deviates.
-    pub fn is_perfect(&self) -> bool {
-        self.squareness == 0.0
-            && self.parallelism == 0.0
-            && self.bow == 0.0
-            && self.eccentricity == 0.0
-    }
-
     /// Every way in which the deviations can lie to one another between these seats; the mirror
     /// image of one already listed is left out where the seats are true. 16 at most, or 32 between
     /// seats that are not.

@@ -2,7 +2,7 @@
 
 use super::{BASE, read, with};
 use approx::assert_relative_eq;
-use coilstay::setup::{LimitKind, Loading, Restraint, Setup};
+use coilstay::setup::{Imperfections, LimitKind, Loading, Restraint, Setup};
 use coilstay::spring::{EndType, Wire};
 use proptest::prelude::*;
 
@@ -89,7 +89,7 @@ fn imperfections_left_out_are_assumed() {
     );
     assert!(setup.warnings.iter().any(|w| w.contains("EN 15800")));
     let perfect = read(&with("squareness = \"4 mm\"\n", "")).setup;
-    assert!(perfect.imperfections.is_perfect());
+    assert_eq!(perfect.imperfections, Imperfections::none());
 }
 
 #[test]

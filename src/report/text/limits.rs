@@ -112,7 +112,7 @@ fn is_reached(limit: &Limit) -> bool {
 /// the deflection of that.
 fn is_in_jump(limits: &[Limit], limit: &Limit) -> bool {
     let is_loss = |limit: &Limit| limit.name.is_loss();
-    is_of_path(limit)
+    limit.name != LimitKind::Critical
         && !is_loss(limit)
         && is_reached(limit)
         && limits

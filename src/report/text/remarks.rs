@@ -60,8 +60,13 @@ pub fn snap(assessment: &Assessment, units: Units) -> String {
     );
     match (snap.force_after_n, snap.bow_after_m, snap.energy_freed_j) {
         (Some(force), Some(bow), Some(energy)) => {
+            let solid = if snap.rests_solid {
+                ", where it is solid"
+            } else {
+                ""
+            };
             text += &format!(
-                " to {}, the bow grows from {} to {}, and {} is freed.",
+                " to {}, the bow grows from {} to {}{solid}, and {} is freed.",
                 units.show_force(force),
                 units.show_length(snap.bow_before_m),
                 units.show_length(bow),
