@@ -1,8 +1,8 @@
 //! What people write for a number that is none: fractions, and characters that only look right.
 
+use super::fault::Fault;
 use super::field::Field;
 use super::nearest::excerpt;
-use super::quantity::Fault;
 
 /// "1/2 in" and "1 1/2 in" with a decimal number: "0.5 in", "1.5 in".
 pub(super) fn decimal_of_fraction(text: &str) -> Option<String> {

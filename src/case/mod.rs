@@ -8,6 +8,7 @@
 
 mod diagnostics;
 mod duty;
+mod fault;
 mod field;
 mod file;
 mod filled;

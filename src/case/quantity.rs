@@ -1,20 +1,10 @@
 //! Text becomes a number: "62 mm", "12 N/mm", "5 %".
 
+use super::fault::Fault;
 use super::field::{Field, Range};
 use super::look_alike::{decimal_of_fraction, foreign_character};
 use super::nearest::{excerpt, nearest};
 use crate::units::{Dimension, Unit, UnitError, symbols};
-
-/// Why a text is not the quantity wanted.
-#[derive(Clone, Debug, PartialEq)]
-pub(super) struct Fault {
-    /// What is wrong.
-    pub message: String,
-    /// Said under the underlined text.
-    pub label: String,
-    /// What to do about it.
-    pub cure: String,
-}
 
 /// The quantity written in `text`, in SI (°C for a temperature), for `field`.
 pub(super) fn quantity(

@@ -2,10 +2,10 @@
 //! or named as unknown.
 
 use super::diagnostics::{Mistake, Place};
+use super::fault::Fault;
 use super::field::{Absent, Field, Form, Kind};
 use super::filled::{Answer, Content, Filled, Log, dotted};
 use super::nearest::{excerpt, nearest};
-use super::quantity::Fault;
 use super::value;
 use toml::de::{DeTable, DeValue};
 

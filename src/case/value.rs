@@ -1,9 +1,10 @@
 //! One value of the file becomes the content of its field, or a fault.
 
+use super::fault::Fault;
 use super::field::{Field, Kind, Range};
 use super::filled::{Content, dotted};
 use super::nearest::{excerpt, nearest};
-use super::quantity::{Fault, checked, quantity};
+use super::quantity::{checked, quantity};
 use crate::units::Dimension;
 use toml::de::DeValue;
 

@@ -1,8 +1,9 @@
 //! The whole figure: heading, numbers in a row, two panels over one axis, key.
 
+use super::ink::{BLACK, BLUE, GREY, VERMILION, tenths};
 use super::key::{self, Entry};
 use super::marks::{Marked, Shape, marked};
-use super::panel::{BLACK, BLUE, Curve, Dash, GREY, Panel, Sheet, VERMILION, tenths};
+use super::panel::{Curve, Dash, Panel, Sheet};
 use super::parts::parted;
 use super::scale::{Axis, apart};
 use super::{PlotError, drawing_error, symbols};

@@ -1,7 +1,8 @@
 //! The key: lines, then the numbered marks with their values.
 
+use super::ink::{BLACK, BLUE, VERMILION, tenths};
 use super::marks::Shape;
-use super::panel::{BLACK, BLUE, Dash, Sheet, VERMILION, stroke, tenths};
+use super::panel::{Dash, Sheet, stroke};
 use super::{PlotError, symbols};
 
 const LINES: f64 = 24.0;

@@ -3,6 +3,7 @@
 //! shape.
 
 mod figure;
+mod ink;
 mod key;
 mod marks;
 mod panel;

@@ -1,8 +1,8 @@
 //! One panel: axes with round numbers, grid, curves.
 
-use super::paper::{PER_PIXEL, Paper};
+use super::ink::{BLACK, font, tenths};
+use super::paper::Paper;
 use super::scale::{Axis, clipped};
-use super::symbols::font;
 use super::{PlotError, drawing_error};
 use crate::report::numbers::fixed;
 use plotters::chart::{ChartBuilder, ChartContext, LabelAreaPosition};
@@ -16,20 +16,7 @@ use std::ops::Range;
 /// The sheet everything is drawn on.
 pub type Sheet<'a> = DrawingArea<Paper<'a>, Shift>;
 
-/// Blue and vermilion: told apart by the colour-blind and, by lightness, in grey.
-pub const BLUE: RGBColor = RGBColor(0, 84, 147);
-/// See [`BLUE`].
-pub const VERMILION: RGBColor = RGBColor(213, 94, 0);
-/// Text, axes, outlines.
-pub const BLACK: RGBColor = RGBColor(20, 20, 20);
-/// Guides.
-pub const GREY: RGBColor = RGBColor(150, 150, 150);
 const GRID: RGBColor = RGBColor(228, 228, 228);
-
-/// Pixels in the units of the paper.
-pub fn tenths(pixels: f64) -> i32 {
-    (pixels * PER_PIXEL).round() as i32
-}
 
 /// How a line is broken.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]

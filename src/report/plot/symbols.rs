@@ -1,28 +1,13 @@
 //! Markers, numbers and text on the sheet.
 
+use super::ink::{BLACK, VERMILION, font, styled, tenths};
 use super::marks::Shape;
-use super::panel::{BLACK, Sheet, VERMILION, tenths};
-use super::paper::FONTS;
+use super::panel::Sheet;
 use super::{PlotError, drawing_error};
 use plotters::element::{Circle, PathElement, Polygon, Text as PlainText};
 use plotters::style::text_anchor::{HPos, Pos, VPos};
-use plotters::style::{
-    Color, FontDesc, FontFamily, FontStyle, RGBColor, ShapeStyle, TextStyle, WHITE,
-};
+use plotters::style::{Color, FontStyle, RGBColor, ShapeStyle, TextStyle, WHITE};
 use std::f64::consts::PI;
-
-/// Upright font of `size` pixels.
-pub fn font(size: f64) -> TextStyle<'static> {
-    styled(size, FontStyle::Normal, BLACK)
-}
-
-fn styled(size: f64, style: FontStyle, color: RGBColor) -> TextStyle<'static> {
-    TextStyle {
-        font: FontDesc::new(FontFamily::Name(FONTS), f64::from(tenths(size)), style),
-        color: color.to_backend_color(),
-        pos: Pos::default(),
-    }
-}
 
 /// Writes text on a sheet.
 pub struct Text<'a, 'p> {
