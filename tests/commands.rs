@@ -272,3 +272,22 @@ fn readme_shows_the_real_answer() {
     assert!(shown.len() > 30);
     assert_eq!(shown, printed[..shown.len()]);
 }
+
+/// A path that ends where it starts decides nothing: exit code 2, with the reason.
+#[test]
+fn a_path_that_goes_nowhere_is_undecided() {
+    let directory = place();
+    let text = "[spring]\nwire = \"8 mm\"\nmean_diameter = \"62 mm\"\nfree_length = \"80 mm\"\n\
+                active_coils = 4\ntotal_coils = 6\n[material]\nname = \"oil-tempered-steel\"\n\
+                [bottom]\nkind = \"clamped\"\ntilt = \"88 deg\"\n[top]\nkind = \"free\"\n\
+                [duty]\nworking_deflection = \"15 mm\"\nrate_loss_share = 0.9\n";
+    fs::write(directory.path().join("tilted.toml"), text).unwrap();
+    let output = coilstay(
+        &["assess", "tilted.toml", "--format", "json"],
+        directory.path(),
+    );
+    assert_eq!(code(&output), 2);
+    let answer = json(&output);
+    assert_eq!(answer["verdict"], "undecided");
+    assert!(answer["undecided_reason"].is_string());
+}

@@ -45,6 +45,7 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
         verdict: decided.verdict,
         governing: decided.governing,
         sentence: decided.sentence,
+        undecided_reason: decided.undecided_reason.map(str::to_owned),
         spring: echo::spring(setup),
         supports: echo::supports(setup),
         imperfections: echo::imperfections(setup),

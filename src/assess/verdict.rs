@@ -8,11 +8,17 @@ pub(super) struct Decided {
     pub verdict: Verdict,
     pub governing: Option<LimitKind>,
     pub sentence: String,
+    /// Why it could not be decided.
+    pub undecided_reason: Option<&'static str>,
     pub limits: Vec<Limit>,
 }
 
 /// Relative difference that is round-off of the inputs, not a missing margin.
 const ROUND_OFF: f64 = 1e-9;
+
+const PATH_TOO_SHORT: &str =
+    "the load path of the imperfect column could not be followed as far as required";
+const TOO_NEAR: &str = "a limit lies as near to what is required of it as its error estimate";
 
 /// Decides from the limits; marks the governing one: that with the least deflection over the
 /// deflection needed of it.
@@ -34,6 +40,7 @@ pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> 
             verdict: Verdict::Undecided,
             governing: None,
             sentence: "Could not be decided: no limit was found.".into(),
+            undecided_reason: Some("no limit was found"),
             limits,
         };
     };
@@ -56,24 +63,33 @@ pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> 
         .filter_map(|limit| Some((missed(limit)?, limit.error_m?)))
         .any(|((by, _), error)| by.abs() <= error);
     let unknown = !imperfect.is_known_far_enough(setup);
-    let verdict = if clearly_fails {
-        Verdict::DoesNotHold
-    } else if unknown || unsure {
-        Verdict::Undecided
+    let (verdict, undecided_reason) = if clearly_fails {
+        (Verdict::DoesNotHold, None)
+    } else if unknown {
+        (Verdict::Undecided, Some(PATH_TOO_SHORT))
+    } else if unsure {
+        (Verdict::Undecided, Some(TOO_NEAR))
     } else {
-        Verdict::Holds
+        (Verdict::Holds, None)
     };
     let limit = &limits[index];
-    let sentence = sentence(setup, verdict, limit, reserve, unknown);
+    let sentence = sentence(setup, verdict, limit, reserve, undecided_reason);
     Decided {
         verdict,
         governing: Some(limit.name),
         sentence,
+        undecided_reason,
         limits,
     }
 }
 
-fn sentence(setup: &Setup, verdict: Verdict, limit: &Limit, reserve: f64, unknown: bool) -> String {
+fn sentence(
+    setup: &Setup,
+    verdict: Verdict,
+    limit: &Limit,
+    reserve: f64,
+    reason: Option<&str>,
+) -> String {
     let duty = &setup.duty;
     let title = limit.name.title();
     let needed = duty.needed(limit.name) / duty.largest_working_deflection();
@@ -85,18 +101,13 @@ fn sentence(setup: &Setup, verdict: Verdict, limit: &Limit, reserve: f64, unknow
         "it is reached at {:.3} times {working}, {needed:.3} times is required",
         reserve * needed
     );
-    match verdict {
-        Verdict::Holds => format!("Holds. The governing limit is \"{title}\": {against}."),
-        Verdict::DoesNotHold => {
-            format!("Does not hold. The governing limit is \"{title}\": {against}.")
-        }
-        Verdict::Undecided if unknown => format!(
-            "Could not be decided: the load path of the imperfect column could not be followed as \
-             far as required. The nearest limit found is \"{title}\": {against}."
-        ),
-        Verdict::Undecided => format!(
-            "Could not be decided: a limit lies as near to what is required of it as its error \
-             estimate. The governing limit is \"{title}\": {against}."
+    let limit = format!("The governing limit is \"{title}\": {against}.");
+    match (verdict, reason) {
+        (Verdict::Holds, _) => format!("Holds. {limit}"),
+        (Verdict::DoesNotHold, _) => format!("Does not hold. {limit}"),
+        (Verdict::Undecided, reason) => format!(
+            "Could not be decided: {}. As far as computed: {limit}",
+            reason.unwrap_or("no reason known")
         ),
     }
 }

@@ -284,6 +284,8 @@ pub struct Assessment {
     pub governing: Option<LimitKind>,
     /// The answer in one or two sentences, to be read aloud.
     pub sentence: String,
+    /// Why it could not be decided; `null` where it was.
+    pub undecided_reason: Option<String>,
     /// The spring as resolved.
     pub spring: SpringEcho,
     /// The supports as resolved.

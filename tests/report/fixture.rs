@@ -273,6 +273,7 @@ pub fn assessment(shape: Shape) -> Assessment {
         },
         governing,
         sentence: "An invented answer.".into(),
+        undecided_reason: None,
         spring: spring(),
         supports: SupportsEcho {
             bottom: support("clamped"),

@@ -194,6 +194,7 @@ fn never_and_none_before_solid_are_said_in_words() {
 fn what_failed_is_not_called_never() {
     let mut failed = assessment(Shape::Rising);
     failed.verdict = Verdict::Undecided;
+    failed.undecided_reason = Some("an invented reason".into());
     failed.straight_column.critical = None;
     failed.imperfect_column = None;
     failed.failures.push(Failure {

@@ -111,7 +111,9 @@ pub fn answer(assessment: &Assessment, units: Units) -> String {
     let mut text = format!("{word} ");
     match (assessment.verdict, governing) {
         (Verdict::Undecided, limit) => {
-            text += &assessment.sentence;
+            if let Some(reason) = &assessment.undecided_reason {
+                text += &format!("{}.", sentence_case(reason));
+            }
             if let Some(limit) = limit {
                 text += &format!(
                     " As far as computed, {}.",
