@@ -262,3 +262,46 @@ fn assess_reports_the_same_path() {
     let bow = mark.expect("is reached").point.bow_m;
     assert!((bow / case.duty.bow_limit - 1.0).abs() < 1e-9);
 }
+
+/// Wire stress and first clash of a hinged, bowed spring from statics alone: at mid-height the
+/// section stands square to the load, so N = −P, Q = 0 and M = P v, with v the distance of the axis
+/// from the line of load, and it is the worst section. So T = P R + P v, the stress is 16 T/(π d³)
+/// times the curvature factor (Shigley's, from memory), the curvature is P v/EI and that of the
+/// stress-free bow, and coils touch where p(1 − P/EA − R κ) = d. R follows the pitch at constant
+/// length of the wire.
+#[test]
+fn stress_and_clash_are_those_of_the_middle_section() {
+    let mut case = setup(4.0, 2.6, Support::hinged(), Support::hinged());
+    let height = 1e-4;
+    case.imperfections.bow = height;
+    case.duty.allowable_stress = Some(900e6);
+    let answer = coilstay::assess::assess(&case, "");
+    let path = &answer.imperfect_column.as_ref().expect("followed").path;
+    let (spring, pi) = (&case.spring, std::f64::consts::PI);
+    let (length, wire) = (spring.free_length, spring.wire.axial_size());
+    let section = spring.section(length);
+    let at = |name: &str| {
+        let mark = path.marks.iter().find(|mark| mark.name == name);
+        let point = mark.expect("reached").point;
+        let open = 1.0 - point.force_n / section.axial;
+        let turn = (spring.mean_diameter * pi).hypot(spring.pitch());
+        let radius = (turn.powi(2) - (open * spring.pitch()).powi(2)).sqrt() / (2.0 * pi);
+        // The bow is counted from the unloaded axis, which stands `height` off the line of load.
+        (point, point.force_n, open, radius, point.bow_m + height)
+    };
+    for name in ["stress", "bow", "clash"] {
+        let (point, force, _, radius, aside) = at(name);
+        let factor = (spring.index() + 0.5) / (spring.index() - 0.75);
+        let stress = 16.0 * force * (radius + aside) / (pi * wire.powi(3)) * factor;
+        assert!(
+            (point.wire_stress_pa / stress - 1.0).abs() < CLOSE,
+            "{name}"
+        );
+    }
+    let (_, force, open, radius, aside) = at("clash");
+    let curvature = force * aside / section.bending + height * (pi / length).powi(2);
+    let inside = spring.pitch() * (open - radius * curvature);
+    assert!((inside / wire - 1.0).abs() < 1e-7, "{inside} {wire}");
+    let stress = at("stress").0.wire_stress_pa;
+    assert!((stress / 900e6 - 1.0).abs() < 1e-9, "{stress}");
+}
