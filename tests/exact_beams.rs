@@ -284,7 +284,7 @@ fn deep_arch_meets_its_limit_load() {
     let load = lost.point.load * column.scale.force;
     assert!((load - 897.0).abs() < 0.5, "{load}");
     let share = load * radius * radius / bending;
-    assert_relative_eq!(share, elastica::DEEP_ARCH_COMPUTED, max_relative = 1e-8);
+    assert_relative_eq!(share, elastica::DEEP_ARCH_COMPUTED, max_relative = 1e-9);
     // Past it the path goes on, with one unstable direction.
     assert_eq!(points[after].negatives, 0);
     let (outcome, _) = follow(&mut column, &mut newton, &mut points, &settings, |points| {
