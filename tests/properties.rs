@@ -223,7 +223,7 @@ proptest! {
         *restraint = match *restraint {
             Restraint::Free => Restraint::Elastic(unit * factor),
             Restraint::Elastic(k) => Restraint::Elastic(k * factor),
-            Restraint::Held => Restraint::Held,
+            other => other,
         };
         let (soft, hard) = (critical(&case), critical(&stiffer));
         prop_assert!(hard >= soft * (1.0 - 1e-9), "{soft} {hard}");

@@ -68,7 +68,7 @@ pub(super) fn run(setup: &Setup) -> Imperfect {
         buckling.as_ref(),
         Reach::SOLID,
     );
-    let needed = setup.duty.farthest_needed();
+    let needed = setup.farthest_needed();
     let mut failures: Vec<Failure> = Vec::new();
     for run in [&fine, &coarse] {
         if let PathEnd::Lost(failure) = &run.end {

@@ -31,7 +31,7 @@ pub(super) fn collect(
     limits.extend(
         from_path
             .into_iter()
-            .filter(|kind| setup.duty.has(*kind))
+            .filter(|kind| setup.has(*kind))
             .map(|kind| path_limit(setup, imperfect, kind)),
     );
     limits.sort_by(|a, b| {

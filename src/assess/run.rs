@@ -129,7 +129,7 @@ impl Run {
             .events
             .iter()
             .filter_map(|event| match event.kind {
-                EventKind::Limit(kind) if duty.has(kind) => {
+                EventKind::Limit(kind) if setup.has(kind) => {
                     Some(duty.needed(kind) / duty.reached(event.reached.0, event.reached.1))
                 }
                 _ => None,
@@ -155,7 +155,7 @@ impl Run {
         let duty = &setup.duty;
         self.end == PathEnd::Solid
             || self.farthest(|seen| duty.reached(seen.point.deflection_m, seen.point.force_n))
-                >= duty.farthest_needed()
+                >= setup.farthest_needed()
     }
 
     /// The event of that kind.
@@ -175,7 +175,7 @@ impl Run {
         let lost = self
             .events
             .iter()
-            .filter(|event| matches!(event.kind, EventKind::Limit(kind) if kind.is_loss() && duty.has(kind)))
+            .filter(|event| matches!(event.kind, EventKind::Limit(kind) if kind.is_loss() && setup.has(kind)))
             .map(|event| event.place)
             .fold(f64::INFINITY, f64::min);
         let (index, seen) = self.seen.iter().enumerate().find(|(index, seen)| {

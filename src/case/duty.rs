@@ -262,8 +262,8 @@ struct Machine {
 impl Machine {
     fn of(spring: Option<&Spring>, seats: [Option<&Support>; 2]) -> Self {
         let seat = |support: Option<&Support>| match support?.axial {
-            Restraint::Elastic(stiffness) => Some(1.0 / stiffness),
-            Restraint::Held | Restraint::Free => Some(0.0),
+            Restraint::Free => Some(0.0),
+            restraint => Some(restraint.gives_under(0.0).1),
         };
         let own = spring.map(|spring| 1.0 / spring.rate());
         let sum = || Some(own? + seat(seats[0])? + seat(seats[1])?);

@@ -47,6 +47,7 @@ pub(super) fn resolve(
         spring: spring?,
         bottom: bottom?,
         top: top?,
+        guides: Vec::new(),
         imperfections: imperfections?,
         duty: duty?,
         defaulted: Vec::new(),

@@ -79,9 +79,11 @@ fn hold_end(laws: &EndLaws, node: usize, state: &ColumnState, out: &mut Assemble
     for (k, hold) in laws.0.iter().enumerate() {
         match *hold {
             Hold::Free => {}
-            Hold::Elastic { stiffness, rest } => {
-                out.residual[node][k] += stiffness * (state.nodes[node][k] - rest);
-                out.tangent.diagonal[node][(k, k)] += stiffness;
+            Hold::Elastic { .. } | Hold::Curved { .. } => {
+                if let Some((force, stiffness)) = hold.law(state.nodes[node][k]) {
+                    out.residual[node][k] += force;
+                    out.tangent.diagonal[node][(k, k)] += stiffness;
+                }
             }
             Hold::Held(value) => {
                 out.residual[node][k] = state.nodes[node][k] - value;
@@ -134,7 +136,12 @@ impl Column {
             for (k, hold) in laws.0.iter().enumerate() {
                 match *hold {
                     Hold::Free => {}
-                    Hold::Elastic { stiffness, .. } => matrix.push(first + k, first + k, stiffness),
+                    Hold::Elastic { .. } | Hold::Curved { .. } => {
+                        let node = if first == 0 { 0 } else { n };
+                        if let Some((_, stiffness)) = hold.law(state.nodes[node][k]) {
+                            matrix.push(first + k, first + k, stiffness);
+                        }
+                    }
                     Hold::Held(_) => {
                         held[first + k] = true;
                         matrix.push(first + k, first + k, 1.0);

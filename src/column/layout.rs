@@ -6,6 +6,7 @@
 
 use super::basis::{GAUSS_AT, Tables};
 use super::element::{Element, INNER, Lever, PointLaw};
+use crate::setup::Curve;
 use crate::solve::Unknowns;
 use crate::spring::Section;
 use crate::units::{Metre, Newton, NewtonMetre, Radian};
@@ -47,8 +48,55 @@ pub enum Hold {
         /// Value at rest.
         rest: f64,
     },
+    /// A law as measured, at rest at this value.
+    Curved {
+        /// Force or moment over motion, in SI.
+        curve: Curve,
+        /// Unit of its motion, m or rad for one of the column's.
+        motion_unit: f64,
+        /// Unit of its force, N or N·m for one of the column's.
+        force_unit: f64,
+        /// Value at rest.
+        rest: f64,
+    },
     /// Fixed at this value.
     Held(f64),
+}
+
+impl Hold {
+    /// Force and stiffness of an elastic law at a value of its unknown; `None` for the others.
+    pub(super) fn law(&self, value: f64) -> Option<(f64, f64)> {
+        match self {
+            Hold::Elastic { stiffness, rest } => Some((stiffness * (value - rest), *stiffness)),
+            Hold::Curved {
+                curve,
+                motion_unit,
+                force_unit,
+                rest,
+            } => {
+                let point = curve.odd_at((value - rest) * motion_unit);
+                Some((
+                    point.value / force_unit,
+                    point.slope * motion_unit / force_unit,
+                ))
+            }
+            Hold::Free | Hold::Held(_) => None,
+        }
+    }
+
+    /// Energy stored in an elastic law at a value of its unknown.
+    fn energy(&self, value: f64) -> f64 {
+        match self {
+            Hold::Elastic { stiffness, rest } => 0.5 * stiffness * (value - rest).powi(2),
+            Hold::Curved {
+                curve,
+                motion_unit,
+                force_unit,
+                rest,
+            } => curve.odd_energy((value - rest) * motion_unit) / (force_unit * motion_unit),
+            Hold::Free | Hold::Held(_) => 0.0,
+        }
+    }
 }
 
 /// How an end node is held, in the order x, y, θ.
@@ -218,7 +266,7 @@ impl Column {
         let mut state = ColumnState::zero(self.elements());
         let held = |hold: Hold| match hold {
             Hold::Held(value) => Some(value),
-            Hold::Elastic { rest, .. } => Some(rest),
+            Hold::Elastic { rest, .. } | Hold::Curved { rest, .. } => Some(rest),
             Hold::Free => None,
         };
         let turn = match (held(self.bottom.0[2]), held(self.top.0[2])) {
@@ -282,12 +330,10 @@ impl Column {
         let ends: f64 = [(0, &self.bottom), (last, &self.top)]
             .iter()
             .flat_map(|(node, laws)| {
-                laws.0.iter().enumerate().map(|(k, hold)| match hold {
-                    Hold::Elastic { stiffness, rest } => {
-                        0.5 * stiffness * (state.nodes[*node][k] - rest).powi(2)
-                    }
-                    _ => 0.0,
-                })
+                laws.0
+                    .iter()
+                    .enumerate()
+                    .map(|(k, hold)| hold.energy(state.nodes[*node][k]))
             })
             .sum();
         column + ends

@@ -77,11 +77,18 @@ impl Column {
         let real = f64::from(deviations.is_some());
         let scale = column.scale;
         let laws = |support: &Support, axial: Hold, angle: f64, aside: f64| {
-            let hold = |restraint: Restraint, unit: f64, rest: f64| match restraint {
+            let hold = |restraint: Restraint, force_unit: f64, unit: f64, rest: f64| match restraint
+            {
                 Restraint::Free => Hold::Free,
                 Restraint::Held => Hold::Held(rest),
                 Restraint::Elastic(stiffness) => Hold::Elastic {
                     stiffness: stiffness / unit,
+                    rest,
+                },
+                Restraint::Progressive(curve) => Hold::Curved {
+                    curve,
+                    motion_unit: force_unit / unit,
+                    force_unit,
                     rest,
                 },
             };
@@ -89,11 +96,13 @@ impl Column {
                 axial,
                 hold(
                     support.sideways,
+                    scale.force,
                     scale.stiffness(),
                     (real * support.offset + aside) / scale.length,
                 ),
                 hold(
                     support.rotation,
+                    scale.moment(),
                     scale.moment(),
                     real * support.tilt + angle,
                 ),

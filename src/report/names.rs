@@ -12,6 +12,10 @@ pub fn phrase(limit: LimitKind) -> &'static str {
         LimitKind::RateLost => "the loss of axial rate",
         LimitKind::Stress => "the static wire stress",
         LimitKind::Clash => "the first clash of coils on the inside of the bow",
+        LimitKind::LiftOff => "the lift-off of an end from its seat",
+        LimitKind::Slide => "the sliding of an end on its seat",
+        LimitKind::GuideTouch => "the touch of a guide",
+        LimitKind::BoreFilled => "the coil filling its bore",
         LimitKind::Solid => "the solid length",
     }
 }

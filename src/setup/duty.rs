@@ -28,13 +28,21 @@ pub enum LimitKind {
     Stress,
     /// The first coils touch on the inside of the bow.
     Clash,
+    /// The far side of a flat end lifts off its seat.
+    LiftOff,
+    /// An end slides on its seat.
+    Slide,
+    /// The spring touches a guide that it may not touch.
+    GuideTouch,
+    /// The coil, grown by compression, fills its bore.
+    BoreFilled,
     /// The spring is solid.
     Solid,
 }
 
 impl LimitKind {
     /// Every limit, in the order the documentation lists them.
-    pub const ALL: [LimitKind; 8] = [
+    pub const ALL: [LimitKind; 12] = [
         LimitKind::Critical,
         LimitKind::DeadLoadLost,
         LimitKind::TravelLost,
@@ -42,6 +50,10 @@ impl LimitKind {
         LimitKind::RateLost,
         LimitKind::Stress,
         LimitKind::Clash,
+        LimitKind::LiftOff,
+        LimitKind::Slide,
+        LimitKind::GuideTouch,
+        LimitKind::BoreFilled,
         LimitKind::Solid,
     ];
 
@@ -60,6 +72,10 @@ impl LimitKind {
             LimitKind::RateLost => "rate_lost",
             LimitKind::Stress => "stress",
             LimitKind::Clash => "clash",
+            LimitKind::LiftOff => "lift_off",
+            LimitKind::Slide => "slide",
+            LimitKind::GuideTouch => "guide_touch",
+            LimitKind::BoreFilled => "bore_filled",
             LimitKind::Solid => "solid",
         }
     }
@@ -74,6 +90,10 @@ impl LimitKind {
             LimitKind::RateLost => "axial rate lost",
             LimitKind::Stress => "static wire stress",
             LimitKind::Clash => "first coils clash",
+            LimitKind::LiftOff => "end lifts off its seat",
+            LimitKind::Slide => "end slides on its seat",
+            LimitKind::GuideTouch => "touches a guide",
+            LimitKind::BoreFilled => "coil fills the bore",
             LimitKind::Solid => "solid",
         }
     }
@@ -136,15 +156,6 @@ impl Duty {
         (working * (1.0 + self.margins.of(limit))).max(working + self.overtravel)
     }
 
-    /// The largest deflection that any limit of this duty must reach, m.
-    pub fn farthest_needed(&self) -> Metre {
-        LimitKind::ALL
-            .iter()
-            .filter(|kind| self.has(**kind))
-            .map(|kind| self.needed(*kind))
-            .fold(0.0, f64::max)
-    }
-
     /// What a state counts for against the working deflection, m. Where a machine sets the
     /// deflection: that deflection. Under a dead load: the deflection that its force would give the
     /// straight spring, so that ratios are ratios of forces; a bowed spring is shorter than that.
@@ -160,7 +171,7 @@ impl Duty {
         self.reached(deflection, force) / self.largest_working_deflection() - 1.0
     }
 
-    /// Whether that limit exists under this kind of loading.
+    /// Whether that limit exists under this kind of loading, in supports and guides that have it.
     pub fn has(&self, limit: LimitKind) -> bool {
         match limit {
             LimitKind::DeadLoadLost => self.loading == Loading::Force,

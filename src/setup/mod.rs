@@ -2,15 +2,20 @@
 //! decided, all SI: the optional fields of the case file have become values here.
 
 mod duty;
+mod guide;
 mod imperfections;
 mod support;
 
 pub use duty::{Duty, LimitKind, Loading, Margins};
+pub use guide::{FixedTo, Guide, GuideKind};
 pub use imperfections::{BowShape, Imperfections, Orientation, TopPosition};
-pub use support::{Restraint, Support};
+pub use support::{
+    Contact, Curve, CurvePoint, FlatSeat, Lateral, LeverArc, Link, MOST_POINTS, Motion, Restraint,
+    SeatPose, Support, Swivel,
+};
 
 use crate::spring::Spring;
-use crate::units::{Celsius, Metre};
+use crate::units::{Celsius, Metre, Newton};
 
 /// A spring in its supports, its imperfections and its duty.
 #[derive(Clone, Debug, PartialEq)]
@@ -27,6 +32,8 @@ pub struct Setup {
     pub bottom: Support,
     /// Support at the top, where the load comes in.
     pub top: Support,
+    /// Rods and bores that the spring may lean on.
+    pub guides: Vec<Guide>,
     /// How the spring and its seats deviate from perfect.
     pub imperfections: Imperfections,
     /// What it must do.
@@ -38,6 +45,43 @@ pub struct Setup {
 }
 
 impl Setup {
+    /// What the seats give axially under a force, m, and the derivative by the force, m/N.
+    pub fn seats_give(&self, force: Newton) -> (Metre, f64) {
+        let (bottom, top) = (
+            self.bottom.axial.gives_under(force),
+            self.top.axial.gives_under(force),
+        );
+        (bottom.0 + top.0, bottom.1 + top.1)
+    }
+
+    /// Whether that limit exists for this case.
+    pub fn has(&self, limit: LimitKind) -> bool {
+        let ends = [&self.bottom, &self.top];
+        let flat = |of: fn(&FlatSeat) -> bool| {
+            ends.iter()
+                .any(|end| matches!(&end.contact, Contact::Flat(seat) if of(seat)))
+        };
+        match limit {
+            LimitKind::LiftOff => flat(|_| true),
+            LimitKind::Slide => flat(|seat| seat.friction.is_some()),
+            LimitKind::GuideTouch => self.guides.iter().any(|guide| !guide.touching_allowed),
+            LimitKind::BoreFilled => self
+                .guides
+                .iter()
+                .any(|guide| guide.kind == GuideKind::Bore),
+            _ => self.duty.has(limit),
+        }
+    }
+
+    /// The largest deflection that any limit of this case must reach, m.
+    pub fn farthest_needed(&self) -> Metre {
+        LimitKind::ALL
+            .iter()
+            .filter(|kind| self.has(**kind))
+            .map(|kind| self.duty.needed(*kind))
+            .fold(0.0, f64::max)
+    }
+
     /// Whether the two supports together hold the unloaded spring: as a rigid body it may neither
     /// shift sideways nor turn without being resisted.
     pub fn is_held(&self) -> bool {

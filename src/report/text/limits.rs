@@ -148,7 +148,11 @@ fn legend(assessment: &Assessment, units: Units) -> String {
             }
             LimitKind::DeadLoadLost => "largest force of the path".to_string(),
             LimitKind::TravelLost => "largest travel of the path".to_string(),
-            LimitKind::Solid => limit.note.clone(),
+            LimitKind::LiftOff
+            | LimitKind::Slide
+            | LimitKind::GuideTouch
+            | LimitKind::BoreFilled
+            | LimitKind::Solid => limit.note.clone(),
             LimitKind::Critical => String::new(),
         };
         if !meaning.is_empty() {
