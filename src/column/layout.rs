@@ -36,6 +36,7 @@ impl Scale {
     }
 }
 
+#[allow(clippy::large_enum_variant)] // plain data, kept `Copy`
 /// How one unknown of an end is held. Values in the column's units.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Hold {

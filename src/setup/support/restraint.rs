@@ -2,6 +2,7 @@
 
 use super::Curve;
 
+#[allow(clippy::large_enum_variant)] // plain data, kept `Copy`
 /// How one motion of a seat is held. The stiffness is in N/m or N·m/rad and positive.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Restraint {
