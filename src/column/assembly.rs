@@ -48,6 +48,13 @@ impl System<3, INNER> for Column {
     fn depart(&mut self, state: &ColumnState) {
         let last = self.elements.len();
         self.end_was = [state.nodes[0][2], state.nodes[last][2]];
+        for which in 0..2 {
+            let turned = self.turned(state, which);
+            self.standing[which] = match self.seats[which].touch {
+                Touch::Flat { .. } if turned != 0.0 => Some(self.seats[which].edge_side(turned)),
+                _ => None,
+            };
+        }
         let Some(mut leaning) = self.leaning.take_if(|leaning| !leaning.symmetric) else {
             return;
         };
@@ -142,6 +149,7 @@ impl System<3, INNER> for Column {
         for (which, end) in ends.iter().enumerate() {
             end.seat_on(which * last, out);
             self.end_turns[which] = end.pose.by;
+            self.standing[which] = end.standing;
         }
         for (residual, pattern) in out.residual.iter_mut().zip(&self.pattern) {
             *residual -= pattern * load;
@@ -195,6 +203,8 @@ struct End {
     /// What the column does to it: F_x, F_y, M (internal, as in the residual).
     actions: Vector3<f64>,
     turning: Turning,
+    /// The edge it stands on, if it does.
+    standing: Option<f64>,
 }
 
 /// What a seat makes of the rotation of an end.
@@ -251,15 +261,14 @@ impl Column {
             pose: seat.pose(q, None),
             actions: Vector3::zeros(),
             turning: Turning::ByLaw,
+            standing: None,
         };
         if matches!(seat.touch, Touch::Joined) && seat.motion.is_none() {
             return end;
         }
         let turned = self.turned(state, which);
-        if let Touch::Flat { .. } = seat.touch
-            && turned != 0.0
-        {
-            end.pose = seat.pose(q, Some((turned, seat.edge_side(turned))));
+        if let Some(side) = self.standing[which] {
+            end.pose = seat.pose(q, Some((turned, side)));
         }
         end.actions = self.actions_on(state, which, &end.pose.at);
         match seat.touch {
@@ -286,26 +295,25 @@ impl Column {
     fn flat(&self, state: &ColumnState, which: usize, turned: f64, end: &mut End) {
         let seat = &self.seats[which];
         let q = &state.nodes[which * self.elements.len()];
-        // Moment of the seat about its centre with the end on the edge that this pose has.
-        let edge_moment = |pose: &Pose, actions: &Vector3<f64>| {
-            -(pose.by[(0, 2)] * actions[0] + pose.by[(1, 2)] * actions[1])
-        };
-        if turned != 0.0 {
-            let needed = edge_moment(&end.pose, &end.actions);
-            // A moment that presses the other edge down: it is flush again.
-            if end.actions[2] * needed < 0.0 {
-                end.turning = Turning::HeldAt(q[2] - turned);
-            } else {
+        if let Some(side) = self.standing[which] {
+            if seat.edge_side(turned) == side {
                 end.turning = Turning::Stands;
+                end.standing = Some(side);
+            } else {
+                // Turned through flush: it sits down.
+                end.turning = Turning::HeldAt(q[2] - turned);
             }
             return;
         }
         for side in [1.0, -1.0] {
-            let pose = seat.pose(q, Some((0.0, side)));
-            let most = edge_moment(&pose, &end.actions);
-            if end.actions[2] * most > 0.0 && end.actions[2].abs() > most.abs() {
+            let pose = seat.pose(q, Some((turned, side)));
+            // Moment that the seat can oppose on this edge, and which way it would turn the end.
+            let most = -(pose.by[(0, 2)] * end.actions[0] + pose.by[(1, 2)] * end.actions[1]);
+            let way = if which == 0 { -side } else { side };
+            if end.actions[2] * way > (most * way).max(0.0) * (1.0 + 1e-12) {
                 end.pose = pose;
                 end.turning = Turning::Stands;
+                end.standing = Some(side);
             }
         }
     }

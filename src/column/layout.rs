@@ -155,6 +155,8 @@ pub struct Column {
     pub(super) end_turns: [Matrix3<f64>; 2],
     /// Rotations of the ends when the step began.
     pub(super) end_was: [f64; 2],
+    /// Edge on which a flat end stands, in the iteration under way.
+    pub(super) standing: [Option<f64>; 2],
 }
 
 /// Force at which a load along a path counts as of order one: about (2π)² EI/L².
@@ -216,6 +218,7 @@ impl Column {
             inner_answers: vec![SMatrix::zeros(); elements],
             end_turns: [Matrix3::identity(); 2],
             end_was: [0.0; 2],
+            standing: [None; 2],
         }
     }
 
