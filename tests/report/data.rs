@@ -1,6 +1,6 @@
 //! JSON and CSV.
 
-use super::fixture::{Shape, assessment};
+use super::fixture::{Shape, assessment, in_every_support};
 use coilstay::report;
 use coilstay::result::{Assessment, Mistake, Outcome, PathPoint, Refusal};
 use serde_json::Value;
@@ -16,6 +16,22 @@ fn assessed(assessment: Assessment) -> Outcome {
 #[test]
 fn the_shape_is_kept() {
     insta::assert_json_snapshot!(json(&[assessed(assessment(Shape::Falling))]));
+}
+
+#[test]
+fn the_shape_of_supports_and_guides_is_kept() {
+    let all = json(&[assessed(in_every_support())]);
+    let parts: serde_json::Map<String, Value> = [
+        "supports",
+        "guides",
+        "planes",
+        "effective_end_constant",
+        "support_sensitivity",
+    ]
+    .into_iter()
+    .map(|key| (key.to_owned(), all[key].clone()))
+    .collect();
+    insta::assert_json_snapshot!(parts);
 }
 
 #[test]
@@ -119,6 +135,7 @@ fn quantities_end_in_their_unit() {
     }
     let mut keys = Vec::new();
     walk(&json(&[assessed(assessment(Shape::Falling))]), &mut keys);
+    walk(&json(&[assessed(in_every_support())]), &mut keys);
     assert!(keys.len() > 50);
     for key in keys {
         let unit = UNITS.iter().any(|unit| key.ends_with(unit));
