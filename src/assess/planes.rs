@@ -7,6 +7,7 @@
 
 use crate::result::{Assessment, LimitKind, PlaneAnswer, Verdict};
 use crate::setup::{Setup, Support};
+use std::cmp::Ordering;
 use std::f64::consts::FRAC_PI_2;
 
 /// The case in its two lateral planes; `None` where both ends are held alike all round.
@@ -53,29 +54,29 @@ pub(super) fn weaker(setup: &Setup, answers: [Assessment; 2]) -> Assessment {
     }
 }
 
+fn is_weaker(setup: &Setup, one: &Assessment, than: &Assessment) -> bool {
+    let strength = |answer: &Assessment| {
+        let limit = answer.limits.iter().find(|limit| limit.governs);
+        let reserve = limit.and_then(|limit| {
+            let reached = setup.duty.reached(limit.deflection_m?, limit.force_n?);
+            Some(reached / setup.duty.needed(limit.name))
+        });
+        (answer.verdict, reserve.unwrap_or(f64::INFINITY))
+    };
+    compare(strength(one), strength(than)).is_lt()
+}
+
 /// A plane that fails decides; one that is undecided comes before one that holds; then the one
 /// whose governing limit reaches less of what is needed of it. Of two alike, the first.
-fn is_weaker(setup: &Setup, one: &Assessment, than: &Assessment) -> bool {
+fn compare(one: (Verdict, f64), other: (Verdict, f64)) -> Ordering {
     let rank = |verdict: Verdict| match verdict {
         Verdict::DoesNotHold => 0,
         Verdict::Undecided => 1,
         Verdict::Holds => 2,
     };
-    let reserve = |answer: &Assessment| {
-        answer
-            .limits
-            .iter()
-            .find(|limit| limit.governs)
-            .and_then(|limit| {
-                let reached = setup.duty.reached(limit.deflection_m?, limit.force_n?);
-                Some(reached / setup.duty.needed(limit.name))
-            })
-            .unwrap_or(f64::INFINITY)
-    };
-    rank(one.verdict)
-        .cmp(&rank(than.verdict))
-        .then(reserve(one).total_cmp(&reserve(than)))
-        .is_lt()
+    rank(one.0)
+        .cmp(&rank(other.0))
+        .then(one.1.total_cmp(&other.1))
 }
 
 fn summary(answer: &Assessment, direction_rad: f64, governs: bool) -> PlaneAnswer {
@@ -95,5 +96,28 @@ fn summary(answer: &Assessment, direction_rad: f64, governs: bool) -> PlaneAnswe
         margin: limit.and_then(|limit| limit.margin),
         required_margin: limit.map(|limit| limit.required_margin),
         critical_deflection_m: critical.and_then(|limit| limit.deflection_m),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use Verdict::{DoesNotHold, Holds, Undecided};
+
+    #[test]
+    fn what_fails_decides_then_what_is_undecided_then_what_has_less_to_spare() {
+        let rising = [
+            (DoesNotHold, 0.7),
+            (DoesNotHold, 0.9),
+            (Undecided, 0.8),
+            (Undecided, f64::INFINITY),
+            (Holds, 1.01),
+            (Holds, 1.4),
+        ];
+        for pair in rising.windows(2) {
+            assert_eq!(compare(pair[0], pair[1]), Ordering::Less);
+            assert_eq!(compare(pair[1], pair[0]), Ordering::Greater);
+        }
+        assert_eq!(compare(rising[0], rising[0]), Ordering::Equal);
     }
 }
