@@ -92,6 +92,12 @@ fn sentence(
     const SAME: f64 = 1e-7;
     text += &match change {
         Some(change) if change.abs() < SAME => ", and the supports do what it says.".to_owned(),
+        Some(change) if is_own => format!(
+            ". The column is critical {:.2} % {} than by the formula with {}.",
+            100.0 * change.abs(),
+            if change < 0.0 { "earlier" } else { "later" },
+            constant.value
+        ),
         Some(change) => format!(
             ". Against it, with {}, the supports {} the critical deflection by {:.2} %.",
             constant.value,
