@@ -73,29 +73,48 @@ impl Property {
     }
 }
 
+/// An end of the spring.
+#[derive(Clone, Copy, Debug)]
+enum End {
+    Bottom,
+    Top,
+}
+
+impl End {
+    fn of(self, setup: &mut Setup) -> &mut Support {
+        match self {
+            End::Bottom => &mut setup.bottom,
+            End::Top => &mut setup.top,
+        }
+    }
+
+    fn word(self) -> &'static str {
+        match self {
+            End::Bottom => "bottom",
+            End::Top => "top",
+        }
+    }
+}
+
 /// The sensitivities of this case, by falling effect; `None` where no property of its supports can
 /// change.
 pub(super) fn of_supports(setup: &Setup) -> Option<Sensitivities> {
-    let ends: [(&str, fn(&mut Setup) -> &mut Support); 2] = [
-        ("bottom", |setup| &mut setup.bottom),
-        ("top", |setup| &mut setup.top),
-    ];
     let mut changed = setup.clone();
     let mut now = None;
     let mut properties = Vec::new();
-    for (end, support) in ends {
-        let as_given = *support(&mut changed);
+    for end in [End::Bottom, End::Top] {
+        let as_given = *end.of(&mut changed);
         for property in Property::ALL {
             if !property.is_of(&as_given) {
                 continue;
             }
             let now = *now.get_or_insert_with(|| critical(setup));
             let [larger, smaller] = [1.0 + CHANGE, 1.0 - CHANGE].map(|factor| {
-                *support(&mut changed) = property.changed(&as_given, factor);
+                *end.of(&mut changed) = property.changed(&as_given, factor);
                 critical(&changed)
             });
-            *support(&mut changed) = as_given;
-            properties.push(compared(setup, end, property, now, larger, smaller));
+            *end.of(&mut changed) = as_given;
+            properties.push(compared(setup, end.word(), property, now, larger, smaller));
         }
     }
     properties.sort_by(|a, b| effect(b).total_cmp(&effect(a)));
