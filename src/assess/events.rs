@@ -92,15 +92,17 @@ impl Track<'_> {
         let setup = self.setup;
         let duty = &setup.duty;
         let solid = setup.spring.solid_deflection();
-        let seats = super::straight::seat_compliance(setup);
-        let left_rate = (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + seats);
+        // Of the straight spring on its seats, under the same force.
+        let left_rate = |force: f64| {
+            (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + setup.seats_give(force).1)
+        };
         let stress = duty.allowable_stress.unwrap_or(f64::INFINITY);
         let limit = EventKind::Limit;
         let reached = |s: &Seen| duty.reached(s.point.deflection_m, s.point.force_n);
         let watches = [
             Watch::state(limit(LimitKind::Bow), |s| duty.bow_limit - s.point.bow_m),
             Watch::direction(limit(LimitKind::RateLost), |s| {
-                s.along.0 - left_rate * s.along.1
+                s.along.0 - left_rate(s.point.force_n) * s.along.1
             }),
             Watch::direction(limit(LimitKind::DeadLoadLost), |s| s.along.0),
             Watch::direction(limit(LimitKind::TravelLost), |s| s.along.1),

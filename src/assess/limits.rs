@@ -2,7 +2,7 @@
 
 use super::events::EventKind;
 use super::imperfect::Imperfect;
-use super::straight::{Critical, is_beyond_solid, seat_compliance, share_of_free_length};
+use super::straight::{Critical, is_beyond_solid, share_of_free_length};
 use crate::result::{Limit, StressAtSolid};
 use crate::setup::{LimitKind, Setup};
 use crate::spring::{compressed_radius, torsion_stress};
@@ -84,7 +84,7 @@ fn critical_limit(setup: &Setup, critical: Option<&Critical>) -> Limit {
 /// counts as reached where the jump starts.
 fn solid_limit(setup: &Setup, imperfect: &Imperfect) -> Limit {
     let shortening = setup.spring.solid_deflection();
-    let reached_with = |force: f64| shortening + force * seat_compliance(setup);
+    let reached_with = |force: f64| shortening + setup.seats_give(force).0;
     let by_rate = setup.spring.rate() * shortening;
     let (reached, whose) = match imperfect.event(setup, EventKind::Limit(LimitKind::Solid)) {
         Some((event, error)) if event.in_jump => (

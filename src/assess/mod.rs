@@ -3,6 +3,7 @@
 mod absolute;
 mod compare;
 mod echo;
+mod end_constant;
 mod events;
 mod formula;
 mod imperfect;
@@ -10,7 +11,9 @@ mod jump;
 mod limits;
 mod notes;
 mod observe;
+mod planes;
 mod run;
+mod sensitivity;
 mod southwell;
 mod straight;
 mod summary;
@@ -24,14 +27,22 @@ use crate::setup::Setup;
 /// discretisation estimate.
 pub const MESHES: [usize; 2] = [16, 32];
 
-/// Answers one case. `file` is only passed on. Computations that fail are in the result.
+/// Answers one case. `file` is only passed on. Computations that fail are in the result. Where the
+/// supports differ between the two lateral planes the answer is that of the weaker one.
 pub fn assess(setup: &Setup, file: &str) -> Assessment {
+    match planes::of(setup) {
+        None => in_one_plane(setup, file),
+        Some(planes) => planes::weaker(setup, planes.map(|plane| in_one_plane(&plane, file))),
+    }
+}
+
+fn in_one_plane(setup: &Setup, file: &str) -> Assessment {
     let closed_form = formula::closed_form(setup);
     let straight = straight::idealised(setup);
     let as_built = straight::as_built(setup);
     let imperfect = imperfect::run(setup);
     let limits = limits::collect(setup, as_built.as_ref(), &imperfect);
-    let comparisons = compare::all(setup, &closed_form, &straight);
+    let comparisons = compare::all(&closed_form, &straight);
     let absolute_stability = absolute::stability(setup, &closed_form, &straight);
     let dead_load = jump::dead_load(setup, &imperfect);
     let snap = jump::snap(setup, &imperfect);
@@ -48,10 +59,13 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
         undecided_reason: decided.undecided_reason.map(str::to_owned),
         spring: echo::spring(setup),
         supports: echo::supports(setup),
+        guides: echo::guides(setup),
         imperfections: echo::imperfections(setup),
         duty: echo::duty(setup),
         defaulted: setup.defaulted.clone(),
+        planes: Vec::new(),
         closed_form,
+        effective_end_constant: end_constant::effective(setup, &straight),
         straight_column: straight,
         imperfect_column,
         comparisons,
@@ -59,6 +73,7 @@ pub fn assess(setup: &Setup, file: &str) -> Assessment {
         dead_load,
         snap,
         absolute_stability,
+        support_sensitivity: sensitivity::of_supports(setup),
         stress_at_solid: limits::stress_at_solid(setup),
         failures: imperfect.failures,
         warnings,

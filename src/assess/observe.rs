@@ -1,6 +1,5 @@
 //! From a state of the column to what people ask about it.
 
-use super::straight::seat_compliance;
 use crate::column::{Column, Peak, Station};
 use crate::result::PathPoint;
 use crate::setup::Setup;
@@ -16,7 +15,6 @@ pub(super) struct Observer {
     /// Unloaded in its seats: sideways position and slope at each station.
     start: Vec<Station>,
     start_height: f64,
-    seats: f64,
 }
 
 /// A path point with what only limits need.
@@ -31,13 +29,12 @@ pub(super) struct Seen {
 
 impl Observer {
     /// An observer of paths that start at `unloaded`.
-    pub fn new(setup: &Setup, column: &Column, unloaded: &Solved) -> Self {
+    pub fn new(column: &Column, unloaded: &Solved) -> Self {
         let mut start = Vec::new();
         column.profile(&unloaded.state, &mut start);
         Observer {
             start,
             start_height: unloaded.state.nodes[column.elements()][0],
-            seats: seat_compliance(setup),
         }
     }
 
@@ -55,8 +52,9 @@ impl Observer {
         let force = solved.load * scale.force;
         let shortening = (self.start_height - solved.state.nodes[last][0]) * scale.length;
         let force_along = solved.load_direction * scale.force;
+        let (seats, seat_compliance) = setup.seats_give(force);
         let travel_along =
-            -solved.direction.nodes[last][0] * scale.length + force_along * self.seats;
+            -solved.direction.nodes[last][0] * scale.length + force_along * seat_compliance;
         let dead = setup.spring.dead_height() / (2.0 * scale.length);
         let growth = |sign: f64| {
             let along = Peak::of(stations.iter().zip(&self.start).map(|(now, then)| {
@@ -92,7 +90,7 @@ impl Observer {
         let falling = force_along * travel_along < 0.0;
         Seen {
             point: PathPoint {
-                deflection_m: shortening + force * self.seats,
+                deflection_m: shortening + seats,
                 shortening_m: shortening,
                 force_n: force,
                 bow_m: bow.value * scale.length,

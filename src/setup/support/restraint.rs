@@ -56,6 +56,16 @@ impl Restraint {
         }
     }
 
+    /// Energy stored under a force. Not for a free one.
+    pub fn stores_under(self, force: f64) -> f64 {
+        match self {
+            Restraint::Free => f64::INFINITY,
+            Restraint::Elastic(k) => 0.5 * force * force / k,
+            Restraint::Progressive(curve) => curve.odd_energy(curve.inverse(force.abs())),
+            Restraint::Held => 0.0,
+        }
+    }
+
     /// The same law with its stiffness times `factor`.
     pub fn stiffened(self, factor: f64) -> Self {
         match self {
