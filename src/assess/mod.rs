@@ -8,6 +8,7 @@ mod events;
 mod formula;
 mod imperfect;
 mod jump;
+mod leaned;
 mod limits;
 mod notes;
 mod observe;
@@ -26,6 +27,33 @@ use crate::setup::Setup;
 /// Elements of the coarser and the finer mesh. Results are the finer's; the difference is the
 /// discretisation estimate.
 pub const MESHES: [usize; 2] = [16, 32];
+/// The same with guides, where the ends of a contact lie between the nodes; for longer springs more,
+/// as [`guided_meshes`] says.
+const GUIDED_MESH: usize = 64;
+
+/// Coarser and finer mesh of the imperfect column. Between guides the axis may go into half waves
+/// as short as those that its force, at solid, lets bend freely: n = q/π, q² = ξ(1 − mξ) L²/K as in the
+/// straight column; and a curve of n half waves within the clearance wants elements in proportion.
+fn guided_meshes(setup: &Setup) -> [usize; 2] {
+    if setup.guides.is_empty() {
+        return MESHES;
+    }
+    let spring = &setup.spring;
+    let length = spring.deformable_length();
+    let section = spring.section(length);
+    let share = (spring.solid_deflection() / length).clamp(0.0, 0.95);
+    let load = section.axial * share;
+    let squared = load * (1.0 - share + load / section.shear) * length * length / section.bending;
+    let waves = squared.max(0.0).sqrt() / std::f64::consts::PI;
+    let fine = (GUIDED_MESH as f64 * (waves / FREE_WAVES).max(1.0)).ceil() as usize;
+    let coarse = fine.div_ceil(2).min(LARGEST_GUIDED_MESH);
+    [coarse, 2 * coarse]
+}
+
+/// Half waves for which the plain guided mesh is fine enough.
+const FREE_WAVES: f64 = 4.0;
+/// Elements of the coarser mesh at most: for springs no guide would be asked to keep straight.
+const LARGEST_GUIDED_MESH: usize = 256;
 
 /// Answers one case. `file` is only passed on. Computations that fail are in the result. Where the
 /// supports differ between the two lateral planes the answer is that of the weaker one.

@@ -109,7 +109,7 @@ impl System<3, INNER> for Column {
                     inner,
                     jumps: Leaning::jumps(&state.side, e),
                 };
-                if leaning.assemble(&self.tables, e, &top, held, out) {
+                if leaning.assemble(&self.tables, e, &top, held, &state.side, out) {
                     if symmetric {
                         out.inner_negatives += ALWAYS_NEGATIVE;
                     }
@@ -195,6 +195,19 @@ impl System<3, INNER> for Column {
     fn load_scale(&self) -> f64 {
         self.load_scale
     }
+}
+
+/// How an end presses on its seat, in the column's units.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SeatPress {
+    /// Force across the seat; pressing positive.
+    pub press: f64,
+    /// Force of the seat on the end along the seat, towards +y.
+    pub thrust: f64,
+    /// Where the force line passes the seat plane, from its centre towards +y.
+    pub line: f64,
+    /// Rotation of a flat end out of its seat, rad; 0 where it is flush.
+    pub turned: f64,
 }
 
 /// An end at a state: where it is, and what its seat makes of its rotation.
@@ -477,6 +490,34 @@ impl Column {
         let [bottom, top] =
             [0, 1].map(|which| self.actions_on(state, which, &self.pose_at(state, which * last)));
         [bottom, top]
+    }
+
+    /// How an end, 0 the bottom one, presses on its seat.
+    pub fn seat_press(&self, state: &ColumnState, which: usize) -> SeatPress {
+        let node = which * self.elements.len();
+        let seat = &self.seats[which];
+        let at = self.pose_at(state, node);
+        let actions = self.actions_on(state, which, &at);
+        let x = state.nodes[node][0];
+        let (press, thrust) = seat.pressed(x, [actions[0], actions[1]]);
+        // About the seat's centre, from that of the end.
+        let centre = match seat.touch {
+            Touch::Flat { .. } => seat.pose(&state.nodes[node], None).at,
+            _ => at,
+        };
+        let moment =
+            actions[2] + (at[0] - centre[0]) * actions[1] - (at[1] - centre[1]) * actions[0];
+        let sense = if seat.at_top { 1.0 } else { -1.0 };
+        let turned = match seat.touch {
+            Touch::Flat { .. } => self.turned(state, which),
+            _ => 0.0,
+        };
+        SeatPress {
+            press,
+            thrust,
+            line: sense * moment / press,
+            turned,
+        }
     }
 
     /// The uncondensed tangent at a state, order node 0 (x, y, θ), element 0 (c_1, c_2, c_3, F_x,

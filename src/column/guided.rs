@@ -3,8 +3,10 @@
 use super::element::{Element, INNER, PointLaw};
 use super::layout::{Column, ColumnState};
 use super::lean::{Condensed, Held, PAD_UNKNOWNS, PADS, Pad, PadTables, decide};
+use super::profile::{Peak, Station};
+use super::seat::Touch;
 use super::wall::{TopSeat, Wall};
-use crate::solve::Assembled;
+use crate::solve::{Assembled, System};
 use nalgebra::{SVector, Vector3};
 
 /// Weight of a gap against a force in the search for what leans (see [`super::lean`]), in EI/L³: of
@@ -19,6 +21,7 @@ pub struct Leaning {
     pub(super) laws: Vec<[PointLaw; 2 * PADS]>,
     pub(super) symmetric: bool,
     search: f64,
+    loosened: bool,
     /// Where each pad was along x when the step began.
     was: Vec<f64>,
     /// Of the last assembly.
@@ -60,6 +63,7 @@ impl Leaning {
             walls,
             symmetric,
             search: SEARCH,
+            loosened: false,
             was: vec![0.0; elements.len() * PADS],
             pads: vec![[Pad::Away; PADS]; elements.len()],
             condensed: vec![None; elements.len()],
@@ -99,6 +103,7 @@ impl Leaning {
         e: usize,
         top: &TopSeat,
         mut held: Held<'_>,
+        side: &[f64],
         out: &mut Assembled<3>,
     ) -> bool {
         self.condensed[e] = None;
@@ -107,16 +112,17 @@ impl Leaning {
             return false;
         }
         let means = held.means(&self.tables);
+        let mut pads = self.decide(top, &held, &means, e);
+        if self.loosened {
+            let leans = |pad: usize| side.get(2 * pad + 1).is_some_and(|push| *push != 0.0);
+            for (k, pad) in pads.iter_mut().enumerate() {
+                let here = e * PADS + k;
+                if here > 0 && leans(here - 1) && leans(here) && leans(here + 1) {
+                    *pad = Pad::Pushed;
+                }
+            }
+        }
         let was = &self.was[e * PADS..(e + 1) * PADS];
-        let pads = decide(
-            &self.walls,
-            top,
-            &held,
-            &means,
-            was,
-            self.search,
-            self.symmetric,
-        );
         if pads == [Pad::Away; PADS] && held.jumps == [[0.0; 2]; PADS] {
             return false;
         }
@@ -127,7 +133,7 @@ impl Leaning {
                 Pad::Leans { side, facing, .. } if self.symmetric => {
                     jump[0] = -(facing.axis_slope + side * facing.widening) * jump[1];
                 }
-                Pad::Leans { .. } => {}
+                Pad::Pushed | Pad::Leans { .. } => {}
             }
         }
         for k in 0..PADS {
@@ -135,7 +141,7 @@ impl Leaning {
                 self.mended[e][k][axis] = held.jumps[k][axis] - given[k][axis];
             }
         }
-        let marked = pads.map(|pad| pad != Pad::Away);
+        let marked = pads.map(|pad| matches!(pad, Pad::Leans { .. }));
         let forms = held.forms(plain, &self.tables, marked);
         let forces = [[held.inner[3], held.inner[4]], held.end_force()];
         let condensed = forms.condense(&pads, &held.jumps, was, forces, self.symmetric);
@@ -178,6 +184,25 @@ impl Leaning {
             mine[2 * k + 1] = jump[1] + residual * self.mended[e][k][1];
         }
         true
+    }
+
+    fn decide(
+        &self,
+        top: &TopSeat,
+        held: &Held<'_>,
+        means: &[[f64; 2]; PADS],
+        e: usize,
+    ) -> [Pad; PADS] {
+        let was = &self.was[e * PADS..(e + 1) * PADS];
+        decide(
+            &self.walls,
+            top,
+            held,
+            means,
+            was,
+            self.search,
+            self.symmetric,
+        )
     }
 
     /// Remembers where every pad is: what sticks, sticks there.
@@ -230,16 +255,7 @@ impl Column {
                 jumps,
             };
             let means = held.means(&leaning.tables);
-            let was = &leaning.was[e * PADS..(e + 1) * PADS];
-            let pads = decide(
-                &leaning.walls,
-                &top,
-                &held,
-                &means,
-                was,
-                leaning.search,
-                leaning.symmetric,
-            );
+            let pads = leaning.decide(&top, &held, &means, e);
             for (k, pad) in pads.iter().enumerate() {
                 let Pad::Leans { side, facing, .. } = pad else {
                     continue;
@@ -258,19 +274,122 @@ impl Column {
         }
     }
 
-    /// Room between the axis at (x, y) and the nearest guide, negative inside it, with the axial
-    /// force there; ∞ where there is none.
-    pub fn room(&self, state: &ColumnState, x: f64, y: f64, force: f64) -> f64 {
-        let Some(leaning) = &self.leaning else {
-            return f64::INFINITY;
-        };
+    /// The tightest place between the axis and the guides, of all or of those that may not be
+    /// touched: its place and the room there, negative inside a guide; `None` where there is no guide
+    /// beside the column. `stations` are those of [`Column::profile`] at this state.
+    pub fn tightest(
+        &self,
+        state: &ColumnState,
+        stations: &[Station],
+        forbidden_only: bool,
+    ) -> Option<Peak> {
+        let leaning = self.leaning.as_ref()?;
         let top = self.top_seat(state);
         let compliance = self.elements[0].points[0].axial_compliance;
-        leaning
+        let walls = leaning
             .walls
             .iter()
-            .filter_map(|wall| wall.face(x, force, compliance, &top))
-            .map(|facing| facing.clearance - (y - facing.axis).abs())
-            .fold(f64::INFINITY, f64::min)
+            .filter(|wall| !(forbidden_only && wall.may_touch));
+        let depth = walls
+            .flat_map(|wall| [(wall, 1.0), (wall, -1.0)])
+            .map(|(wall, side)| {
+                Peak::of(stations.iter().filter_map(|s| {
+                    // F_x, as the growth of the coil has it.
+                    let force = s.axial_force * s.angle.cos() - s.shear_force * s.angle.sin();
+                    let facing = wall.face(s.x, force, compliance, &top)?;
+                    let depth = side * (s.y - facing.axis) - facing.clearance;
+                    let slope = side * (s.y_slope - facing.axis_slope * s.x_slope)
+                        - facing.widening * s.x_slope;
+                    Some((s.place, depth, slope))
+                }))
+            })
+            .max_by(|a, b| a.value.total_cmp(&b.value))?;
+        depth.value.is_finite().then_some(Peak {
+            place: depth.place,
+            value: -depth.value,
+        })
+    }
+
+    /// Work of the friction on guides and swivels from one state to the next, in units of force ×
+    /// length; negative: it takes energy.
+    pub fn friction_work(&self, from: &ColumnState, to: &ColumnState) -> f64 {
+        let last = self.elements.len();
+        let mut work = 0.0;
+        for (which, seat) in self.seats.iter().enumerate() {
+            if let Touch::Swivel { .. } = seat.touch {
+                let turn = to.nodes[which * last][2] - from.nodes[which * last][2];
+                let moment = |state| self.end_actions(state)[which][2];
+                work += 0.5 * (moment(from) + moment(to)) * turn;
+            }
+        }
+        let Some(leaning) = &self.leaning else {
+            return work;
+        };
+        if leaning.symmetric {
+            return work;
+        }
+        let tops = [self.top_seat(from), self.top_seat(to)];
+        for e in 0..last {
+            let drags = [from, to].map(|state| Leaning::jumps(&state.side, e));
+            if drags == [[[0.0; 2]; PADS]; 2] {
+                continue;
+            }
+            let both = [(from, &tops[0]), (to, &tops[1])].map(|(state, top)| {
+                let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+                let held = Held {
+                    element: &self.elements[e],
+                    laws: &leaning.laws[e],
+                    a: &a,
+                    b: &b,
+                    inner: &state.inner[e],
+                    jumps: Leaning::jumps(&state.side, e),
+                };
+                let means = held.means(&leaning.tables);
+                let pads = leaning.decide(top, &held, &means, e);
+                (means, pads)
+            });
+            for k in 0..PADS {
+                let drag = |i: usize| match &both[i].1[k] {
+                    Pad::Leans { side, facing, .. } => {
+                        let slope = facing.axis_slope + side * facing.widening;
+                        let rides = if facing.from_top { tops[i].x } else { 0.0 };
+                        (-(drags[i][k][0] + slope * drags[i][k][1]), Some(rides))
+                    }
+                    _ => (0.0, None),
+                };
+                let ((before, ride), (after, ride_after)) = (drag(0), drag(1));
+                let carried = match (ride, ride_after) {
+                    (Some(before), Some(after)) => after - before,
+                    _ => 0.0,
+                };
+                let moved = both[1].0[k][0] - both[0].0[k][0] - carried;
+                work += 0.5 * (before + after) * moved;
+            }
+        }
+        work
+    }
+
+    /// Whether friction acts on it.
+    pub fn has_friction(&self) -> bool {
+        !self.is_symmetric()
+            && (self
+                .seats
+                .iter()
+                .any(|seat| matches!(seat.touch, Touch::Swivel { .. }))
+                || self
+                    .leaning
+                    .as_ref()
+                    .is_some_and(|leaning| leaning.walls.iter().any(|wall| wall.friction > 0.0)))
+    }
+
+    /// The same column with what it leans on loosened inside: where it leans over a stretch, only
+    /// the ends of that stretch still hold it, while all that pushes goes on pushing. Where its
+    /// tangent then has negative eigenvalues, a stretch that lies flat could buckle away from the
+    /// wall by itself. `None` with friction, where the tangent cannot be counted.
+    pub fn loosened(&self) -> Option<Column> {
+        let mut column = self.clone();
+        let leaning = column.leaning.as_mut()?;
+        leaning.loosened = true;
+        leaning.symmetric.then_some(column)
     }
 }

@@ -13,6 +13,7 @@ mod straight;
 mod support;
 mod wall;
 
+pub use assembly::SeatPress;
 pub use basis::GAUSS_POINTS;
 pub use element::{Element, ElementForms, Lever, PointLaw};
 pub use guided::{Contact, Leaning};

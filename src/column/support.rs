@@ -87,6 +87,7 @@ fn wall(setup: &Setup, guide: &Guide, scale: Scale) -> Wall {
         from_top: guide.fixed_to == FixedTo::Top,
         corner: length(half_wire),
         friction: guide.friction,
+        may_touch: guide.touching_allowed,
     }
 }
 

@@ -39,6 +39,8 @@ pub struct Wall {
     pub corner: f64,
     /// Coefficient of friction.
     pub friction: f64,
+    /// Whether it may be touched.
+    pub may_touch: bool,
 }
 
 /// Where the top seat is.
@@ -64,6 +66,8 @@ pub(super) struct Facing {
     pub friction: f64,
     /// Whether the place is on a corner.
     pub at_corner: bool,
+    /// Whether it rides on the top seat.
+    pub from_top: bool,
 }
 
 impl Wall {
@@ -82,6 +86,7 @@ impl Wall {
             from_top: false,
             corner: 0.0,
             friction: 0.0,
+            may_touch: true,
         }
     }
 
@@ -143,6 +148,7 @@ impl Wall {
             by_force_bend: sense * bend * compliance * compliance,
             friction: self.friction,
             at_corner: beyond > 0.0,
+            from_top: self.from_top,
         })
     }
 
@@ -206,6 +212,7 @@ mod tests {
             from_top: false,
             corner: 0.02,
             friction: 0.1,
+            may_touch: true,
         }
     }
 
