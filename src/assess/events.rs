@@ -3,7 +3,7 @@
 use super::observe::{Observer, Seen, Solved};
 use super::walk::BRACKET;
 use crate::column::Column;
-use crate::result::PathPoint;
+use crate::result::{Leaning, PathPoint};
 use crate::setup::{LimitKind, Loading, Setup};
 use crate::solve::{Newton, locate};
 use std::cell::RefCell;
@@ -24,6 +24,8 @@ pub(super) struct Event {
     pub reached: (f64, f64),
     /// Whether it happens in a jump.
     pub in_jump: bool,
+    /// Where it leans on guides then.
+    pub leaning: Vec<Leaning>,
 }
 
 /// What happens.
@@ -292,6 +294,7 @@ impl Track<'_> {
             place,
             reached: (point.deflection_m, point.force_n),
             in_jump: false,
+            leaning: super::leaned::stretches(self.column, &solved.state),
         }
     }
 }

@@ -1,6 +1,7 @@
 //! What the contact with guides comes to at a state.
 
 use crate::column::{Column, ColumnState, Contact, Peak, Station};
+use crate::result::Leaning;
 use crate::setup::Setup;
 
 /// Contact with the guides, in the column's units.
@@ -45,6 +46,23 @@ impl Leaned {
             drag: contacts.iter().map(|c| c.drag).sum(),
         }
     }
+}
+
+/// Where a column leans at `state`, for people.
+pub(super) fn stretches(column: &Column, state: &ColumnState) -> Vec<Leaning> {
+    let mut contacts = Vec::new();
+    column.contacts(state, &mut contacts);
+    let scale = column.scale;
+    contacts
+        .iter()
+        .map(|contact| Leaning {
+            from_m: (contact.place - 0.5 * contact.width) * scale.length,
+            to_m: (contact.place + 0.5 * contact.width) * scale.length,
+            side: contact.side,
+            force_n_per_m: contact.push / contact.width * scale.stiffness(),
+            at_corner: contact.at_corner,
+        })
+        .collect()
 }
 
 /// Stretches that lean without a gap on the same side: from where to where along the axis.

@@ -15,8 +15,10 @@ mod observe;
 mod planes;
 mod run;
 mod sensitivity;
+mod service;
 mod southwell;
 mod straight;
+mod stroke;
 mod summary;
 mod verdict;
 mod walk;
@@ -75,6 +77,7 @@ fn in_one_plane(setup: &Setup, file: &str) -> Assessment {
     let dead_load = jump::dead_load(setup, &imperfect);
     let snap = jump::snap(setup, &imperfect);
     let decided = verdict::decide(setup, &limits, &imperfect);
+    let guide_answer = service::guides(setup, &imperfect, &decided.limits);
     let imperfect_column = imperfect.summary(setup, &decided.limits);
     let mut warnings = setup.warnings.clone();
     warnings.extend(notes::notes(setup, &imperfect));
@@ -100,6 +103,9 @@ fn in_one_plane(setup: &Setup, file: &str) -> Assessment {
         limits: decided.limits,
         dead_load,
         snap,
+        guide_answer,
+        seat_loads: service::seats(setup, &imperfect),
+        stroke: stroke::stroke(setup, &imperfect),
         absolute_stability,
         support_sensitivity: sensitivity::of_supports(setup),
         stress_at_solid: limits::stress_at_solid(setup),

@@ -4,7 +4,7 @@ use super::events::{Event, EventKind, Track};
 use super::observe::{Observer, Seen};
 use super::southwell;
 use super::walk::{PathEnd, Reach, failure, walk};
-use crate::column::{Buckling, Column, Deviations, Idealisation};
+use crate::column::{Buckling, Column, Deviations, Idealisation, StraightScan};
 use crate::result::{Failure, Southwell};
 use crate::setup::{Loading, Orientation, Setup};
 use crate::solve::{Newton, System, start};
@@ -36,6 +36,37 @@ pub(super) struct Run {
 }
 
 impl Run {
+    /// The column that is followed.
+    pub fn column(setup: &Setup, elements: usize, orientation: Orientation) -> Column {
+        let mut perfect = Column::of_setup(setup, Idealisation::AsBuilt, elements, None);
+        let buckling = StraightScan::new(&mut perfect).buckling();
+        Run::loaded_column(setup, elements, orientation, buckling.as_ref())
+    }
+
+    fn loaded_column(
+        setup: &Setup,
+        elements: usize,
+        orientation: Orientation,
+        perfect: Option<&Buckling>,
+    ) -> Column {
+        let deviations = Deviations {
+            sizes: &setup.imperfections,
+            orientation,
+            mode: perfect.map(|buckling| &buckling.mode),
+        };
+        let column = Column::of_setup(setup, Idealisation::AsBuilt, elements, Some(&deviations));
+        match perfect {
+            Some(buckling) => {
+                let scale = buckling
+                    .load
+                    .max(SMALLEST_LOAD_SCALE)
+                    .min(column.load_scale());
+                column.with_load_scale(scale)
+            }
+            None => column,
+        }
+    }
+
     /// Follows the path on one mesh. `perfect` is the critical state of the perfect column as built
     /// on the same mesh.
     pub fn new(
@@ -45,20 +76,7 @@ impl Run {
         perfect: Option<&Buckling>,
         reach: Reach,
     ) -> Self {
-        let deviations = Deviations {
-            sizes: &setup.imperfections,
-            orientation,
-            mode: perfect.map(|buckling| &buckling.mode),
-        };
-        let mut column =
-            Column::of_setup(setup, Idealisation::AsBuilt, elements, Some(&deviations));
-        if let Some(buckling) = perfect {
-            let scale = buckling
-                .load
-                .max(SMALLEST_LOAD_SCALE)
-                .min(column.load_scale());
-            column = column.with_load_scale(scale);
-        }
+        let mut column = Run::loaded_column(setup, elements, orientation, perfect);
         let mut newton = Newton::new(&column);
         let guess = column.first_guess();
         let mut run = Run {

@@ -1,8 +1,8 @@
 //! The answer to one case.
 
 use super::{
-    DutyEcho, EffectiveEndConstant, GuideEcho, ImperfectionEcho, Path, PlaneAnswer, Sensitivities,
-    SpringEcho, SupportsEcho,
+    DutyEcho, EffectiveEndConstant, GuideAnswer, GuideEcho, ImperfectionEcho, Path, PlaneAnswer,
+    SeatLoad, Sensitivities, SpringEcho, Stroke, SupportsEcho,
 };
 use crate::setup::LimitKind;
 use crate::units::{Joule, Metre, Newton, Pascal};
@@ -322,6 +322,14 @@ pub struct Assessment {
     pub dead_load: Option<DeadLoad>,
     /// Where a set deflection is lost; `null` where it is not, or under a dead load.
     pub snap: Option<Snap>,
+    /// What the guides do; `null` without guides, or where there is no path.
+    pub guide_answer: Option<GuideAnswer>,
+    /// What the bottom and the top seat bear; `null` where the path does not reach the installed
+    /// deflection.
+    pub seat_loads: Option<[SeatLoad; 2]>,
+    /// The stroke with friction; `null` without friction, or where the path does not lead to the
+    /// largest working deflection.
+    pub stroke: Option<Stroke>,
     /// Absolute stability.
     pub absolute_stability: AbsoluteStability,
     /// How the critical deflection hangs on the supports; `null` where nothing of them can change.

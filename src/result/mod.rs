@@ -3,10 +3,12 @@
 //! "does not apply".
 
 mod assessment;
+mod contact;
 mod echo;
 mod ends;
 mod outcome;
 mod path;
+mod stroke;
 mod wires;
 
 pub use assessment::{
@@ -14,6 +16,7 @@ pub use assessment::{
     Failure, ImperfectColumn, Limit, Measure, Side, Snap, Southwell, StraightColumn, StressAtSolid,
     Verdict,
 };
+pub use contact::{GuideAnswer, Leaning, SeatLoad};
 pub use echo::{
     DutyEcho, ForceLawPoint, GuideEcho, ImperfectionEcho, LateralEcho, LinkEcho, MomentLawPoint,
     MotionEcho, MotionPoint, SpringEcho, SupportEcho, SupportsEcho,
@@ -21,6 +24,7 @@ pub use echo::{
 pub use ends::{EffectiveEndConstant, PlaneAnswer, Sensitivities, SupportSensitivity};
 pub use outcome::{Mistake, Outcome, Refusal};
 pub use path::{Mark, Path, PathPoint};
+pub use stroke::Stroke;
 pub use wires::{WireMaterial, wire_materials};
 
 pub use crate::setup::LimitKind;

@@ -20,7 +20,7 @@ pub use event::{Located, locate};
 pub use factored::Factored;
 pub use general::GeneralFactor;
 pub use newton::{Newton, NotConverged};
-pub use path::{Outcome, PathPoint, PathSettings, Walk, follow, start};
+pub use path::{Outcome, PathPoint, PathSettings, Walk, follow, start, turn_back};
 pub use symmetric::SymmetricFactor;
 pub use system::{Assembled, System};
 pub use tridiagonal::{BlockTridiagonal, Factorisation};

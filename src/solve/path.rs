@@ -238,6 +238,20 @@ pub fn start<const B: usize, const I: usize>(
     Ok(complete(system, newton, state, load, &row, d))
 }
 
+/// The same point with its direction turned round, to go back from: what friction held up to now
+/// sticks first.
+pub fn turn_back<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    point: &PathPoint<B, I>,
+) -> PathPoint<B, I> {
+    system.depart(&point.state);
+    let weight = -1.0 / point.state.nodes.len() as f64;
+    let row: Vec<SVector<f64, B>> = point.direction.nodes.iter().map(|t| t * weight).collect();
+    let d = -point.load_direction / system.load_scale().powi(2);
+    complete(system, newton, point.state.clone(), point.load, &row, d)
+}
+
 fn inner_product<const B: usize, const I: usize>(
     system: &impl System<B, I>,
     a: &PathPoint<B, I>,
