@@ -138,7 +138,7 @@ impl Observer {
                 guide_places: guide.places,
                 guide_longest_m: guide.longest * scale.length,
                 guide_corner_force_n: guide.at_corners * scale.force,
-                guide_friction_n: -friction,
+                guide_friction_n: friction,
                 rate_n_per_m: force_along / travel_along,
                 wire_stress_pa: wire_stress(setup, column, &stations),
                 unstable_set_deflection: solved.negatives

@@ -2,7 +2,8 @@
 
 use super::element::{Element, INNER, PointLaw};
 use super::layout::{Column, ColumnState};
-use super::lean::{Condensed, Held, PAD_UNKNOWNS, PADS, Pad, PadTables, decide};
+use super::lean::{Held, PADS, PadTables};
+use super::pads::{Condensed, PAD_UNKNOWNS, Pad, decide};
 use super::profile::{Peak, Station};
 use super::seat::Touch;
 use super::wall::{TopSeat, Wall};

@@ -33,43 +33,12 @@
 
 use super::basis::{FUNCTIONS, GAUSS_POINTS, GAUSS_WEIGHT, Tables, values};
 use super::element::{Element, ElementForms, INNER, PointLaw};
-use super::wall::{Facing, TopSeat, Wall};
-use crate::solve::SymmetricFactor;
-use nalgebra::{Matrix3, SMatrix, SVector, Vector3};
+use nalgebra::{SVector, Vector3};
 
 /// Pads in an element.
 pub(super) const PADS: usize = 4;
-/// Unknowns of the pads of an element: (J_x, J_y) of each.
-pub(super) const PAD_UNKNOWNS: usize = 2 * PADS;
 /// Points of quadrature of h: two a pad.
 const POINTS: usize = 2 * PADS;
-/// Reduced outer unknowns: x_B − x_A, y_B − y_A, θ_A, θ_B, x_B, y_B.
-const OUTER: usize = 6;
-/// Friction holds up to this share above its limit, against round-off.
-const HOLDS: f64 = 1.0 + 1e-9;
-
-/// What a pad does.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub(super) enum Pad {
-    /// It leans on nothing.
-    Away,
-    /// It is pushed with what the state says, and not held.
-    Pushed,
-    /// It leans on the wall at this side (+1: at +y).
-    Leans {
-        side: f64,
-        facing: Facing,
-        motion: Motion,
-    },
-}
-
-/// How a leaning pad moves along the wall.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub(super) enum Motion {
-    /// Friction along the force jump: s μ.
-    Slips(f64),
-    Sticks,
-}
 
 /// Quadrature of h in an element: two-point Gauss in each pad.
 #[derive(Clone, Debug)]
@@ -120,11 +89,12 @@ pub(super) struct PadForms {
     pub forms: ElementForms,
     /// Mean positions X_k.
     pub means: [[f64; 2]; PADS],
-    /// ∂X_k/∂θ, ∂X_k/∂F_A (xx, xy, yy).
-    turning: [[[f64; 2]; FUNCTIONS]; PADS],
-    stretch: [[f64; 3]; PADS],
+    /// ∂X_k/∂θ.
+    pub turning: [[[f64; 2]; FUNCTIONS]; PADS],
+    /// ∂X_k/∂F_A (xx, xy, yy).
+    pub stretch: [[f64; 3]; PADS],
     /// ∂X_k/∂J_l, l ≥ k (xx, xy, yy).
-    mutual: [[[f64; 3]; PADS]; PADS],
+    pub mutual: [[[f64; 3]; PADS]; PADS],
 }
 
 impl Held<'_> {
@@ -345,302 +315,171 @@ impl Held<'_> {
     }
 }
 
-/// What a leaning element adds to the chain, its own unknowns eliminated, and what recovers them.
-#[derive(Clone, Debug)]
-pub(super) struct Condensed {
-    /// Residual at A and B.
-    pub residual: [Vector3<f64>; 2],
-    /// Blocks AA, AB, BA, BB.
-    pub blocks: [Matrix3<f64>; 4],
-    /// Of [`super::element::ElementForms::inner_right`], as for a plain element.
-    pub inner_answers: SMatrix<f64, 5, INNER>,
-    /// The inner unknowns' answers to the pads' unknowns, one a row.
-    pub to_pads: SMatrix<f64, PAD_UNKNOWNS, INNER>,
-    /// The pads' answers to the reduced outer unknowns and the residual, one a column.
-    pub pad_answers: SMatrix<f64, PAD_UNKNOWNS, 7>,
-    /// Negative eigenvalues beyond those of a stable state; unsymmetric: modulo 2.
-    pub negatives: i64,
-    symmetric: bool,
-}
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::column::Lever;
+    use proptest::prelude::*;
 
-impl PadForms {
-    /// Eliminates the element's inner unknowns and its pads'. `was` is where each pad was along x,
-    /// `forces` the force at either end.
-    pub fn condense(
-        mut self,
-        pads: &[Pad; PADS],
-        jumps: &[[f64; 2]; PADS],
-        was: &[f64],
-        forces: [[f64; 2]; 2],
-        symmetric: bool,
-    ) -> Condensed {
-        type Pads = SMatrix<f64, PAD_UNKNOWNS, PAD_UNKNOWNS>;
-        let mut own = Pads::zeros();
-        let mut residual = SVector::<f64, PAD_UNKNOWNS>::zeros();
-        // Columns: what an unknown does (J = Σ doing·p). Rows: what its equation looks at.
-        let mut doing = [[0.0; 2]; PAD_UNKNOWNS];
-        let mut looking = [[0.0; 2]; PAD_UNKNOWNS];
-        let mut by_force = [0.0; PAD_UNKNOWNS];
-        // Negative eigenvalues, or the parity of them, that the pads have in every stable state.
-        let mut usual = if symmetric { PAD_UNKNOWNS as i64 } else { 0 };
-        for (k, pad) in pads.iter().enumerate() {
-            let (first, second) = (2 * k, 2 * k + 1);
-            match *pad {
-                Pad::Away | Pad::Pushed => {
-                    let sign = if symmetric { -1.0 } else { 1.0 };
-                    own[(first, first)] = sign;
-                    own[(second, second)] = sign;
-                }
-                Pad::Leans {
-                    side,
-                    facing,
-                    motion,
-                } => {
-                    let [x, y] = self.means[k];
-                    let slope = facing.axis_slope + side * facing.widening;
-                    let push = side * jumps[k][1];
-                    let gap = y - facing.axis - side * facing.clearance;
-                    self.forms.gap[0] -= push * facing.by_force;
-                    self.forms.compliance[0] -= push * facing.by_force_bend;
-                    if symmetric {
-                        doing[first] = [-slope, 1.0];
-                        looking[first] = [-slope, 1.0];
-                        residual[first] = gap;
-                        by_force[first] = -side * facing.by_force;
-                        own[(second, second)] = -1.0;
-                        continue;
-                    }
-                    doing[first] = [1.0, 0.0];
-                    doing[second] = [0.0, 1.0];
-                    looking[second] = [-slope, 1.0];
-                    residual[second] = gap;
-                    by_force[second] = -side * facing.by_force;
-                    match motion {
-                        Motion::Slips(friction) => {
-                            looking[first] = [side * facing.widening_bend * jumps[k][1], 0.0];
-                            own[(first, first)] = 1.0;
-                            own[(first, second)] = slope - friction * side;
-                            residual[first] = jumps[k][0] + slope * jumps[k][1] - friction * push;
-                            usual += 1;
-                        }
-                        Motion::Sticks => {
-                            looking[first] = [1.0, 0.0];
-                            residual[first] = x - was[k];
-                        }
-                    }
-                }
-            }
-        }
-        let product = |v: [f64; 2], m: &[f64; 3], w: [f64; 2]| {
-            v[0] * (m[0] * w[0] + m[1] * w[1]) + v[1] * (m[1] * w[0] + m[2] * w[1])
+    fn element() -> Element {
+        let law = |i: usize| PointLaw {
+            bending: 1.0 + 0.1 * i as f64,
+            axial_compliance: 0.03,
+            shear_compliance: 0.01 + 0.002 * i as f64,
+            natural_curvature: 0.3 - 0.05 * i as f64,
         };
-        // Pads against inner (c, F), both ways; against the reduced outer unknowns, both ways.
-        let mut inner_columns = SMatrix::<f64, PAD_UNKNOWNS, INNER>::zeros();
-        let mut inner_rows = SMatrix::<f64, PAD_UNKNOWNS, INNER>::zeros();
-        let mut outer_columns = SMatrix::<f64, PAD_UNKNOWNS, OUTER>::zeros();
-        let mut outer_rows = SMatrix::<f64, PAD_UNKNOWNS, OUTER>::zeros();
-        for p in 0..PAD_UNKNOWNS {
-            let k = p / 2;
-            for (vector, inner, outer) in [
-                (doing[p], &mut inner_columns, &mut outer_columns),
-                (looking[p], &mut inner_rows, &mut outer_rows),
-            ] {
-                let turn = |i: usize| {
-                    vector[0] * self.turning[k][i][0] + vector[1] * self.turning[k][i][1]
-                };
-                for i in 0..3 {
-                    inner[(p, i)] = turn(2 + i);
-                }
-                let s = &self.stretch[k];
-                inner[(p, 3)] = vector[0] * s[0] + vector[1] * s[1];
-                inner[(p, 4)] = vector[0] * s[1] + vector[1] * s[2];
-                outer[(p, 2)] = turn(0);
-                outer[(p, 3)] = turn(1);
-                outer[(p, 4)] = vector[0];
-                outer[(p, 5)] = vector[1];
-            }
-            inner_rows[(p, 3)] += by_force[p];
-            // By the energy of the growth, the push acts on F_x the same way.
-            inner_columns[(p, 3)] += by_force[p];
-            for other in 0..PAD_UNKNOWNS {
-                own[(p, other)] += product(looking[p], &self.mutual[k][other / 2], doing[other]);
-            }
+        Element {
+            length: 0.4,
+            points: [law(0), law(1), law(2), law(3)],
+            from_a: Lever {
+                along: 0.1,
+                across: -0.05,
+            },
+            to_b: Lever {
+                along: -0.07,
+                across: 0.03,
+            },
         }
-        let inner_factor = SymmetricFactor::new(&self.forms.inner_matrix());
-        let right = self.forms.inner_right();
-        let mut answers = right;
-        inner_factor.solve_rows(&mut answers);
-        let mut to_pads = inner_columns;
-        inner_factor.solve_rows(&mut to_pads);
-        own -= inner_rows * to_pads.transpose();
-        // Columns: outer (dx, dy, θ_A, θ_B: through the inner ones too; x_B, y_B), and residual.
-        let mut seen = SMatrix::<f64, PAD_UNKNOWNS, 7>::zeros();
-        let through = inner_rows * answers.transpose();
-        for p in 0..PAD_UNKNOWNS {
-            for column in 0..OUTER {
-                seen[(p, column)] = outer_rows[(p, column)]
-                    - if column < 4 {
-                        through[(p, column)]
-                    } else {
-                        0.0
+    }
+
+    /// Order of the unknowns: A (3), B (3), inner (5), J (8).
+    fn held<'a>(
+        element: &'a Element,
+        laws: &'a [PointLaw; POINTS],
+        parts: &'a (Vector3<f64>, Vector3<f64>, SVector<f64, INNER>),
+        u: &[f64],
+    ) -> Held<'a> {
+        Held {
+            element,
+            laws,
+            a: &parts.0,
+            b: &parts.1,
+            inner: &parts.2,
+            jumps: std::array::from_fn(|k| [u[11 + 2 * k], u[12 + 2 * k]]),
+        }
+    }
+
+    fn parts(u: &[f64]) -> (Vector3<f64>, Vector3<f64>, SVector<f64, INNER>) {
+        (
+            Vector3::new(u[0], u[1], u[2]),
+            Vector3::new(u[3], u[4], u[5]),
+            SVector::from_column_slice(&u[6..11]),
+        )
+    }
+
+    /// Π of the module's text, by its own quadrature.
+    fn energy(u: &[f64]) -> f64 {
+        let (element, tables, plain) = (element(), PadTables::new(), Tables::new());
+        let (laws, parts) = (tables.laws(&element), parts(u));
+        let held = held(&element, &laws, &parts, u);
+        let q = Element::rotations(held.a, held.b, held.inner);
+        let half = 0.5 * element.length;
+        let mut energy = u[9] * (u[3] - u[0]) + u[10] * (u[4] - u[1]);
+        for g in 0..GAUSS_POINTS {
+            let turn: f64 = plain.slopes[g].iter().zip(q).map(|(n, q)| n * q).sum();
+            let bent = turn / half - element.points[g].natural_curvature;
+            energy += GAUSS_WEIGHT[g] * half * 0.5 * element.points[g].bending * bent * bent;
+        }
+        for (g, (sin, cos)) in held.directions(&tables).into_iter().enumerate() {
+            let (fx, fy) = held.force(&tables, g);
+            let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
+            energy -= element.length / POINTS as f64
+                * (axial
+                    + 0.5 * laws[g].axial_compliance * axial * axial
+                    + 0.5 * laws[g].shear_compliance * shear * shear);
+        }
+        let reach = |lever: &Lever, angle: f64| {
+            let (sin, cos) = angle.sin_cos();
+            [
+                lever.along * cos - lever.across * sin,
+                lever.along * sin + lever.across * cos,
+            ]
+        };
+        let (start, end) = (reach(&element.from_a, u[2]), reach(&element.to_b, u[5]));
+        let last = held.end_force();
+        energy -= u[9] * start[0] + u[10] * start[1] + last[0] * end[0] + last[1] * end[1];
+        for k in 0..PADS {
+            energy += held.jumps[k][0] * u[3] + held.jumps[k][1] * u[4];
+        }
+        energy
+    }
+
+    fn all(u: &[f64]) -> PadForms {
+        let (element, tables) = (element(), PadTables::new());
+        let (laws, parts) = (tables.laws(&element), parts(u));
+        held(&element, &laws, &parts, u).forms(&Tables::new(), &tables, [true; PADS])
+    }
+
+    fn gradient(u: &[f64]) -> Vec<f64> {
+        let forms = all(u);
+        let f = &forms.forms;
+        let jumps = |axis: usize| -> f64 { (0..PADS).map(|k| u[11 + 2 * k + axis]).sum() };
+        let mut g = vec![
+            -u[9],
+            -u[10],
+            f.moment[0],
+            u[9] + jumps(0),
+            u[10] + jumps(1),
+            f.moment[1],
+            f.moment[2],
+            f.moment[3],
+            f.moment[4],
+            f.gap[0],
+            f.gap[1],
+        ];
+        g.extend(forms.means.iter().flatten());
+        g
+    }
+
+    proptest! {
+        #![proptest_config(ProptestConfig::with_cases(32))]
+        /// Every derivative against fourth-order differences of what it derives from.
+        #[test]
+        fn residual_is_the_energys_and_tangent_the_residuals(
+            u in prop::collection::vec(-1.0..1.0_f64, 19),
+        ) {
+            let step = 2e-3;
+            let shifted = |k: usize, by: f64| { let mut v = u.clone(); v[k] += by; v };
+            let exact = gradient(&u);
+            let forms = all(&u);
+            for k in 0..19 {
+                let e = |by: f64| energy(&shifted(k, by));
+                let difference =
+                    (8.0 * (e(step) - e(-step)) - e(2.0 * step) + e(-2.0 * step)) / (12.0 * step);
+                prop_assert!((difference - exact[k]).abs() < 2e-9, "{k}: {difference} {}", exact[k]);
+            }
+            // The pads' own second derivatives: columns of J.
+            for (l, axis) in (0..PADS).flat_map(|l| [(l, 0), (l, 1)]) {
+                let column = 11 + 2 * l + axis;
+                let g = |by: f64| gradient(&shifted(column, by));
+                let (p, m, pp, mm) = (g(step), g(-step), g(2.0 * step), g(-2.0 * step));
+                for row in 0..19 {
+                    let difference = (8.0 * (p[row] - m[row]) - pp[row] + mm[row]) / (12.0 * step);
+                    let turn = |i: usize| forms.turning[l][i][axis];
+                    let exact = match row {
+                        2 => turn(0),
+                        3 | 4 => f64::from(row - 3 == axis),
+                        5 => turn(1),
+                        6..=8 => turn(row - 4),
+                        9 | 10 => forms.stretch[l][row - 9 + axis],
+                        11.. => forms.mutual[(row - 11) / 2][l][(row - 11) % 2 + axis],
+                        _ => 0.0,
                     };
-            }
-            seen[(p, 6)] = residual[p] - through[(p, 4)];
-        }
-        let (pad_answers, pad_negatives) = if symmetric {
-            let factor = SymmetricFactor::new(&own);
-            let mut rows = seen.transpose();
-            factor.solve_rows(&mut rows);
-            (rows.transpose(), i64::from(factor.negatives))
-        } else {
-            let factor = own.lu();
-            let mut columns = seen;
-            factor.solve_mut(&mut columns);
-            (columns, i64::from(factor.determinant() < 0.0))
-        };
-        // Condensed matrix and residual of the reduced unknowns.
-        let mut from_pads = outer_columns;
-        let through = to_pads * right.transpose();
-        for p in 0..PAD_UNKNOWNS {
-            for column in 0..4 {
-                from_pads[(p, column)] -= through[(p, column)];
-            }
-        }
-        let by_pads = from_pads.tr_mul(&pad_answers);
-        let by_inner = right * answers.transpose();
-        let mut matrix = SMatrix::<f64, OUTER, OUTER>::zeros();
-        let [first, last] = forces;
-        let mut reduced = SVector::<f64, OUTER>::from([
-            first[0],
-            first[1],
-            self.forms.moment[0],
-            self.forms.moment[1],
-            last[0] - first[0],
-            last[1] - first[1],
-        ]);
-        for i in 0..OUTER {
-            for j in 0..OUTER {
-                if i < 4 && j < 4 {
-                    matrix[(i, j)] -= by_inner[(i, j)];
+                    prop_assert!((difference - exact).abs() < 1e-8, "{row} {column}: {difference} {exact}");
                 }
-                matrix[(i, j)] -= by_pads[(i, j)];
             }
-            if i < 4 {
-                reduced[i] -= by_inner[(i, 4)];
-            }
-            reduced[i] -= by_pads[(i, 6)];
-        }
-        for i in 0..2 {
-            for j in 0..2 {
-                matrix[(2 + i, 2 + j)] += self.forms.bending[i.max(j)][i.min(j)];
-            }
-        }
-        // From (x_A, y_A, θ_A, x_B, y_B, θ_B) to the reduced unknowns.
-        let mut reduce = SMatrix::<f64, OUTER, 6>::zeros();
-        for axis in 0..2 {
-            reduce[(axis, axis)] = -1.0;
-            reduce[(axis, 3 + axis)] = 1.0;
-            reduce[(4 + axis, 3 + axis)] = 1.0;
-        }
-        reduce[(2, 2)] = 1.0;
-        reduce[(3, 5)] = 1.0;
-        let whole = reduce.tr_mul(&(matrix * reduce));
-        let residual = reduce.tr_mul(&reduced);
-        Condensed {
-            residual: [
-                residual.fixed_rows::<3>(0).into_owned(),
-                residual.fixed_rows::<3>(3).into_owned(),
-            ],
-            blocks: [(0, 0), (0, 3), (3, 0), (3, 3)]
-                .map(|at| whole.fixed_view::<3, 3>(at.0, at.1).into_owned()),
-            inner_answers: answers,
-            to_pads,
-            pad_answers,
-            negatives: i64::from(inner_factor.negatives) - 2 + pad_negatives - usual,
-            symmetric,
         }
     }
-}
 
-impl Condensed {
-    /// Steps of the element's inner unknowns and of its pads' J for steps of its ends.
-    pub fn recover(
-        &self,
-        pads: &[Pad; PADS],
-        a: &Vector3<f64>,
-        b: &Vector3<f64>,
-        residual: f64,
-    ) -> (SVector<f64, INNER>, [[f64; 2]; PADS]) {
-        let outer = [b[0] - a[0], b[1] - a[1], a[2], b[2], b[0], b[1], residual];
-        let pushed = -(self.pad_answers * SVector::from(outer));
-        let inner = -(self.inner_answers.tr_mul(&SVector::from([
-            outer[0], outer[1], outer[2], outer[3], residual,
-        ])) + self.to_pads.tr_mul(&pushed));
-        let mut jumps = [[0.0; 2]; PADS];
-        for (k, pad) in pads.iter().enumerate() {
-            if let Pad::Leans { side, facing, .. } = pad {
-                jumps[k] = if self.symmetric {
-                    let slope = facing.axis_slope + side * facing.widening;
-                    [-slope * pushed[2 * k], pushed[2 * k]]
-                } else {
-                    [pushed[2 * k], pushed[2 * k + 1]]
-                };
-            }
+    /// The mean positions alone are those of the full derivatives.
+    #[test]
+    fn means_agree() {
+        let u: Vec<f64> = (0..19).map(|i| (1.3 * f64::from(i)).sin()).collect();
+        let (element, tables) = (element(), PadTables::new());
+        let (laws, parts) = (tables.laws(&element), parts(&u));
+        let means = held(&element, &laws, &parts, &u).means(&tables);
+        for (one, other) in means.iter().flatten().zip(all(&u).means.iter().flatten()) {
+            approx::assert_abs_diff_eq!(*one, *other, epsilon = 1e-13);
         }
-        (inner, jumps)
     }
-}
-
-/// What the pads of an element do at their mean positions, from what they did and where.
-pub(super) fn decide(
-    walls: &[Wall],
-    top: &TopSeat,
-    held: &Held<'_>,
-    means: &[[f64; 2]; PADS],
-    was: &[f64],
-    search: f64,
-    symmetric: bool,
-) -> [Pad; PADS] {
-    let compliance = held.element.points[0].axial_compliance;
-    std::array::from_fn(|k| {
-        let ([x, y], [jx, jy]) = (means[k], held.jumps[k]);
-        let facings = walls
-            .iter()
-            .filter_map(|wall| wall.face(x, held.inner[3], compliance, top));
-        let nearest = facings.min_by(|a, b| {
-            let room = |f: &Facing| f.clearance - (y - f.axis).abs();
-            room(a).total_cmp(&room(b))
-        });
-        let Some(facing) = nearest else {
-            return Pad::Away;
-        };
-        let aside = y - facing.axis;
-        let side = if jy != 0.0 {
-            jy.signum()
-        } else {
-            aside.signum()
-        };
-        let gap = facing.clearance - side * aside;
-        let push = side * jy;
-        if push - search * gap <= 0.0 {
-            return Pad::Away;
-        }
-        let slope = facing.axis_slope + side * facing.widening;
-        let motion = if symmetric || facing.friction == 0.0 {
-            Motion::Slips(0.0)
-        } else {
-            let drag = jx + slope * jy;
-            let trial = drag + search * (x - was[k]);
-            if trial.abs() <= facing.friction * push * HOLDS {
-                Motion::Sticks
-            } else {
-                Motion::Slips(trial.signum() * facing.friction)
-            }
-        };
-        Pad::Leans {
-            side,
-            facing,
-            motion,
-        }
-    })
 }

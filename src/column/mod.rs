@@ -4,18 +4,20 @@
 mod assembly;
 mod basis;
 mod element;
+mod ends;
 mod guided;
 mod layout;
 mod lean;
+mod pads;
 mod profile;
 mod seat;
 mod straight;
 mod support;
 mod wall;
 
-pub use assembly::SeatPress;
 pub use basis::GAUSS_POINTS;
 pub use element::{Element, ElementForms, Lever, PointLaw};
+pub use ends::SeatPress;
 pub use guided::{Contact, Leaning};
 pub use layout::{Column, ColumnState, EndLaws, Hold, NaturalShape, NodeLoad, Scale};
 pub use profile::{Peak, Station};

@@ -55,7 +55,8 @@ pub struct PathPoint {
     pub guide_longest_m: Metre,
     /// Force with which it leans on the corner at the end of a guide, N.
     pub guide_corner_force_n: Newton,
-    /// Axial force that friction on the guides takes: at the top less than at the bottom, N.
+    /// Axial force that friction on the guides takes: at the top more than at the bottom, N; negative
+    /// on the way back.
     pub guide_friction_n: Newton,
     /// Slope dP/ds of the path, N/m (the machine's travel s).
     pub rate_n_per_m: NewtonPerMetre,

@@ -1,0 +1,289 @@
+//! The ends of a column at a state: where its seats put them, what they carry, and whether a flat end
+//! is flush or on its edge, a swivel sticks or turns.
+
+use super::element::ElementForms;
+use super::guided::Leaning;
+use super::layout::{Column, ColumnState, Hold};
+use super::lean::{Held, PADS};
+use super::seat::{Pose, Touch};
+use super::wall::TopSeat;
+use crate::solve::Assembled;
+use nalgebra::{Matrix3, Vector3};
+
+/// Weight of a rotation against a moment in the search for which way a swivel turns, EI/L.
+const SWIVEL_SEARCH: f64 = 1e2;
+
+/// How an end presses on its seat, in the column's units.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SeatPress {
+    /// Force across the seat; pressing positive.
+    pub press: f64,
+    /// Force of the seat on the end along the seat, towards +y.
+    pub thrust: f64,
+    /// Where the force line passes the seat plane, from its centre towards +y.
+    pub line: f64,
+    /// Rotation of a flat end out of its seat, rad; 0 where it is flush.
+    pub turned: f64,
+}
+
+/// An end at a state: where it is, and what its seat makes of its rotation.
+pub(super) struct End {
+    pub pose: Pose,
+    /// What the column does to it: F_x, F_y, M (internal, as in the residual).
+    actions: Vector3<f64>,
+    pub turning: Turning,
+    /// The edge it stands on, if it does.
+    pub standing: Option<f64>,
+}
+
+/// What a seat makes of the rotation of an end.
+#[derive(Clone, Copy)]
+pub(super) enum Turning {
+    /// What its law says.
+    ByLaw,
+    /// It stands on an edge, free to turn about it.
+    Stands,
+    /// It is held at an angle.
+    HeldAt(f64),
+    /// It turns against friction: `factor` times |F_x| resists.
+    Drags { factor: f64 },
+}
+
+impl Column {
+    /// The pose of a node.
+    pub(super) fn pose_at(&self, state: &ColumnState, node: usize) -> Vector3<f64> {
+        let last = self.elements.len();
+        let which = usize::from(node == last);
+        if (node != 0 && node != last) || self.seats[which].is_plain() {
+            return state.nodes[node];
+        }
+        let q = &state.nodes[node];
+        let seat = &self.seats[which];
+        let turned = self.turned(state, which);
+        seat.pose(q, (turned != 0.0).then(|| (turned, seat.edge_side(turned))))
+            .at
+    }
+
+    /// How far an end is turned from where its law has it at rest.
+    pub(super) fn turned(&self, state: &ColumnState, which: usize) -> f64 {
+        let node = which * self.elements.len();
+        let laws = if which == 0 { &self.bottom } else { &self.top };
+        match laws.0[2] {
+            Hold::Held(rest) => state.nodes[node][2] - rest,
+            _ => 0.0,
+        }
+    }
+
+    /// Where the top seat is.
+    pub(super) fn top_seat(&self, state: &ColumnState) -> TopSeat {
+        let x = state.nodes[self.elements.len()][0];
+        let (y, slope) = self.seats[1].stands(x);
+        TopSeat { x, y, slope }
+    }
+
+    /// The end's pose, what the column does to it, and how its seat answers.
+    pub(super) fn end(&self, state: &ColumnState, which: usize) -> End {
+        let last = self.elements.len();
+        let seat = &self.seats[which];
+        let q = &state.nodes[which * last];
+        let mut end = End {
+            pose: seat.pose(q, None),
+            actions: Vector3::zeros(),
+            turning: Turning::ByLaw,
+            standing: None,
+        };
+        if matches!(seat.touch, Touch::Joined) && seat.motion.is_none() {
+            return end;
+        }
+        let turned = self.turned(state, which);
+        if let Some(side) = self.standing[which] {
+            end.pose = seat.pose(q, Some((turned, side)));
+        }
+        end.actions = self.actions_on(state, which, &end.pose.at);
+        match seat.touch {
+            Touch::Flat { .. } => self.flat(state, which, turned, &mut end),
+            Touch::Swivel { reach } => {
+                let (moment, force) = (end.actions[2], end.actions[0]);
+                let holds = reach * force.abs();
+                let moved = q[2] - self.end_was[which];
+                let trial = SWIVEL_SEARCH * moved - moment;
+                end.turning = if trial.abs() <= holds * (1.0 + 1e-9) && holds > 0.0 {
+                    Turning::HeldAt(self.end_was[which])
+                } else {
+                    Turning::Drags {
+                        factor: trial.signum() * reach * force.signum(),
+                    }
+                };
+            }
+            _ => {}
+        }
+        end
+    }
+
+    /// A flat end: flush, or standing on an edge.
+    fn flat(&self, state: &ColumnState, which: usize, turned: f64, end: &mut End) {
+        let seat = &self.seats[which];
+        let q = &state.nodes[which * self.elements.len()];
+        if let Some(side) = self.standing[which] {
+            if seat.edge_side(turned) == side {
+                end.turning = Turning::Stands;
+                end.standing = Some(side);
+            } else {
+                // Turned through flush: it sits down.
+                end.turning = Turning::HeldAt(q[2] - turned);
+            }
+            return;
+        }
+        for side in [1.0, -1.0] {
+            let pose = seat.pose(q, Some((turned, side)));
+            // Moment that the seat can oppose on this edge, and which way it would turn the end.
+            let most = -(pose.by[(0, 2)] * end.actions[0] + pose.by[(1, 2)] * end.actions[1]);
+            let way = if which == 0 { -side } else { side };
+            if end.actions[2] * way > (most * way).max(0.0) * (1.0 + 1e-12) {
+                end.pose = pose;
+                end.turning = Turning::Stands;
+                end.standing = Some(side);
+            }
+        }
+    }
+
+    /// What the column does to an end that is at `pose`: F_x, F_y and M of the residual.
+    fn actions_on(&self, state: &ColumnState, which: usize, pose: &Vector3<f64>) -> Vector3<f64> {
+        let last = self.elements.len();
+        let (e, node) = if which == 0 {
+            (0, 1)
+        } else {
+            (last - 1, last - 1)
+        };
+        let other = if last == 1 {
+            self.pose_at(state, 1 - which)
+        } else {
+            state.nodes[node]
+        };
+        let (a, b) = if which == 0 {
+            (pose, &other)
+        } else {
+            (&other, pose)
+        };
+        let (force, moments) = self.element_ends(state, e, a, b);
+        if which == 0 {
+            Vector3::new(-force[0][0], -force[0][1], moments[0])
+        } else {
+            Vector3::new(force[1][0], force[1][1], moments[1])
+        }
+    }
+
+    /// Force at both ends of an element and its two end moments.
+    fn element_ends(
+        &self,
+        state: &ColumnState,
+        e: usize,
+        a: &Vector3<f64>,
+        b: &Vector3<f64>,
+    ) -> ([[f64; 2]; 2], [f64; 2]) {
+        let (element, inner) = (&self.elements[e], &state.inner[e]);
+        let force = [inner[3], inner[4]];
+        if let Some(leaning) = &self.leaning {
+            let jumps = Leaning::jumps(&state.side, e);
+            if jumps != [[0.0; 2]; PADS] {
+                let held = Held {
+                    element,
+                    laws: &leaning.laws[e],
+                    a,
+                    b,
+                    inner,
+                    jumps,
+                };
+                let forms = held
+                    .forms(&self.tables, &leaning.tables, [false; PADS])
+                    .forms;
+                return (
+                    [force, held.end_force()],
+                    [forms.moment[0], forms.moment[1]],
+                );
+            }
+        }
+        let forms: ElementForms = element.forms(&self.tables, a, b, inner);
+        ([force, force], [forms.moment[0], forms.moment[1]])
+    }
+}
+
+impl End {
+    /// Takes the rows and columns of the node from the pose to the seat's unknowns, equation (6) of
+    /// [`super::seat`], and lets friction act.
+    pub fn seat_on(&self, node: usize, out: &mut Assembled<3>) {
+        let tangent = &mut out.tangent;
+        if !self.pose.is_plain() {
+            let by = &self.pose.by;
+            out.residual[node] = by.tr_mul(&out.residual[node]);
+            tangent.diagonal[node] =
+                by.tr_mul(&(tangent.diagonal[node] * by)) + self.pose.curving(&self.actions);
+            if node == 0 {
+                tangent.right[0] = by.tr_mul(&tangent.right[0]);
+                if let Some(left) = tangent.left.get_mut(0) {
+                    *left *= by;
+                }
+            } else {
+                tangent.right[node - 1] *= by;
+                if let Some(left) = tangent.left.get_mut(node - 1) {
+                    *left = by.tr_mul(left);
+                }
+            }
+        }
+        if let Turning::Drags { factor } = self.turning {
+            let push = out.residual[node][0];
+            out.residual[node][2] += factor * push;
+            let add = |block: &mut Matrix3<f64>| {
+                let row = block.row(0) * factor;
+                for (k, value) in row.iter().enumerate() {
+                    block[(2, k)] += value;
+                }
+            };
+            add(&mut tangent.diagonal[node]);
+            if node == 0 {
+                add(&mut tangent.right[0]);
+            } else if let Some(left) = tangent.left.get_mut(node - 1) {
+                add(left);
+            }
+        }
+    }
+}
+
+impl Column {
+    /// Force and moment that the ends of the column get from outside at `state`, in the column's
+    /// units: bottom and top (F_x, F_y, M), load included. They balance.
+    pub fn end_actions(&self, state: &ColumnState) -> [Vector3<f64>; 2] {
+        let last = self.elements.len();
+        let [bottom, top] =
+            [0, 1].map(|which| self.actions_on(state, which, &self.pose_at(state, which * last)));
+        [bottom, top]
+    }
+
+    /// How an end, 0 the bottom one, presses on its seat.
+    pub fn seat_press(&self, state: &ColumnState, which: usize) -> SeatPress {
+        let node = which * self.elements.len();
+        let seat = &self.seats[which];
+        let at = self.pose_at(state, node);
+        let actions = self.actions_on(state, which, &at);
+        let x = state.nodes[node][0];
+        let (press, thrust) = seat.pressed(x, [actions[0], actions[1]]);
+        // About the seat's centre, from that of the end.
+        let centre = match seat.touch {
+            Touch::Flat { .. } => seat.pose(&state.nodes[node], None).at,
+            _ => at,
+        };
+        let moment =
+            actions[2] + (at[0] - centre[0]) * actions[1] - (at[1] - centre[1]) * actions[0];
+        let sense = if seat.at_top { 1.0 } else { -1.0 };
+        let turned = match seat.touch {
+            Touch::Flat { .. } => self.turned(state, which),
+            _ => 0.0,
+        };
+        SeatPress {
+            press,
+            thrust,
+            line: sense * moment / press,
+            turned,
+        }
+    }
+}
