@@ -7,8 +7,8 @@ mod reference;
 
 use approx::assert_relative_eq;
 use reference::closed_form::{
-    clamped_hinged, critical_share, hinged_arms, never_limit, peak_share, straightening_share,
-    wave_number,
+    clamped_hinged, clamped_link, critical_share, hinged_arms, never_limit, peak_share,
+    straightening_share, wave_number,
 };
 use reference::elastic_ends::{self, Column, End};
 use reference::transverse_rate::{printed_rate, transverse_compliance, transverse_rate};
@@ -184,6 +184,21 @@ fn stiffness_and_determinant_meet() {
             End::elastic(0.0, 30.0).with_arm(-0.03),
         ),
         (End::elastic(1e9, 1e9), End::elastic(0.0, 0.0)),
+        (
+            End::elastic(0.05, inf),
+            End {
+                rotation: 0.01,
+                ..End::strut(0.7).with_arm(0.04)
+            },
+        ),
+        (
+            End::elastic(inf, 0.9).with_arm(-0.02),
+            End::hanger(0.4).with_arm(0.06),
+        ),
+        (
+            End::hanger(0.3).with_arm(0.02),
+            End::elastic(0.04, 0.6).with_arm(0.1),
+        ),
     ];
     let mut found = 0;
     for slenderness in [3.0, 4.5, 8.0] {
@@ -201,7 +216,86 @@ fn stiffness_and_determinant_meet() {
             }
         }
     }
-    assert!(found >= 12, "{found}");
+    assert!(found >= 20, "{found}");
+}
+
+/// A link at the top of a clamped column against its own equation, and at its limits: very long it
+/// is the free end; a short hanger holds the end sideways; a hanger as long as the shortened column
+/// sends the load through the foot, where the column goes as hinged at both ends (Timoshenko &
+/// Gere, load through a fixed point [M]).
+#[test]
+fn links_meet_their_equation_and_their_limits() {
+    for r in STEELS {
+        for slenderness in [1.5, 2.5, 3.0, 4.0, 6.0, 10.0] {
+            let column = Column::of_spring(r, slenderness);
+            let by = |top: End| elastic_ends::critical_share(&column, &End::CLAMPED, &top);
+            for length in [0.01, 0.1, 0.5, 1.0, 3.0, 20.0] {
+                for (top, hanging) in [(End::strut(length), false), (End::hanger(length), true)] {
+                    let exact = clamped_link(r, slenderness, length, hanging);
+                    meet(by(top), exact, 1e-10);
+                    let turned = elastic_ends::critical_share(&column, &top, &End::CLAMPED);
+                    meet(turned, exact, 1e-10);
+                }
+            }
+            let free = critical_share(r, 2.0 * slenderness);
+            meet(by(End::strut(1e9)), free, 1e-8);
+            meet(by(End::hanger(1e9)), free, 1e-8);
+            if let Some(held) = clamped_hinged(r, slenderness) {
+                meet(by(End::hanger(1e-9)), Some(held), 1e-7);
+            }
+            if let Some(hinged) = critical_share(r, slenderness).filter(|share| *share < 1.0) {
+                meet(by(End::hanger(1.0 - hinged)), Some(hinged), 1e-10);
+            }
+            // The stiffer the link stands by the column, the later it goes.
+            let order = [
+                by(End::strut(0.1)),
+                by(End::strut(1.0)),
+                free,
+                by(End::hanger(1.0)),
+                by(End::hanger(0.1)),
+            ];
+            for pair in order.windows(2) {
+                assert!(
+                    pair[0].unwrap_or(1.0) <= pair[1].unwrap_or(1.0),
+                    "{order:?}"
+                );
+            }
+        }
+    }
+    // A strut of no length: the end goes when P/ℓ is its transverse rate.
+    let column = Column::of_spring(2.6, 4.0);
+    let share = elastic_ends::critical_share(&column, &End::CLAMPED, &End::strut(1e-7));
+    let rate = 1.0 / (1.0 / (3.0 * column.bending) + 1.0 / column.shear);
+    meet(share, Some(1e-7 * rate), 1e-5);
+}
+
+/// Links at both ends. Two struts, or a strut on a hinge, are a mechanism from the start. A column
+/// between two hangers of length ℓ, or between a hinge and one, falls over as a rigid body
+/// as soon as it is shorter than both together allow: 1 − ξ = 2ℓ/L and 1 − ξ = ℓ/L.
+#[test]
+fn links_without_a_clamped_end() {
+    for slenderness in [2.0, 4.0, 8.0] {
+        let column = Column::of_spring(2.6, slenderness);
+        let by = |bottom: End, top: End| elastic_ends::critical_share(&column, &bottom, &top);
+        for (bottom, top) in [
+            (End::HINGED, End::strut(0.5)),
+            (End::strut(0.5), End::strut(2.0)),
+            (End::HINGED, End::hanger(1.2)),
+        ] {
+            assert_eq!(by(bottom, top), Some(0.0), "{bottom:?} {top:?}");
+        }
+        let bends = critical_share(2.6, slenderness).unwrap_or(1.0);
+        for (bottom, top, length) in [
+            (End::hanger(0.45), End::hanger(0.45), 0.9),
+            (End::hanger(0.1), End::hanger(0.1), 0.2),
+            (End::HINGED, End::hanger(0.7), 0.7),
+            (End::HINGED, End::hanger(0.3), 0.3),
+            (End::hanger(0.3), End::HINGED, 0.3),
+        ] {
+            let want = bends.min(1.0 - length);
+            meet(by(bottom, top), Some(want), 1e-7);
+        }
+    }
 }
 
 /// EN 13906-1, transverse rate under axial load [M]; Haringx, Philips Res. Rep. 4 (1949) 49–80.

@@ -74,3 +74,25 @@ pub fn hinged_arms(r: f64, slenderness: f64, arm_share: f64) -> Option<f64> {
     };
     first_loss(left, &[peak_share(r)])
 }
+
+/// ξ_cr of the column clamped at one end whose other end is hinged to a link of length ℓ,
+/// `link_share` = ℓ/L; a `hanging` one has its far hinge on the column's side.
+///
+/// θ(0) = 0 and M(L) = 0 give θ as in `clamped_hinged` and
+/// y(L) = (H L/P)[(a + b) tan q/q − a]; with H = ±P y(L)/ℓ (strut +, hanger −)
+///
+///     (a + b) tan q/q = a + ℓ/L   (strut),      (a + b) tan q/q = a − ℓ/L   (hanger)
+///
+/// ℓ → ∞ is the free end, q = π/2; a hanger of no length holds it sideways; one as long as the
+/// shortened column sends the load through the foot, q = π (Timoshenko & Gere, load through a
+/// fixed point, from memory). `None`: never before ξ = 1.
+pub fn clamped_link(r: f64, slenderness: f64, link_share: f64, hanging: bool) -> Option<f64> {
+    let sign = if hanging { -1.0 } else { 1.0 };
+    let left = |share: f64| {
+        let q = wave_number(r, slenderness, share);
+        let height = 1.0 - share + share / r;
+        // Times cos q, positive without load.
+        sign * (1.0 - share + sign * link_share) * q.cos() - sign * height * q.sin() / q
+    };
+    first_loss(left, &[peak_share(r)])
+}

@@ -1,4 +1,4 @@
-//! Critical deflection of the straight column on any elastic ends with rigid arms.
+//! Critical deflection of the straight column on any elastic ends with rigid arms and links.
 //!
 //! Units: the column's length is 1 and its EI is 1 inside; outside any consistent set.
 //!
@@ -11,6 +11,11 @@
 //!     M₁ =    −q²σ θ₀       + c M₀ − (a + b)σ H
 //!
 //! and over a rigid arm of length h by y₁ = y₀ + hθ, M₁ = M₀ − h(H + pθ).
+//!
+//! A link of length ℓ is a rigid bar hinged to the pivot and to a far point that is held sideways.
+//! It carries P along itself. Standing beyond the pivot (a strut) it pushes the pivot farther out,
+//! P y/ℓ; hanging from it, its far hinge on the column's side (a hanger), it pulls it back: in
+//! `sideways` it is the rate −P/ℓ or +P/ℓ.
 //!
 //! Two routes: the smallest eigenvalue of the stiffness against the four motions of the pivots
 //! (which finds double roots too), and the determinant of the conditions at both ends.
@@ -54,6 +59,28 @@ pub struct End {
     pub sideways: f64,
     /// Rigid arm from the end plane to the pivot, outward positive.
     pub arm: f64,
+    /// A link at the pivot, besides what else holds it.
+    pub link: Option<Link>,
+}
+
+/// A rigid bar through which the load comes, hinged at both ends, its far end held sideways.
+#[derive(Clone, Copy, Debug)]
+pub struct Link {
+    /// Length ℓ.
+    pub length: f64,
+    /// Whether the far hinge lies on the column's side, the link pulled.
+    pub hanging: bool,
+}
+
+impl Link {
+    /// Force on the pivot per sideways motion, positive back to the middle, under the load P.
+    pub fn rate(&self, load: f64) -> f64 {
+        load / if self.hanging {
+            self.length
+        } else {
+            -self.length
+        }
+    }
 }
 
 impl End {
@@ -72,6 +99,29 @@ impl End {
             rotation,
             sideways,
             arm: 0.0,
+            link: None,
+        }
+    }
+
+    /// Hinged to a strut of this length, held by nothing else.
+    pub const fn strut(length: f64) -> End {
+        End {
+            link: Some(Link {
+                length,
+                hanging: false,
+            }),
+            ..End::FREE
+        }
+    }
+
+    /// Hinged to a hanger of this length, held by nothing else.
+    pub const fn hanger(length: f64) -> End {
+        End {
+            link: Some(Link {
+                length,
+                hanging: true,
+            }),
+            ..End::FREE
         }
     }
 
@@ -79,11 +129,19 @@ impl End {
     pub const fn with_arm(self, arm: f64) -> End {
         End { arm, ..self }
     }
+
+    /// Force per sideways motion of the pivot under the load, in units of L and EI.
+    fn sideways_in(&self, state: &State, column: &Column) -> f64 {
+        let link = self
+            .link
+            .map_or(0.0, |link| link.rate(state.load) * column.length);
+        self.sideways * unit_stiffness(column).0 + link
+    }
 }
 
 /// Smallest ξ = s/L in (0, 1) at which the straight column on these ends stops being stable.
 /// `None`: never. The ends must hold the column as a rigid body: neither may it shift sideways nor
-/// turn without being resisted.
+/// turn without being resisted (by hangers it may be, as soon as there is a load).
 pub fn critical_share(column: &Column, bottom: &End, top: &End) -> Option<f64> {
     let m = 1.0 - column.axial / column.shear;
     first_loss(
@@ -192,12 +250,12 @@ pub fn least_stiffness(column: &Column, bottom: &End, top: &End, share: f64) -> 
     if room <= 0.0 {
         return room;
     }
-    let (to_force, to_turn) = unit_stiffness(column);
+    let to_turn = unit_stiffness(column).1;
     let stiffness = pivot_stiffness(&state, bottom.arm / column.length, top.arm / column.length);
     let held = [
-        bottom.sideways * to_force,
+        bottom.sideways_in(&state, column),
         bottom.rotation * to_turn,
-        top.sideways * to_force,
+        top.sideways_in(&state, column),
         top.rotation * to_turn,
     ];
     let free: Vec<usize> = (0..4).filter(|i| held[*i].is_finite()).collect();
@@ -246,9 +304,9 @@ fn pivot_stiffness(state: &State, bottom_arm: f64, top_arm: f64) -> Matrix4<f64>
 /// straight column is critical; its sign away from there means nothing.
 pub fn determinant(column: &Column, bottom: &End, top: &End, share: f64) -> f64 {
     let state = State::at(column, share);
-    let (to_force, to_turn) = unit_stiffness(column);
+    let to_turn = unit_stiffness(column).1;
     // At the bottom H = k_u y and M = k_θ θ: two columns of possible states, (y or H) and (θ or M).
-    let (y, side) = ratio(bottom.sideways * to_force);
+    let (y, side) = ratio(bottom.sideways_in(&state, column));
     let (turn, moment) = ratio(bottom.rotation * to_turn);
     let map = state.arm_transfer(top.arm / column.length)
         * state.transfer()
@@ -256,19 +314,20 @@ pub fn determinant(column: &Column, bottom: &End, top: &End, share: f64) -> f64 
     let first = map * Vector4::new(y, 0.0, 0.0, side);
     let second = map * Vector4::new(0.0, turn, moment, 0.0);
     // At the top H = −k_u y and M = −k_θ θ.
-    let (y, side) = ratio(top.sideways * to_force);
+    let (y, side) = ratio(top.sideways_in(&state, column));
     let (turn, moment) = ratio(top.rotation * to_turn);
     let sideways = |v: &Vector4<f64>| y * v[3] + side * v[0];
     let rotation = |v: &Vector4<f64>| turn * v[2] + moment * v[1];
     sideways(&first) * rotation(&second) - sideways(&second) * rotation(&first)
 }
 
-/// (motion, force) in the proportion 1 : k, for any k from 0 to infinity.
+/// (motion, force) in the proportion 1 : k, for any k up to infinity.
 fn ratio(stiffness: f64) -> (f64, f64) {
     if stiffness.is_infinite() {
         (0.0, 1.0)
     } else {
-        (1.0 / (1.0 + stiffness), stiffness / (1.0 + stiffness))
+        let size = 1.0 + stiffness.abs();
+        (1.0 / size, stiffness / size)
     }
 }
 

@@ -19,3 +19,4 @@ pub mod elastica;
 pub mod root;
 pub mod shooting;
 pub mod transverse_rate;
+pub mod walls;
