@@ -1,125 +1,520 @@
-//! The column between walls.
+//! The column that leans on guides.
 
-use coilstay::column::{Column, Contact, EndLaws, Hold, NaturalShape, Wall};
-use coilstay::solve::{Newton, PathSettings, follow, start};
+mod reference;
+
+use coilstay::column::{
+    Column, ColumnState, Contact, EndLaws, Hold, NaturalShape, StraightScan, Wall,
+};
+use coilstay::solve::{
+    Newton, Outcome, PathPoint, PathSettings, System, follow, locate, start, turn_back,
+};
 use coilstay::spring::Section;
+use reference::shooting::Rod;
+use reference::walls::closed_form::Ends;
+use reference::walls::{self, Set, Walls, richardson};
 use std::f64::consts::PI;
 
-fn section(r: f64, slenderness: f64) -> Section {
-    // k L0 = 1, L0 = 1: EA = 1, GA = r, EI = D² r/(2(2+r)).
-    Section {
-        axial: 1.0,
-        shear: r,
-        bending: r / (2.0 * (2.0 + r)) / slenderness.powi(2),
-    }
-}
+type Point = PathPoint<3, 5>;
 
-fn go(
-    slender: f64,
-    c: f64,
-    mu: f64,
-    to: f64,
+/// A guided column in its own units (EI = 1, L = 1), with a half-sine bow.
+#[derive(Clone)]
+struct Case {
+    axial: f64,
+    shear: f64,
+    clamped: [bool; 2],
+    bow: f64,
+    walls: Vec<Wall>,
     elements: usize,
-    show: usize,
-    clamped: bool,
-    until: f64,
-    top: bool,
-) {
-    let section = section(2.6, slender);
-    let bow = 0.002;
-    let shape = NaturalShape {
-        angle: &|s| bow * PI * (PI * s).cos(),
-        curvature: &|s| -bow * PI * PI * (PI * s).sin(),
-    };
-    let held = |axial| {
-        EndLaws([
-            axial,
-            Hold::Held(0.0),
-            if clamped { Hold::Held(0.0) } else { Hold::Free },
-        ])
-    };
-    let mut column = Column::new(1.0, elements, &|_| section, &shape)
-        .held(held(Hold::Held(0.0)), held(Hold::Free))
-        .with_guides(vec![Wall {
-            friction: mu,
-            to,
-            corner: 0.01,
-            from_top: top,
-            ..Wall::plain(c)
-        }]);
-    let mut newton = Newton::new(&column);
-    let guess = column.first_guess();
-    let first = start(&mut column, &mut newton, &guess, 0.0).expect("starts");
-    let mut points = vec![first];
-    let clock = std::time::Instant::now();
-    let (outcome, walk) = follow(
-        &mut column,
-        &mut newton,
-        &mut points,
-        &PathSettings::default(),
-        |points| {
-            points
-                .last()
-                .is_some_and(|p| p.state.nodes[elements][0] < until)
-        },
-    );
-    println!(
-        "slender {slender} c {c} mu {mu} to {to} el {elements} {outcome:?} {walk:?} {:?}",
-        clock.elapsed()
-    );
-    let mut contacts: Vec<Contact> = Vec::new();
-    let mut stations = Vec::new();
-    for (i, point) in points.iter().enumerate() {
-        if i % show != 0 && i + 3 < points.len() {
-            continue;
-        }
-        column.contacts(&point.state, &mut contacts);
-        column.profile(&point.state, &mut stations);
-        let room = stations
-            .iter()
-            .map(|s| column.room(&point.state, s.x, s.y, s.axial_force))
-            .fold(1.0, f64::min);
-        let total: f64 = contacts.iter().map(|c| c.push).sum();
-        let drag: f64 = contacts.iter().map(|c| c.drag).sum();
-        print!(
-            "x {:.5} P {:.6} dP {:.2} neg {} pads {} push {:.5} drag {:.5} room {:.2e} ",
-            point.state.nodes[elements][0],
-            point.load,
-            point.load_direction,
-            point.negatives,
-            contacts.len(),
-            total,
-            drag,
-            room
-        );
-        let mut before = -1.0;
-        for c in &contacts {
-            if c.place - before > 1.5 * c.width {
-                print!("[{:.3}{}", c.place, if c.side > 0.0 { '+' } else { '-' });
-            }
-            before = c.place;
-        }
-        println!();
+    search: f64,
+}
+
+/// A spring of slenderness Λ and E/G = r: EA L²/EI = 2(2 + r)/r Λ².
+fn spring(slenderness: f64, r: f64, clamped: [bool; 2], bow: f64, clearance: f64) -> Case {
+    let axial = 2.0 * (2.0 + r) / r * slenderness * slenderness;
+    Case {
+        axial,
+        shear: r * axial,
+        clamped,
+        bow,
+        walls: vec![Wall::plain(clearance)],
+        elements: 64,
+        search: 1.0,
     }
 }
 
+impl Case {
+    fn column(&self) -> Column {
+        let section = Section {
+            axial: self.axial,
+            shear: self.shear,
+            bending: 1.0,
+        };
+        let bow = self.bow;
+        let shape = NaturalShape {
+            angle: &|s| bow * PI * (PI * s).cos(),
+            curvature: &|s| -bow * PI * PI * (PI * s).sin(),
+        };
+        let turning = |clamped: bool| if clamped { Hold::Held(0.0) } else { Hold::Free };
+        let [bottom, top] = self.clamped.map(turning);
+        let column = Column::new(1.0, self.elements, &|_| section, &shape)
+            .held(
+                EndLaws([Hold::Held(0.0), Hold::Held(0.0), bottom]),
+                EndLaws([Hold::Free, Hold::Held(0.0), top]),
+            )
+            .with_guides(self.walls.clone())
+            .with_search(self.search);
+        let scale = column.load_scale();
+        column.with_load_scale(scale.min(20.0))
+    }
+
+    /// The path to a shortening.
+    fn to(&self, shortening: f64, largest_step: f64) -> Walk {
+        let mut column = self.column();
+        let mut newton = Newton::new(&column);
+        let guess = column.first_guess();
+        let first = start(&mut column, &mut newton, &guess, 0.0).expect("starts");
+        let mut walk = Walk {
+            column,
+            newton,
+            points: vec![first],
+            start: 0.0,
+        };
+        walk.start = walk.height(&walk.points[0]);
+        walk.go_on(shortening, 1.0, largest_step);
+        walk
+    }
+}
+
+/// A path under way.
+struct Walk {
+    column: Column,
+    newton: Newton<3, 5>,
+    points: Vec<Point>,
+    start: f64,
+}
+
+impl Walk {
+    fn height(&self, point: &Point) -> f64 {
+        point.state.nodes[self.column.elements()][0]
+    }
+
+    /// Follows the path on to exactly that shortening, going `sense`.
+    fn go_on(&mut self, shortening: f64, sense: f64, largest_step: f64) {
+        let (last, start) = (self.column.elements(), self.start);
+        let short = |point: &Point| sense * (shortening - start + point.state.nodes[last][0]);
+        let settings = PathSettings {
+            largest_step,
+            most_points: 6000,
+            ..PathSettings::default()
+        };
+        let (column, newton, points) = (&mut self.column, &mut self.newton, &mut self.points);
+        let (outcome, _) = follow(column, newton, points, &settings, |points| {
+            short(&points[points.len() - 1]) <= 0.0
+        });
+        assert_eq!(outcome, Outcome::Stopped);
+        let after = points.len() - 2;
+        let end = locate(column, newton, points, after, 1e-12, short).expect("reached");
+        points.pop();
+        points[after].distance = end.distance;
+        points.push(end.point);
+    }
+
+    fn turn(&mut self) {
+        let last = &self.points[self.points.len() - 1];
+        let back = turn_back(&mut self.column, &mut self.newton, last);
+        self.points = vec![back];
+    }
+
+    /// The state at a shortening on the way.
+    fn at(&mut self, shortening: f64) -> Point {
+        let (last, start) = (self.column.elements(), self.start);
+        let short = |point: &Point| shortening - start + point.state.nodes[last][0];
+        let after = self
+            .points
+            .windows(2)
+            .position(|pair| short(&pair[0]) > 0.0 && short(&pair[1]) <= 0.0)
+            .expect("on the way");
+        locate(
+            &mut self.column,
+            &mut self.newton,
+            &self.points,
+            after,
+            1e-13,
+            short,
+        )
+        .expect("there")
+        .point
+    }
+
+    fn contacts(&self, state: &ColumnState) -> Vec<Contact> {
+        let mut contacts = Vec::new();
+        self.column.contacts(state, &mut contacts);
+        contacts
+    }
+
+    fn push(&self, state: &ColumnState) -> f64 {
+        self.contacts(state)
+            .iter()
+            .map(|contact| contact.push)
+            .sum()
+    }
+
+    /// Work of the load along the points, by trapezoids.
+    fn work(&self) -> f64 {
+        self.points
+            .windows(2)
+            .map(|pair| {
+                0.5 * (pair[0].load + pair[1].load)
+                    * (self.height(&pair[0]) - self.height(&pair[1]))
+            })
+            .sum()
+    }
+
+    fn friction_work(&self) -> f64 {
+        self.points
+            .windows(2)
+            .map(|pair| self.column.friction_work(&pair[0].state, &pair[1].state))
+            .sum()
+    }
+}
+
+const R: f64 = 206.0 / 81.5;
+
+/// Real springs between walls against an independent minimum of the energy under bounds, ten points
+/// along each path: load and wall force at a set shortening. [C]
 #[test]
-fn look() {
-    let get = |k: &str, d: f64| {
-        std::env::var(k)
-            .ok()
-            .and_then(|v| v.parse().ok())
-            .unwrap_or(d)
+fn paths_meet_a_minimum_under_bounds() {
+    for (slenderness, clamped, bow, clearance, farthest) in [
+        (6.0, [false, false], 0.01, 0.02, 0.4),
+        (8.0, [true, true], 0.004, 0.012, 0.45),
+        (7.0, [true, false], 0.006, 0.008, 0.4),
+    ] {
+        let case = spring(slenderness, R, clamped, bow, clearance);
+        let mut path = case.to(farthest * 1.01, 0.03);
+        let hold = |clamped: bool| {
+            if clamped {
+                walls::Hold::CLAMPED
+            } else {
+                walls::Hold::HINGED
+            }
+        };
+        let reference = |segments: usize, sets: &[Set]| {
+            let walls = Walls {
+                rod: Rod::straight(case.axial, case.shear, 1.0, 1.0).bowed(bow),
+                bottom: hold(clamped[0]),
+                top: hold(clamped[1]),
+                clearance,
+                segments,
+            };
+            let first = walls.unloaded().expect("unloaded");
+            walls.follow(sets, &first).expect("a minimum")
+        };
+        let unloaded = 1.0 - path.start;
+        let shortenings: Vec<f64> = (1..=10).map(|i| farthest * f64::from(i) / 10.0).collect();
+        let sets: Vec<Set> = shortenings
+            .iter()
+            .map(|s| Set::Shortening(s + unloaded))
+            .collect();
+        let (coarse, fine) = (reference(200, &sets), reference(400, &sets));
+        let mut touched = 0;
+        for (i, shortening) in shortenings.iter().enumerate() {
+            let here = path.at(*shortening);
+            let load = richardson(coarse[i].load, fine[i].load);
+            let wall = |point: &walls::Point| point.wall_forces().iter().sum::<f64>();
+            let push = richardson(wall(&coarse[i]), wall(&fine[i]));
+            let ours = path.push(&here.state);
+            assert!(
+                (here.load / load - 1.0).abs() < 1e-4,
+                "{slenderness} {i}: {} {load}",
+                here.load
+            );
+            assert!(
+                (ours - push).abs() < 1e-4 * load,
+                "{slenderness} {i}: {ours} {push}"
+            );
+            touched += usize::from(push > 0.0);
+        }
+        assert!(touched >= 5, "{touched}");
+    }
+}
+
+/// Sampled at 20 places in every element, the axis enters no wall by more than 1e-4 of the clearance;
+/// thrusts and pushes balance; ρ of the search is not in the answer.
+#[test]
+fn walls_keep_the_axis_out_and_forces_balance() {
+    for (slenderness, clamped, bow, clearance) in [
+        (6.0, [false, false], 0.01, 0.02),
+        (10.0, [true, false], 0.002, 0.01),
+        (12.0, [true, true], 0.003, 0.015),
+    ] {
+        let case = spring(slenderness, R, clamped, bow, clearance);
+        let path = case.to(0.5, 0.03);
+        let mut stations = Vec::new();
+        for point in &path.points {
+            path.column.profile_with(20, &point.state, &mut stations);
+            let deepest = stations
+                .iter()
+                .map(|s| s.y.abs() - clearance)
+                .fold(-1.0, f64::max);
+            assert!(deepest < 1e-4 * clearance, "{slenderness}: {deepest:e}");
+            let [bottom, top] = path.column.end_actions(&point.state);
+            let walls: f64 = path
+                .contacts(&point.state)
+                .iter()
+                .map(|c| -c.side * c.push)
+                .sum();
+            assert!(
+                (bottom[1] + top[1] + walls).abs() < 1e-9,
+                "{bottom} {top} {walls}"
+            );
+            assert!(path.contacts(&point.state).iter().all(|c| c.push > 0.0));
+        }
+        let end = &path.points[path.points.len() - 1];
+        for search in [1e-3, 1e3] {
+            let other = Case {
+                search,
+                ..case.clone()
+            }
+            .to(0.5, 0.03);
+            let there = &other.points[other.points.len() - 1];
+            assert!((there.load / end.load - 1.0).abs() < 1e-10, "{search}");
+            let (one, two) = (path.push(&end.state), other.push(&there.state));
+            assert!((one / two - 1.0).abs() < 1e-8, "{search}: {one} {two}");
+        }
+    }
+}
+
+/// The error of a guided path falls at least with the square of the mesh.
+#[test]
+fn guided_paths_converge() {
+    let load = |elements: usize| {
+        let case = Case {
+            elements,
+            ..spring(6.0, R, [false, false], 0.01, 0.02)
+        };
+        let path = case.to(0.4, 0.03);
+        path.points[path.points.len() - 1].load
     };
-    go(
-        get("L", 6.0),
-        get("C", 0.02),
-        get("MU", 0.0),
-        get("TO", f64::INFINITY),
-        get("N", 64.0) as usize,
-        get("SHOW", 20.0) as usize,
-        get("CL", 0.0) > 0.0,
-        get("UNTIL", 0.4),
-        get("TOP", 0.0) > 0.0,
+    let exact = load(256);
+    let errors: Vec<f64> = [8, 16, 32, 64]
+        .map(|n| (load(n) / exact - 1.0).abs())
+        .to_vec();
+    println!("{errors:?}");
+    // Where the ends of the contact lie within their pads differs from mesh to mesh: order over two
+    // doublings.
+    for pair in errors.windows(3) {
+        assert!(pair[2] < pair[0] / 12.0, "{errors:?}");
+    }
+    assert!(errors[3] < 1e-6);
+}
+
+/// As EA and GA go to infinity and the clearance to nought: point contact up to 4 P1 with the forces
+/// of the small-rotation column, line contact beyond, and the flat part buckles at 16 P1 (hinged)
+/// and 9 P1 (clamped). Chai, J. Mech. Phys. Solids 46 (1998) [M]; forces [C].
+#[test]
+fn a_column_that_only_bends_meets_the_published_phases() {
+    for (ends, clamped) in [(Ends::Hinged, false), (Ends::Clamped, true)] {
+        let first = ends.touch();
+        let clearance = 1e-4;
+        let errors: Vec<f64> = [1e6, 4e6]
+            .iter()
+            .map(|axial| {
+                let case = Case {
+                    axial: *axial,
+                    shear: *axial,
+                    clamped: [clamped; 2],
+                    bow: 1e-4 * clearance,
+                    walls: vec![Wall::plain(clearance)],
+                    elements: 128,
+                    search: 1.0,
+                };
+                let mut column = case.column().with_load_scale(first);
+                let mut newton = Newton::new(&column);
+                let guess = column.first_guess();
+                let start = start(&mut column, &mut newton, &guess, 0.0).expect("starts");
+                let mut points = vec![start];
+                let most = ends.flat_buckles() * 1.02;
+                let settings = PathSettings {
+                    largest_step: 0.02,
+                    ..PathSettings::default()
+                };
+                let (outcome, _) = follow(&mut column, &mut newton, &mut points, &settings, |p| {
+                    p[p.len() - 1].load > most
+                });
+                assert_eq!(outcome, Outcome::Stopped);
+                let mut contacts = Vec::new();
+                let mut worst: f64 = 0.0;
+                for ratio in [1.1, 2.0, 3.0, 6.0, 8.0] {
+                    let load = ratio * first;
+                    let after = points
+                        .windows(2)
+                        .position(|pair| pair[0].load < load && pair[1].load >= load)
+                        .expect("on the way");
+                    let there = locate(&mut column, &mut newton, &points, after, 1e-12, |p| {
+                        load - p.load
+                    })
+                    .expect("there");
+                    column.contacts(&there.point.state, &mut contacts);
+                    let push: f64 = contacts.iter().map(|c| c.push).sum();
+                    let expected = ends.contact(load).expect("touches");
+                    worst = worst.max((push / clearance / expected.force - 1.0).abs());
+                    let length = contacts[contacts.len() - 1].place - contacts[0].place;
+                    assert!(
+                        (length - expected.flat).abs() < 0.02,
+                        "{ratio}: {length} {}",
+                        expected.flat
+                    );
+                }
+                // Where the flat part could buckle.
+                let mut loose = column.loosened().expect("no friction");
+                let index = points
+                    .iter()
+                    .position(|p| {
+                        column.contacts(&p.state, &mut contacts);
+                        !contacts.is_empty()
+                            && newton.evaluate(&mut loose, &p.state, p.load) > p.negatives
+                    })
+                    .expect("buckles");
+                let (below, above) = (points[index - 1].load, points[index].load);
+                let expected = ends.flat_buckles();
+                assert!(
+                    below < 1.01 * expected && above > 0.99 * expected,
+                    "{below} {above} {expected}"
+                );
+                worst
+            })
+            .collect();
+        println!("{errors:?}");
+        assert!(
+            errors[1] < 3e-3 && errors[1] < 0.8 * errors[0] + 1e-3,
+            "{errors:?}"
+        );
+    }
+}
+
+/// With friction: the loop's area is the work that friction took, stroke after stroke the same;
+/// friction nowhere gives energy back; without friction there is no loop.
+#[test]
+fn friction_takes_what_the_loop_encloses() {
+    for (friction, to, corner) in [
+        (0.15, f64::INFINITY, 0.0),
+        (0.3, 0.45, 0.01),
+        (0.0, 0.45, 0.01),
+    ] {
+        let mut case = spring(6.0, R, [true, false], 0.01, 0.015);
+        case.walls[0] = Wall {
+            friction,
+            to,
+            corner,
+            ..case.walls[0]
+        };
+        let mut path = case.to(0.45, 0.01);
+        let mut loop_area = 0.0;
+        let mut friction_work = 0.0;
+        let mut ends = Vec::new();
+        for stroke in 0..4 {
+            path.turn();
+            let (target, sense) = if stroke % 2 == 0 {
+                (0.2, -1.0)
+            } else {
+                (0.45, 1.0)
+            };
+            ends.push(path.points[0].load);
+            path.go_on(target, sense, 0.005);
+            if stroke >= 2 {
+                loop_area += path.work();
+                friction_work += path.friction_work();
+            }
+            for pair in path.points.windows(2) {
+                let work = path.column.friction_work(&pair[0].state, &pair[1].state);
+                assert!(work <= 1e-10, "{work:e}");
+            }
+        }
+        ends.push(path.points[path.points.len() - 1].load);
+        assert!((ends[2] / ends[4] - 1.0).abs() < 1e-9, "{ends:?}");
+        println!("{friction}: {loop_area} {friction_work}");
+        if friction > 0.0 {
+            assert!(loop_area > 1e-3);
+            assert!(
+                (loop_area / -friction_work - 1.0).abs() < 1e-4,
+                "{loop_area} {friction_work}"
+            );
+        } else {
+            assert!(
+                loop_area.abs() < 1e-7 && friction_work == 0.0,
+                "{loop_area:e}"
+            );
+        }
+    }
+}
+
+/// Where a guide stops short, the column leans on its corner with a force square on the axis: what
+/// the load puts in is all stored, and the load differs between top and bottom.
+#[test]
+fn a_corner_pushes_square_on_the_axis() {
+    let mut case = spring(5.0, R, [false, true], 0.03, 0.02);
+    case.walls[0] = Wall {
+        to: 0.3,
+        corner: 0.02,
+        ..case.walls[0]
+    };
+    let path = case.to(0.45, 0.002);
+    let end = &path.points[path.points.len() - 1];
+    let contacts = path.contacts(&end.state);
+    assert!(
+        contacts
+            .iter()
+            .any(|contact| contact.at_corner && contact.push > 0.1),
+        "{contacts:?}"
     );
+    let stored =
+        path.column.strain_energy(&end.state) - path.column.strain_energy(&path.points[0].state);
+    assert!(
+        (path.work() / stored - 1.0).abs() < 1e-5,
+        "{} {stored}",
+        path.work()
+    );
+    let [bottom, top] = path.column.end_actions(&end.state);
+    assert!((bottom[0] + top[0]).abs() > 1e-4, "{bottom} {top}");
+    // A guide that reaches beyond the spring is one along all of it.
+    let whole = spring(5.0, R, [false, true], 0.03, 0.02).to(0.45, 0.03);
+    let mut long = spring(5.0, R, [false, true], 0.03, 0.02);
+    long.walls[0] = Wall {
+        to: 1.5,
+        corner: 0.02,
+        ..long.walls[0]
+    };
+    let long = long.to(0.45, 0.03);
+    let loads = [&whole, &long].map(|walk| walk.points[walk.points.len() - 1].load);
+    assert!((loads[0] / loads[1] - 1.0).abs() < 1e-11, "{loads:?}");
+}
+
+/// Guides leave the critical deflection of the perfect column alone until they are touched, and a
+/// guide that is nowhere near changes nothing at all.
+#[test]
+fn a_guide_out_of_reach_changes_nothing() {
+    let near = spring(6.0, R, [false, false], 0.01, 10.0).to(0.1, 0.03);
+    let mut bare = spring(6.0, R, [false, false], 0.01, 10.0);
+    bare.walls.clear();
+    let bare = bare.to(0.1, 0.03);
+    let (one, two) = (
+        &near.points[near.points.len() - 1],
+        &bare.points[bare.points.len() - 1],
+    );
+    assert_eq!(one.load, two.load);
+    assert_eq!(one.state.nodes, two.state.nodes);
+    let mut straight = Case {
+        bow: 0.0,
+        ..spring(6.0, R, [false, false], 0.0, 0.01)
+    }
+    .column();
+    let mut free = Case {
+        bow: 0.0,
+        walls: Vec::new(),
+        ..spring(6.0, R, [false, false], 0.0, 0.01)
+    }
+    .column();
+    let loads = [&mut straight, &mut free]
+        .map(|column| StraightScan::new(column).buckling().expect("buckles").load);
+    assert_eq!(loads[0], loads[1]);
 }

@@ -65,6 +65,11 @@ impl Column {
     /// top. The moment follows from the balance of the part below; no derivative of the
     /// interpolation is used.
     pub fn profile(&self, state: &ColumnState, out: &mut Vec<Station>) {
+        self.profile_with(STATIONS, state, out);
+    }
+
+    /// The same with a number of sections in an element, a multiple of four.
+    pub fn profile_with(&self, per_element: usize, state: &ColumnState, out: &mut Vec<Station>) {
         out.clear();
         // The moment at the end node, from below.
         let mut moment = -self.end_actions(state)[0][2];
@@ -103,8 +108,8 @@ impl Column {
             ];
             let (mut x, mut y) = (a[0] + reach[0], a[1] + reach[1]);
             moment -= reach[0] * inner[4] - reach[1] * inner[3];
-            let part = 2.0 / STATIONS as f64;
-            let stations = STATIONS + usize::from(e + 1 == self.elements.len());
+            let part = 2.0 / per_element as f64;
+            let stations = per_element + usize::from(e + 1 == self.elements.len());
             for k in 0..stations {
                 let t = -1.0 + part * k as f64;
                 let angle = angle_at(t);
@@ -128,7 +133,7 @@ impl Column {
                     y_slope: slopes.1,
                     moment_slope,
                 });
-                if k + 1 < STATIONS + 1 {
+                if k < per_element {
                     for (at, weight) in GAUSS_AT.iter().zip(GAUSS_WEIGHT) {
                         let u = t + 0.5 * part * (1.0 + at);
                         let (.., (dx, dy), arm) = strains(angle_at(u), u);
