@@ -14,8 +14,19 @@ fn meets(value: &Value, schema: &Value) -> bool {
             Some("object") => value.is_object(),
             Some("string") => value.is_string(),
             Some("number") => value.is_number(),
+            Some("boolean") => value.is_boolean(),
+            Some("array") => value.is_array(),
             other => panic!("type {other:?}"),
         },
+        "items" => value
+            .as_array()
+            .is_none_or(|list| list.iter().all(|item| meets(item, rule))),
+        "minItems" => value
+            .as_array()
+            .is_none_or(|list| list.len() as u64 >= rule.as_u64().unwrap()),
+        "maxItems" => value
+            .as_array()
+            .is_none_or(|list| list.len() as u64 <= rule.as_u64().unwrap()),
         "properties" => value.as_object().is_none_or(|object| {
             object
                 .iter()
@@ -36,8 +47,8 @@ fn meets(value: &Value, schema: &Value) -> bool {
             })
         }),
         "enum" => rule.as_array().unwrap().contains(value),
-        "const" => rule == value,
         "minimum" => value.as_f64().is_none_or(|v| v >= rule.as_f64().unwrap()),
+        "maximum" => value.as_f64().is_none_or(|v| v <= rule.as_f64().unwrap()),
         "exclusiveMinimum" => value.as_f64().is_none_or(|v| v > rule.as_f64().unwrap()),
         "exclusiveMaximum" => value.as_f64().is_none_or(|v| v < rule.as_f64().unwrap()),
         "minLength" => value

@@ -1,0 +1,198 @@
+//! A top seat that does not move straight: on a lever, or as measured.
+
+use super::super::diagnostics::Mistake;
+use super::super::field::{Absent, Field, Form, Kind, Range};
+use super::super::filled::{Filled, Log};
+use super::place_of_kind;
+use crate::setup::{Curve, LeverArc, MOST_POINTS, Motion, Restraint, Support};
+use crate::spring::Spring;
+use crate::units::{Dimension, MILLIMETRE};
+
+static ALONG: Field = Field::new(
+    "pivot_along",
+    Kind::Quantity(Dimension::LENGTH, Range::Any),
+    "20 mm",
+    "Where the lever's pivot lies along the spring's axis, seen from the centre of the seat, spring \
+     unloaded; beyond the seat positive, on the spring's side negative.",
+);
+static ACROSS: Field = Field::new(
+    "pivot_across",
+    Kind::Quantity(Dimension::LENGTH, Range::Any),
+    "120 mm",
+    "Where the lever's pivot lies across the spring's axis; with its sign: positive is towards +y.",
+);
+static LEVER_FORM: Form = Form {
+    doc: "The pivot of a lever that carries the top seat: the seat moves on an arc, its offset and \
+          tilt grow with its travel.",
+    fields: &[&ALONG, &ACROSS],
+    rules: &[],
+};
+pub(super) static LEVER: Field =
+    Field::new("lever", Kind::Table(&LEVER_FORM), "", LEVER_FORM.doc).or(Absent::Nothing);
+
+static TRAVEL: Field = Field::new(
+    "travel",
+    Kind::Quantity(Dimension::LENGTH, Range::NotNegative),
+    "0 mm",
+    "How far the seat has moved along the axis from first touch.",
+);
+static OFFSET: Field = Field::new(
+    "offset",
+    Kind::Quantity(Dimension::LENGTH, Range::Any),
+    "0 mm",
+    "How far it has moved sideways by then, towards +y positive, on top of its offset as built.",
+);
+static TILT: Field = Field::new(
+    "tilt",
+    Kind::Quantity(Dimension::ANGLE, Range::Any),
+    "0 deg",
+    "How far it has turned by then, on top of its tilt as built.",
+);
+static ROW: Form = Form {
+    doc: "Where the seat is after a travel.",
+    fields: &[&TRAVEL, &OFFSET, &TILT],
+    rules: &[],
+};
+pub(super) static MOTION: Field = Field::new(
+    "motion",
+    Kind::Rows {
+        form: &ROW,
+        least: 2,
+        most: MOST_POINTS,
+    },
+    "",
+    "Instead of lever: how the top seat moves aside and turns as it travels, from travel 0 on. \
+     Between the rows it runs smoothly, beyond the last row it goes on straight.",
+)
+.or(Absent::Nothing);
+
+/// How the seat moves aside; `Some(None)`: it moves straight. What `spring` asks of a lever is
+/// checked where it is known.
+pub(super) fn motion(
+    filled: &Filled,
+    spring: Option<&Spring>,
+    log: &mut Log,
+) -> Option<Option<Motion>> {
+    if filled.is_given(&LEVER) {
+        lever(filled.table(&LEVER)?, spring, log).map(|arc| Some(Motion::Lever(arc)))
+    } else if filled.is_given(&MOTION) {
+        table(filled.rows(&MOTION)?, log).map(Some)
+    } else {
+        Some(None)
+    }
+}
+
+fn lever(filled: &Filled, spring: Option<&Spring>, log: &mut Log) -> Option<LeverArc> {
+    let along = filled.number(&ALONG, log);
+    let across = filled.number(&ACROSS, log);
+    if across == Some(0.0) {
+        log.mistakes.push(Mistake::at(
+            filled.at(&ACROSS),
+            "the lever's pivot lies on the spring's axis: its seat could not travel along it",
+            format!(
+                "give its distance from the axis, for example {}",
+                ACROSS.example_line()
+            ),
+        ));
+        return None;
+    }
+    let arc = LeverArc {
+        along: along?,
+        across: across?,
+    };
+    let largest = arc.largest_travel();
+    if let Some(solid) = spring.map(Spring::solid_deflection)
+        && largest <= solid
+    {
+        log.mistakes.push(Mistake::at(
+            filled.at(&ACROSS),
+            format!(
+                "on this lever the seat can travel {} only; the spring is solid after {}",
+                MILLIMETRE.show(largest, 4),
+                MILLIMETRE.show(solid, 4)
+            ),
+            "the lever allows along + sqrt(along^2 + across^2): check the pivot's place and its \
+             signs, beyond the seat is positive",
+        ));
+        return None;
+    }
+    Some(arc)
+}
+
+fn table(rows: &[Filled], log: &mut Log) -> Option<Motion> {
+    let mut offsets: Vec<(f64, f64)> = Vec::new();
+    let mut tilts = Vec::new();
+    let mut sound = true;
+    for (index, row) in rows.iter().enumerate() {
+        let read = [&TRAVEL, &OFFSET, &TILT].map(|field| row.number(field, log));
+        let [Some(travel), Some(offset), Some(tilt)] = read else {
+            sound = false;
+            continue;
+        };
+        if index == 0 {
+            for (field, value) in [(&TRAVEL, travel), (&OFFSET, offset), (&TILT, tilt)] {
+                if value != 0.0 {
+                    log.mistakes.push(does_not_begin_at_nought(row, field));
+                    sound = false;
+                }
+            }
+        } else if offsets.last().is_some_and(|before| travel <= before.0) {
+            log.mistakes.push(Mistake::at(
+                row.at(&TRAVEL),
+                "`travel` does not rise: it is not above that of the row before",
+                "list the rows by rising travel, each travel once",
+            ));
+            sound = false;
+        }
+        offsets.push((travel, offset));
+        tilts.push((travel, tilt));
+    }
+    if !sound {
+        return None;
+    }
+    Some(Motion::Table {
+        offset: Curve::through(&offsets)?,
+        tilt: Curve::through(&tilts)?,
+    })
+}
+
+fn does_not_begin_at_nought(row: &Filled, field: &Field) -> Mistake {
+    let cure = if field.key == TRAVEL.key {
+        "begin with the seat at first touch: { travel = \"0 mm\", offset = \"0 mm\", tilt = \"0 deg\" }"
+            .to_string()
+    } else {
+        format!(
+            "the rows say what travel adds; put what is there at first touch into `{}` of [top]",
+            field.key
+        )
+    };
+    Mistake::at(
+        row.at(field),
+        format!("`{}` of the first row must be 0", field.key),
+        cure,
+    )
+}
+
+/// Notes a seat that moves aside without holding the end sideways; says whether that is sound.
+pub(super) fn check_led(filled: &Filled, support: &Support, log: &mut Log) -> bool {
+    let sound = support.motion.is_none() || support.sideways != Restraint::Free;
+    if !sound {
+        let field = if filled.is_given(&LEVER) {
+            &LEVER
+        } else {
+            &MOTION
+        };
+        log.mistakes.push(
+            Mistake::at(
+                filled.at(field),
+                format!(
+                    "`{}` moves a seat that does not hold the end sideways: the end would not follow",
+                    field.key
+                ),
+                format!("hold the end sideways, or remove `{}`", field.key),
+            )
+            .also(place_of_kind(filled), "the kind is set here"),
+        );
+    }
+    sound
+}
