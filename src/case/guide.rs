@@ -161,16 +161,21 @@ fn check_reach(row: &Filled, guide: &Guide, free_length: Metre, log: &mut Log) -
 fn check_clearance(row: &Filled, guide: &Guide, spring: &Spring, log: &mut Log) -> bool {
     let clearance = 2.0 * guide.clearance(spring, 1.0);
     let (what, coil, cure) = match guide.kind {
-        GuideKind::Rod => ("inner", spring.inner_diameter(), "smaller"),
-        GuideKind::Bore => ("outer", spring.outer_diameter(), "larger"),
+        GuideKind::Rod => (
+            "the rod does not go into the unloaded spring: the coil's inner diameter is",
+            spring.inner_diameter(),
+            "smaller",
+        ),
+        GuideKind::Bore => (
+            "the unloaded spring does not go into the bore: the coil's outer diameter is",
+            spring.outer_diameter(),
+            "larger",
+        ),
     };
     if clearance <= 0.0 {
         log.mistakes.push(Mistake::at(
             row.at(&DIAMETER),
-            format!(
-                "the unloaded spring does not go with it: the coil's {what} diameter is {}",
-                MILLIMETRE.show(coil, 4)
-            ),
+            format!("{what} {}", MILLIMETRE.show(coil, 4)),
             format!("the guide's diameter must be {cure}: check both"),
         ));
         return false;

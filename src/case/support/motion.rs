@@ -3,7 +3,7 @@
 use super::super::diagnostics::Mistake;
 use super::super::field::{Absent, Field, Form, Kind, Range};
 use super::super::filled::{Filled, Log};
-use super::place_of_kind;
+use super::SIDEWAYS;
 use crate::setup::{Curve, LeverArc, MOST_POINTS, Motion, Restraint, Support};
 use crate::spring::Spring;
 use crate::units::{Dimension, MILLIMETRE};
@@ -173,10 +173,11 @@ fn does_not_begin_at_nought(row: &Filled, field: &Field) -> Mistake {
     )
 }
 
-/// Notes a seat that moves aside without holding the end sideways; says whether that is sound.
+/// Notes an elastic seat that moves aside without holding the end sideways, and says whether the seat
+/// is sound; of the other kinds the rules of the form say so.
 pub(super) fn check_led(filled: &Filled, support: &Support, log: &mut Log) -> bool {
     let sound = support.motion.is_none() || support.sideways != Restraint::Free;
-    if !sound {
+    if !sound && let Some(answer) = filled.answer(&SIDEWAYS) {
         let field = if filled.is_given(&LEVER) {
             &LEVER
         } else {
@@ -191,7 +192,7 @@ pub(super) fn check_led(filled: &Filled, support: &Support, log: &mut Log) -> bo
                 ),
                 format!("hold the end sideways, or remove `{}`", field.key),
             )
-            .also(place_of_kind(filled), "the kind is set here"),
+            .also(answer.value.clone(), "free sideways"),
         );
     }
     sound
