@@ -236,11 +236,13 @@ pub(super) fn not_a_row(field: &Field, name: &str, value: &DeValue<'_>) -> Fault
 /// A list that is too short or too long.
 pub(super) fn wrong_count(field: &Field, count: usize, least: usize, most: usize) -> Fault {
     let (message, cure) = if count < least {
-        let rows = if least == 1 { "row" } else { "rows" };
+        let rows = |count: usize| if count == 1 { "row" } else { "rows" };
         (
             format!(
-                "`{}` has {count} rows: it needs at least {least} {rows}",
-                field.key
+                "`{}` has {count} {}: it needs at least {least} {}",
+                field.key,
+                rows(count),
+                rows(least)
             ),
             format!("for example {}", field.example_line()),
         )

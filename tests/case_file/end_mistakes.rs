@@ -268,8 +268,8 @@ fn laws_that_do_not_rise_or_cannot_be_read() {
             "force = \"300 N\"",
         ),
         (
-            "kind = \"clamped\"\naxial_law = [{ motion = \"1 mm\", moment = \"3 N m\" }]",
-            (14, 32),
+            "kind = \"clamped\"\naxial_law = [{ motion = \"1 mm\", force = \"3 N\", moment = \"3 N m\" }]",
+            (14, 48),
             "row 1 of top.axial_law has no field `moment`",
             "motion, force",
         ),
@@ -405,11 +405,15 @@ fn seats_that_move_aside() {
         (
             start.to_string(),
             10,
-            "has 1 rows: it needs at least 2 rows",
+            "has 1 row: it needs at least 2 rows",
             "motion = [{",
         ),
         (
-            format!("{}, {start}", start.replace("travel = \"0", "travel = \"1")),
+            format!(
+                "{}, {}",
+                start.replace("travel = \"0", "travel = \"1"),
+                start.replace("travel = \"0", "travel = \"9")
+            ),
             22,
             "`travel` of the first row must be 0",
             "first touch",
