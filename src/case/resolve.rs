@@ -80,6 +80,9 @@ fn supports(
         }
         _ => false,
     };
+    if let (Some((_, bottom, _)), Some((table, top, _)), Some(spring)) = (&bottom, &top, spring) {
+        support::check_reach(table, top, bottom, spring, log);
+    }
     // An arm that is too long is the cause of what it makes impossible.
     let sound = lined_up
         && [&bottom, &top]

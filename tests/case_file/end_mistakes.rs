@@ -238,6 +238,18 @@ fn laws_that_do_not_rise_or_cannot_be_read() {
             "axial_law = [{ motion = \"1 mm\", force = \"300 N\" }]",
         ),
         (
+            "kind = \"clamped\"\naxial_law = [{ motion = \"1e-300 m\", force = \"1 N\" }]",
+            (14, 14),
+            "outside what can be computed",
+            "check both numbers",
+        ),
+        (
+            "kind = \"clamped\"\naxial_law = [{ motion = \"1 m\", force = \"1e-10 N\" }]",
+            (14, 14),
+            "outside what can be computed",
+            "check both numbers",
+        ),
+        (
             "kind = \"clamped\"\naxial_law = []",
             (14, 13),
             "has 0 rows: it needs at least 1 row",
@@ -376,8 +388,22 @@ fn seats_that_move_aside() {
             "pivot_across = \"120 mm\"",
         ),
         (
-            "kind = \"hinged\"\nlever = { pivot_along = \"-20 mm\", pivot_across = \"60 mm\" }",
+            "kind = \"hinged\"\nlever = { pivot_along = \"-90 mm\", pivot_across = \"-0.8 mm\" }",
             (14, 50),
+            "or next to it",
+            "pivot_across = \"120 mm\"",
+        ),
+        // What the seats give is travel too: 13 mm of it under the solid force of 2.6 kN.
+        (
+            "kind = \"hinged\"\naxial_stiffness = \"200 N/mm\"\n\
+             lever = { pivot_along = \"0 mm\", pivot_across = \"130 mm\" }",
+            (15, 48),
+            "the seat can travel 130.0 mm only; the spring is solid after 139",
+            "check the pivot",
+        ),
+        (
+            "kind = \"hinged\"\nlever = { pivot_along = \"20 mm\", pivot_across = \"60 mm\" }",
+            (14, 49),
             "the seat can travel 43.25 mm only; the spring is solid after 126.0 mm",
             "check the pivot",
         ),
@@ -445,7 +471,7 @@ fn seats_that_move_aside() {
         check_text(&[(text, (14, column), message, cure)]);
     }
     let both = with_top(&format!(
-        "kind = \"hinged\"\nlever = {{ pivot_along = \"90 mm\", pivot_across = \"90 mm\" }}\n\
+        "kind = \"hinged\"\nlever = {{ pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }}\n\
          motion = [{start}, {}]",
         start.replace("travel = \"0", "travel = \"9")
     ));
@@ -456,7 +482,7 @@ fn seats_that_move_aside() {
 #[test]
 fn a_bottom_that_moves_is_sent_to_the_top() {
     for line in [
-        "lever = { pivot_along = \"90 mm\", pivot_across = \"90 mm\" }",
+        "lever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
         "motion = []",
     ] {
         let text = super::with("\"clamped\"", &format!("\"clamped\"\n{line}"));

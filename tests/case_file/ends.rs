@@ -299,7 +299,7 @@ fn planes_of_both_ends_are_counted_alike() {
         );
     }
     // Where the top is led aside in its first plane, the bottom's are exchanged.
-    let lever = "lever = { pivot_along = \"150 mm\", pivot_across = \"120 mm\" }";
+    let lever = "lever = { pivot_along = \"-150 mm\", pivot_across = \"120 mm\" }";
     let setup = read(&crossed("0 deg", "90 deg", lever)).setup;
     assert_eq!(setup.top.lateral(), hinged);
     assert_eq!(setup.bottom.rotation, Restraint::Held);

@@ -137,7 +137,7 @@ fn what_the_reader_takes_meets_the_schema() {
         ),
         with(
             "kind = \"hinged\"",
-            "kind = \"hinged\"\nplane = \"30 deg\"\nother_plane = { kind = \"clamped\", tilt = \"1 deg\" }\nlever = { pivot_along = \"90 mm\", pivot_across = \"90 mm\" }",
+            "kind = \"hinged\"\nplane = \"30 deg\"\nother_plane = { kind = \"clamped\", tilt = \"1 deg\" }\nlever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
         ),
         with(
             "kind = \"hinged\"",
@@ -237,7 +237,7 @@ fn what_the_schema_can_see_is_refused_by_both() {
         ),
         with(
             "\"hinged\"",
-            "\"free\"\nlever = { pivot_along = \"90 mm\", pivot_across = \"90 mm\" }",
+            "\"free\"\nlever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
         ),
         with(
             "\"hinged\"",
@@ -245,7 +245,7 @@ fn what_the_schema_can_see_is_refused_by_both() {
         ),
         with(
             "\"clamped\"",
-            "\"clamped\"\nlever = { pivot_along = \"90 mm\", pivot_across = \"90 mm\" }",
+            "\"clamped\"\nlever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
         ),
         with(
             "[duty]",

@@ -9,6 +9,12 @@ use crate::units::Dimension;
 /// Rows of a law: the first point, nought, goes without saying.
 const MOST_ROWS: usize = MOST_POINTS - 1;
 
+/// Rows whose motions are nearer than this, m or rad, are not told apart.
+pub(super) const LEAST_STEP: f64 = 1e-9;
+
+/// Slopes that can be computed, N/m or N·m/rad: those of a given stiffness.
+const SLOPES: std::ops::RangeInclusive<f64> = 1e-9..=1e15;
+
 static DISTANCE: Field = Field::new(
     "motion",
     Kind::Quantity(Dimension::LENGTH, Range::NotNegative),
@@ -114,6 +120,11 @@ fn curve(filled: &Filled, law: &Field, log: &mut Log) -> Option<Curve> {
                 sound = false;
             }
         }
+        let (step, rise) = (at - before.0, value - before.1);
+        if step > 0.0 && rise > 0.0 && !(step >= LEAST_STEP && SLOPES.contains(&(rise / step))) {
+            log.mistakes.push(out_of_reach(row));
+            sound = false;
+        }
         points.push((at, value));
     }
     if sound && points.len() < 2 {
@@ -125,6 +136,15 @@ fn curve(filled: &Filled, law: &Field, log: &mut Log) -> Option<Curve> {
         return None;
     }
     sound.then(|| Curve::odd(&points)).flatten()
+}
+
+fn out_of_reach(row: &Filled) -> Mistake {
+    Mistake::at(
+        row.place.clone(),
+        "the step to this row is outside what can be computed: motion by 1 nm or 1e-9 rad at least, \
+         with a slope of 1e-9 to 1e15 N/m or N m/rad",
+        "check both numbers and their units; a seat as hard as that may be left rigid",
+    )
 }
 
 fn does_not_rise(row: &Filled, field: &Field, index: usize) -> Mistake {

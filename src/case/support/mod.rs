@@ -5,6 +5,7 @@ mod law;
 mod motion;
 mod planes;
 
+pub(super) use motion::check_reach;
 pub(super) use planes::line_up;
 
 use super::diagnostics::Mistake;
@@ -235,7 +236,7 @@ pub(super) fn support(filled: &Filled, spring: Option<&Spring>, log: &mut Log) -
     };
     let tilt = filled.number(&TILT, log);
     let offset = filled.number(&OFFSET, log);
-    let motion = motion::motion(filled, spring, log);
+    let motion = motion::motion(filled, log);
     let planes = planes::planes(filled, log);
     let held = match kind?.as_str() {
         "flat" => contact::flat(filled, spring, log),

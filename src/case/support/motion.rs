@@ -4,9 +4,13 @@ use super::super::diagnostics::Mistake;
 use super::super::field::{Absent, Field, Form, Kind, Range};
 use super::super::filled::{Filled, Log};
 use super::SIDEWAYS;
+use super::law::LEAST_STEP;
 use crate::setup::{Curve, LeverArc, MOST_POINTS, Motion, Restraint, Support};
 use crate::spring::Spring;
 use crate::units::{Dimension, MILLIMETRE};
+
+/// A pivot nearer to the axis than this share of its distance along it leaves the seat no travel.
+const NEAR_AXIS: f64 = 0.01;
 
 static ALONG: Field = Field::new(
     "pivot_along",
@@ -66,15 +70,10 @@ pub(super) static MOTION: Field = Field::new(
 )
 .or(Absent::Nothing);
 
-/// How the seat moves aside; `Some(None)`: it moves straight. What `spring` asks of a lever is
-/// checked where it is known.
-pub(super) fn motion(
-    filled: &Filled,
-    spring: Option<&Spring>,
-    log: &mut Log,
-) -> Option<Option<Motion>> {
+/// How the seat moves aside; `Some(None)`: it moves straight.
+pub(super) fn motion(filled: &Filled, log: &mut Log) -> Option<Option<Motion>> {
     if filled.is_given(&LEVER) {
-        lever(filled.table(&LEVER)?, spring, log).map(|arc| Some(Motion::Lever(arc)))
+        lever(filled.table(&LEVER)?, log).map(|arc| Some(Motion::Lever(arc)))
     } else if filled.is_given(&MOTION) {
         table(filled.rows(&MOTION)?, log).map(Some)
     } else {
@@ -82,13 +81,15 @@ pub(super) fn motion(
     }
 }
 
-fn lever(filled: &Filled, spring: Option<&Spring>, log: &mut Log) -> Option<LeverArc> {
+fn lever(filled: &Filled, log: &mut Log) -> Option<LeverArc> {
     let along = filled.number(&ALONG, log);
     let across = filled.number(&ACROSS, log);
-    if across == Some(0.0) {
+    if let Some(across) = across
+        && (across == 0.0 || along.is_some_and(|along| across.abs() < NEAR_AXIS * along.abs()))
+    {
         log.mistakes.push(Mistake::at(
             filled.at(&ACROSS),
-            "the lever's pivot lies on the spring's axis: its seat could not travel along it",
+            "the lever's pivot lies on the spring's axis, or next to it: its seat could not travel along it",
             format!(
                 "give its distance from the axis, for example {}",
                 ACROSS.example_line()
@@ -96,27 +97,39 @@ fn lever(filled: &Filled, spring: Option<&Spring>, log: &mut Log) -> Option<Leve
         ));
         return None;
     }
-    let arc = LeverArc {
+    Some(LeverArc {
         along: along?,
         across: across?,
+    })
+}
+
+/// Notes a lever on which the top seat cannot travel until the spring is solid; `bottom` gives way
+/// as well.
+pub(in crate::case) fn check_reach(
+    filled: &Filled,
+    top: &Support,
+    bottom: &Support,
+    spring: &Spring,
+    log: &mut Log,
+) {
+    let (Some(Motion::Lever(arc)), Some(lever)) = (top.motion, filled.table(&LEVER)) else {
+        return;
     };
-    let largest = arc.largest_travel();
-    if let Some(solid) = spring.map(Spring::solid_deflection)
-        && largest <= solid
-    {
+    let force = spring.rate() * spring.solid_deflection();
+    let seats = top.axial.gives_under(force).0 + bottom.axial.gives_under(force).0;
+    let (largest, needed) = (arc.largest_travel(), spring.solid_deflection() + seats);
+    if largest <= needed {
         log.mistakes.push(Mistake::at(
-            filled.at(&ACROSS),
+            lever.at(&ACROSS),
             format!(
                 "on this lever the seat can travel {} only; the spring is solid after {}",
                 MILLIMETRE.show(largest, 4),
-                MILLIMETRE.show(solid, 4)
+                MILLIMETRE.show(needed, 4)
             ),
-            "the lever allows along + sqrt(along^2 + across^2): check the pivot's place and its \
-             signs, beyond the seat is positive",
+            "the lever allows sqrt(along^2 + across^2) - along: check the pivot's place and its \
+             signs; beyond the seat is positive, on the spring's side negative",
         ));
-        return None;
     }
-    Some(arc)
 }
 
 fn table(rows: &[Filled], log: &mut Log) -> Option<Motion> {
@@ -136,10 +149,13 @@ fn table(rows: &[Filled], log: &mut Log) -> Option<Motion> {
                     sound = false;
                 }
             }
-        } else if offsets.last().is_some_and(|before| travel <= before.0) {
+        } else if offsets
+            .last()
+            .is_some_and(|before| travel < before.0 + LEAST_STEP)
+        {
             log.mistakes.push(Mistake::at(
                 row.at(&TRAVEL),
-                "`travel` does not rise: it is not above that of the row before",
+                "`travel` does not rise: it is not above that of the row before, by 1 nm at least",
                 "list the rows by rising travel, each travel once",
             ));
             sound = false;
