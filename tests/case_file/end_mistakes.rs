@@ -495,6 +495,45 @@ fn a_bottom_that_moves_is_sent_to_the_top() {
     }
 }
 
+/// Brackets, commas and quotes of lists: the cause is named, and nothing that follows from it.
+#[test]
+fn lists_that_are_not_toml() {
+    let law = |rows: &str| with_top(&format!("kind = \"clamped\"\naxial_law = {rows}"));
+    for (text, line, message) in [
+        (
+            law("[\n{ motion = \"1 mm\", force = \"3 N\" },"),
+            16,
+            "a bracket is not closed",
+        ),
+        (
+            law("[{ motion = \"1 mm\", force = \"3 N\" } { motion = \"2 mm\", force = \"6 N\" }]"),
+            14,
+            "a comma is missing",
+        ),
+        (
+            law("[{ motion = \"1 mm\" force = \"3 N\" }]"),
+            14,
+            "a comma is missing",
+        ),
+        (
+            law("[{ motion = 1 mm, force = \"3 N\" }]"),
+            14,
+            "needs quotes",
+        ),
+        (
+            with_top("kind = \"hinged\"\n[[guide]\nkind = \"rod\"\ndiameter = \"50 mm\""),
+            14,
+            "not closed",
+        ),
+    ] {
+        let mistakes = refused(&text);
+        let item = &mistakes.items()[0];
+        assert_eq!(mistakes.items().len(), 1, "{mistakes}");
+        assert_eq!(item.line, line, "{mistakes}");
+        assert!(item.message.contains(message), "{mistakes}");
+    }
+}
+
 /// All the mistakes of the ends and guides in one go.
 #[test]
 fn ends_and_guides_all_at_once() {

@@ -176,6 +176,24 @@ fn measured_laws_begin_at_nought() {
     assert_eq!(elastic.word(), "elastic");
 }
 
+/// 25.4 mm to the inch and 4.4482216152605 N to the pound of force, written out.
+#[test]
+fn laws_in_inches_are_the_same_laws() {
+    let (inch, pound) = (25.4e-3, 4.4482216152605);
+    let seat = top(
+        "kind = \"elastic\"\nsideways_law = [{ motion = \"0.1 in\", force = \"10 lbf\" }]\n\
+         rotational_law = [{ motion = \"0.1 rad\", moment = \"30 lbf in\" }]",
+    );
+    close(
+        &law_of(seat.sideways),
+        &[(0.0, 0.0), (0.1 * inch, 10.0 * pound)],
+    );
+    close(
+        &law_of(seat.rotation),
+        &[(0.0, 0.0), (0.1, 30.0 * pound * inch)],
+    );
+}
+
 /// A force F is a travel of F/k and what a measured seat gives under F; the compression under a
 /// travel is its inverse.
 #[test]
