@@ -5,6 +5,7 @@ mod ends;
 mod files;
 mod garbage;
 mod guides;
+mod law_mistakes;
 mod meaning;
 mod mistakes;
 mod schema;
