@@ -2,7 +2,7 @@
 
 use coilstay::assess::assess;
 use coilstay::result::{Assessment, PathPoint};
-use coilstay::setup::{Loading, Setup, Support};
+use coilstay::setup::{Curve, Loading, Restraint, Setup, Support};
 use coilstay::spring::Wire;
 
 mod fixture;
@@ -95,6 +95,37 @@ fn a_snap_frees_the_loop_of_the_path() {
         assert!((area / freed - 1.0).abs() < 1e-2, "{area} {freed}");
         assert!(snap.force_after_n.expect("rests") < snap.force_before_n);
     }
+}
+
+/// The same loop in the travel of the machine, on a seat whose law stiffens: its energy is freed too.
+/// With the travel held, the loop of the spring alone and that of the seat differ.
+#[test]
+fn a_snap_on_a_stiffening_seat_frees_the_loop_in_the_travel() {
+    let mut case = case(2.70, 1e-6, Loading::Deflection);
+    let force = 0.6 * case.spring.rate() * case.spring.free_length;
+    let law = [(0.0, 0.0), (1e-3, 0.3), (2e-3, 0.9), (3e-3, 2.0)];
+    let law = law.map(|(motion, share)| (motion, share * force));
+    case.top.axial = Restraint::Progressive(Curve::odd(&law).expect("rises"));
+    let answer = assess(&case, "");
+    let snap = answer.snap.as_ref().expect("snaps");
+    let (from, to) = (
+        mark(&answer, "travel_lost"),
+        mark(&answer, "travel_regained"),
+    );
+    let points = between(&answer, from, to);
+    let area = |of: fn(&PathPoint) -> f64| -> f64 {
+        points
+            .windows(2)
+            .map(|pair| -0.5 * (of(&pair[1]) - of(&pair[0])) * (pair[0].force_n + pair[1].force_n))
+            .sum()
+    };
+    let freed = snap.energy_freed_j.expect("frees");
+    let loop_area = area(|point| point.deflection_m);
+    assert!(
+        (loop_area / freed - 1.0).abs() < 1e-2,
+        "{loop_area} {freed}"
+    );
+    assert!((area(|point| point.shortening_m) / freed - 1.0).abs() > 0.1);
 }
 
 /// Between soft seats a snap can end solid at less shortening than any travel passed: solid then

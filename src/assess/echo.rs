@@ -1,7 +1,13 @@
 //! The resolved inputs, as they are shown.
 
-use crate::result::{DutyEcho, ImperfectionEcho, SpringEcho, SupportEcho, SupportsEcho};
-use crate::setup::{BowShape, Loading, Restraint, Setup, Support, TopPosition};
+use crate::result::{
+    DutyEcho, ForceLawPoint, GuideEcho, ImperfectionEcho, LateralEcho, LinkEcho, MomentLawPoint,
+    MotionEcho, MotionPoint, SpringEcho, SupportEcho, SupportsEcho,
+};
+use crate::setup::{
+    BowShape, Contact, Curve, FixedTo, Guide, GuideKind, Lateral, Link, Loading, Motion, Restraint,
+    Setup, Support, TopPosition,
+};
 use crate::spring::{Hand, Wire};
 
 pub(super) fn spring(setup: &Setup) -> SpringEcho {
@@ -55,18 +61,139 @@ pub(super) fn supports(setup: &Setup) -> SupportsEcho {
 }
 
 fn support(support: &Support) -> SupportEcho {
-    let stiffness = |restraint: Restraint| match restraint {
-        Restraint::Held => None,
-        other => Some(other.stiffness()),
+    let (contact, seat, swivel) = match support.contact {
+        Contact::Joined => ("joined", None, None),
+        Contact::Flat(seat) => ("flat", Some(seat), None),
+        Contact::Swivel(swivel) => ("ball", None, Some(swivel)),
     };
     SupportEcho {
         kind: support.word().to_owned(),
         rotational_stiffness_n_m_per_rad: stiffness(support.rotation),
         sideways_stiffness_n_per_m: stiffness(support.sideways),
         axial_stiffness_n_per_m: stiffness(support.axial),
+        rotational_law: law(support.rotation, moment_point),
+        sideways_law: law(support.sideways, force_point),
+        axial_law: law(support.axial, force_point),
         arm_m: support.arm,
         tilt_rad: support.tilt,
         offset_m: support.offset,
+        contact: contact.to_owned(),
+        seat_radius_m: seat.map(|seat| seat.radius),
+        ground_share: seat.map(|seat| seat.ground_share),
+        friction: seat
+            .and_then(|seat| seat.friction)
+            .or(swivel.map(|swivel| swivel.friction)),
+        swivel_radius_m: swivel.map(|swivel| swivel.radius),
+        link: support.link.map(link),
+        motion: support.motion.map(motion),
+        other_plane: support.other_plane.map(lateral),
+        plane_rad: support.plane,
+    }
+}
+
+/// `None` where it is held.
+fn stiffness(restraint: Restraint) -> Option<f64> {
+    match restraint {
+        Restraint::Held => None,
+        other => Some(other.stiffness()),
+    }
+}
+
+/// The points of a law as measured.
+fn law<P>(restraint: Restraint, point: fn((f64, f64)) -> P) -> Option<Vec<P>> {
+    match restraint {
+        Restraint::Progressive(curve) => Some(curve.points().map(point).collect()),
+        _ => None,
+    }
+}
+
+fn force_point((motion_m, force_n): (f64, f64)) -> ForceLawPoint {
+    ForceLawPoint { motion_m, force_n }
+}
+
+fn moment_point((rotation_rad, moment_n_m): (f64, f64)) -> MomentLawPoint {
+    MomentLawPoint {
+        rotation_rad,
+        moment_n_m,
+    }
+}
+
+fn lateral(lateral: Lateral) -> LateralEcho {
+    LateralEcho {
+        rotational_stiffness_n_m_per_rad: stiffness(lateral.rotation),
+        sideways_stiffness_n_per_m: stiffness(lateral.sideways),
+        rotational_law: law(lateral.rotation, moment_point),
+        sideways_law: law(lateral.sideways, force_point),
+        tilt_rad: lateral.tilt,
+        offset_m: lateral.offset,
+    }
+}
+
+fn link(link: Link) -> LinkEcho {
+    LinkEcho {
+        kind: if link.hanging { "hanger" } else { "strut" }.to_owned(),
+        length_m: link.length,
+    }
+}
+
+fn motion(motion: Motion) -> MotionEcho {
+    match motion {
+        Motion::Lever(arc) => MotionEcho {
+            kind: "lever".to_owned(),
+            pivot_along_m: Some(arc.along),
+            pivot_across_m: Some(arc.across),
+            table: Vec::new(),
+        },
+        Motion::Table { offset, tilt } => MotionEcho {
+            kind: "table".to_owned(),
+            pivot_along_m: None,
+            pivot_across_m: None,
+            table: motion_table(&offset, &tilt),
+        },
+    }
+}
+
+/// Offset and tilt at every travel that either of them is given at.
+fn motion_table(offset: &Curve, tilt: &Curve) -> Vec<MotionPoint> {
+    let mut travels: Vec<f64> = offset.points().chain(tilt.points()).map(|p| p.0).collect();
+    travels.sort_by(f64::total_cmp);
+    travels.dedup();
+    travels
+        .into_iter()
+        .map(|travel_m| MotionPoint {
+            travel_m,
+            offset_m: offset.at(travel_m).value,
+            tilt_rad: tilt.at(travel_m).value,
+        })
+        .collect()
+}
+
+pub(super) fn guides(setup: &Setup) -> Vec<GuideEcho> {
+    setup.guides.iter().map(|one| guide(setup, one)).collect()
+}
+
+fn guide(setup: &Setup, guide: &Guide) -> GuideEcho {
+    let spring = &setup.spring;
+    let closed = spring.wire.axial_size() / spring.pitch();
+    GuideEcho {
+        kind: match guide.kind {
+            GuideKind::Rod => "rod",
+            GuideKind::Bore => "bore",
+        }
+        .to_owned(),
+        diameter_m: guide.diameter,
+        clearance_free_m: guide.clearance(spring, 1.0),
+        clearance_closed_m: guide.clearance(spring, closed),
+        fixed_to: match guide.fixed_to {
+            FixedTo::Ground => "ground",
+            FixedTo::Bottom => "bottom",
+            FixedTo::Top => "top",
+        }
+        .to_owned(),
+        from_m: guide.from,
+        to_m: guide.to.is_finite().then_some(guide.to),
+        friction: guide.friction,
+        touching_allowed: guide.touching_allowed,
     }
 }
 

@@ -6,6 +6,7 @@ use crate::column::Column;
 use crate::result::PathPoint;
 use crate::setup::{LimitKind, Loading, Setup};
 use crate::solve::{Newton, locate};
+use std::cell::RefCell;
 
 /// An event on a path.
 #[derive(Clone, Debug)]
@@ -37,6 +38,16 @@ pub(super) enum EventKind {
     Working,
     /// The working deflection with its tolerance.
     LargestWorking,
+    /// Flat ends that stood on an edge sit flush.
+    Seated,
+    /// A guide is touched first.
+    FirstTouch,
+    /// The stretch that leans is longer than a pitch: more than one coil bears.
+    LineContact,
+    /// It leans at another place too.
+    SecondPlace,
+    /// From here on what lies flat on a guide could buckle away from it into the next mode.
+    LooseFlat,
 }
 
 impl Event {
@@ -92,16 +103,15 @@ impl Track<'_> {
         let setup = self.setup;
         let duty = &setup.duty;
         let solid = setup.spring.solid_deflection();
-        let seats = super::straight::seat_compliance(setup);
-        let left_rate = (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + seats);
+        // Of the straight spring on its seats, under the same force.
+        let left_rate = |force: f64| {
+            (1.0 - duty.rate_loss_share) / (1.0 / setup.spring.rate() + setup.seats_give(force).1)
+        };
         let stress = duty.allowable_stress.unwrap_or(f64::INFINITY);
         let limit = EventKind::Limit;
         let reached = |s: &Seen| duty.reached(s.point.deflection_m, s.point.force_n);
         let watches = [
             Watch::state(limit(LimitKind::Bow), |s| duty.bow_limit - s.point.bow_m),
-            Watch::direction(limit(LimitKind::RateLost), |s| {
-                s.along.0 - left_rate * s.along.1
-            }),
             Watch::direction(limit(LimitKind::DeadLoadLost), |s| s.along.0),
             Watch::direction(limit(LimitKind::TravelLost), |s| s.along.1),
             Watch::state(limit(LimitKind::Clash), |s| s.clearance),
@@ -123,6 +133,14 @@ impl Track<'_> {
             .iter()
             .filter_map(|watch| self.first(watch, 0))
             .collect();
+        // A spring that stands on an edge is soft until it sits.
+        let seated = self.first_seated();
+        let rate = Watch::direction(limit(LimitKind::RateLost), |s| {
+            s.along.0 - left_rate(s.point.force_n) * s.along.1
+        });
+        events.extend(self.first(&rate, seated.unwrap_or(0)));
+        self.of_flat_ends(seated, &mut events);
+        self.of_guides(&mut events);
         // After a load or a travel is lost: where the same is carried again.
         let lost = |events: &[Event], kind: LimitKind| {
             let lost = events.iter().find(|event| event.kind == limit(kind))?;
@@ -142,6 +160,99 @@ impl Track<'_> {
         }
         account_for_jump(duty.loading, &mut events);
         events
+    }
+
+    /// Index of the first point at which all flat ends sit flush; 0 without flat ends.
+    fn first_seated(&self) -> Option<usize> {
+        self.seen
+            .iter()
+            .position(|seen| seen.seated.is_none_or(|kept| kept > 0.0))
+    }
+
+    /// Seating, lift-off and sliding of flat ends. One that has not sat down by the working
+    /// deflection counts as lifted from the start.
+    fn of_flat_ends(&mut self, seated: Option<usize>, events: &mut Vec<Event>) {
+        let setup = self.setup;
+        if setup.has(LimitKind::LiftOff) {
+            let watch = Watch::state(EventKind::Limit(LimitKind::LiftOff), |s| {
+                s.seated.unwrap_or(1.0)
+            });
+            let reached = |seen: &Seen| {
+                setup
+                    .duty
+                    .reached(seen.point.deflection_m, seen.point.force_n)
+            };
+            let in_time = seated
+                .filter(|i| reached(&self.seen[*i]) <= setup.duty.largest_working_deflection());
+            match in_time {
+                Some(index) => {
+                    if index > 0 {
+                        let sits = Watch::state(EventKind::Seated, |s| -s.seated.unwrap_or(1.0));
+                        events.extend(self.first(&sits, 0));
+                    }
+                    events.extend(self.first(&watch, index));
+                }
+                None => events.extend(self.first(&watch, 0)),
+            }
+        }
+        if setup.has(LimitKind::Slide) && self.seen.len() > 1 {
+            // Unloaded there is neither thrust nor friction.
+            let watch = Watch::state(EventKind::Limit(LimitKind::Slide), |s| {
+                s.slides.unwrap_or(f64::INFINITY)
+            });
+            events.extend(if self.seen[1].slides.is_some_and(|kept| kept <= 0.0) {
+                Some(self.event(watch.kind, &self.points[1], 0.0, 1.0))
+            } else {
+                self.first(&watch, 1)
+            });
+        }
+    }
+
+    /// Contact with guides.
+    fn of_guides(&mut self, events: &mut Vec<Event>) {
+        let setup = self.setup;
+        if setup.guides.is_empty() {
+            return;
+        }
+        let pitch = setup.spring.pitch();
+        let watches = [
+            Watch::state(EventKind::Limit(LimitKind::GuideTouch), |s| {
+                s.forbidden_room.unwrap_or(f64::INFINITY)
+            }),
+            Watch::state(EventKind::FirstTouch, |s| {
+                s.point.guide_room_m.unwrap_or(f64::INFINITY)
+            }),
+            Watch::state(EventKind::LineContact, |s| pitch - s.point.guide_longest_m),
+            Watch::state(EventKind::SecondPlace, |s| {
+                1.5 - f64::from(s.point.guide_places)
+            }),
+        ];
+        for watch in &watches {
+            events.extend(self.first(watch, 0));
+        }
+        events.extend(self.loose_flat());
+    }
+
+    /// Where a stretch that lies flat on a guide first could buckle away from it.
+    fn loose_flat(&mut self) -> Option<Event> {
+        let loose = RefCell::new((self.column.loosened()?, self.newton.clone()));
+        let unstable = |point: &Solved| {
+            let (column, newton) = &mut *loose.borrow_mut();
+            newton.evaluate(column, &point.state, point.load) > point.negatives
+        };
+        let leaning = self.seen.iter().position(|s| s.point.guide_places > 0)?;
+        let index = (leaning..self.points.len()).find(|i| unstable(&self.points[*i]))?;
+        let after = index.checked_sub(1)?;
+        let found = locate(
+            self.column,
+            self.newton,
+            self.points,
+            after,
+            BRACKET,
+            |point| if unstable(point) { -1.0 } else { 1.0 },
+        )?;
+        let place = after as f64 + found.distance / self.points[after].distance;
+        Some(self.event(EventKind::LooseFlat, &found.point, found.bracket, place))
     }
 
     /// The first point from index `from` on at which the watch turns from positive to not.

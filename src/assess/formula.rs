@@ -1,9 +1,9 @@
 //! What the handbook's formula says of the case.
 
-use super::straight::{is_beyond_solid, measure, seat_compliance};
+use super::straight::{is_beyond_solid, measure};
 use crate::criteria::{EndConstant, HandbookEnd, critical_share, end_constants, stable_below};
 use crate::result::{ClosedForm, ClosedFormCurve};
-use crate::setup::{Restraint, Setup, Support};
+use crate::setup::{Contact, Restraint, Setup, Support};
 
 const FORMULA: &str = "critical deflection C1(1 - sqrt(1 - C2/(alpha L0/D)^2)), EN 13906-1 \
     buckling clause (from memory) and Shigley, Mechanical Engineering Design (seen)";
@@ -19,11 +19,7 @@ pub(super) fn closed_form(setup: &Setup) -> ClosedForm {
         .map(|constant| {
             let critical = critical_share(&section, constant.value * length).map(|share| {
                 let force = spring.rate() * share * length;
-                measure(
-                    setup,
-                    share * length + force * seat_compliance(setup),
-                    force,
-                )
+                measure(setup, share * length + setup.seats_give(force).0, force)
             });
             ClosedFormCurve {
                 end_constant: constant.value,
@@ -49,7 +45,46 @@ pub(super) fn closed_form(setup: &Setup) -> ClosedForm {
         critical_deflection_m: curves.first().and_then(|c| c.critical_deflection_m),
         curves,
         note,
+        unseen: unseen(setup),
     }
+}
+
+/// What of the case neither the closed form nor the straight column sees, or why no handbook end
+/// fits, each in a sentence.
+fn unseen(setup: &Setup) -> Vec<String> {
+    let mut notes = Vec::new();
+    for (name, support) in [("bottom", &setup.bottom), ("top", &setup.top)] {
+        match support.contact {
+            Contact::Joined => {}
+            Contact::Flat(_) => notes.push(format!(
+                "The flat {name} seat counts as holding the end as long as it bears: the straight \
+                 column does not rock. Lift-off is a limit of the imperfect column."
+            )),
+            Contact::Swivel(_) => notes.push(format!(
+                "The friction of the {name} ball does not count: the straight column puts no moment \
+                 on it. The imperfect column feels it."
+            )),
+        }
+        if support.link.is_some() {
+            notes.push(format!(
+                "The load comes through a link at the {name}: no handbook end is like it."
+            ));
+        }
+        if support.motion.is_some() {
+            notes.push(format!(
+                "The {name} seat moves aside as it travels: the straight column does not, its end \
+                 counts as the kind it is. The imperfect column goes with the seat."
+            ));
+        }
+    }
+    if !setup.guides.is_empty() {
+        notes.push(
+            "Guides do not count: formula, straight column and column as built, perfect, do not \
+             touch them. The imperfect column leans on them."
+                .to_owned(),
+        );
+    }
+    notes
 }
 
 /// The end constants that cover the case; none for elastic ends.
@@ -60,8 +95,13 @@ fn constants(setup: &Setup) -> &'static [EndConstant] {
     }
 }
 
-/// The support as the handbooks know it. An arm matters where the end can turn about its pivot.
-fn handbook_end(support: &Support) -> Option<HandbookEnd> {
+/// The support as the handbooks know it, before it bows: a flat seat clamps, a ball with friction
+/// is a hinge, a seat that moves aside is of the kind it is. An arm matters where the end can turn
+/// about its pivot. No handbook end is like a link.
+pub(super) fn handbook_end(support: &Support) -> Option<HandbookEnd> {
+    if support.link.is_some() {
+        return None;
+    }
     match (support.rotation, support.sideways) {
         (Restraint::Held, Restraint::Held) => Some(HandbookEnd::Clamped),
         (Restraint::Held, Restraint::Free) => Some(HandbookEnd::Sliding),

@@ -1,7 +1,7 @@
 //! The column as built and imperfect, for the worst way in which its deviations lie, on two meshes.
 
-use super::MESHES;
 use super::events::{Event, EventKind};
+use super::guided_meshes;
 use super::run::Run;
 use super::straight::floor;
 use super::walk::{PathEnd, Reach};
@@ -28,7 +28,7 @@ pub(super) struct Imperfect {
 /// Follows the path for every orientation on the coarser mesh, which decides between them, and for
 /// the worst on the finer.
 pub(super) fn run(setup: &Setup) -> Imperfect {
-    let [coarse_mesh, fine_mesh] = MESHES;
+    let [coarse_mesh, fine_mesh] = guided_meshes(setup);
     let perfect = |elements: usize| {
         let mut column = Column::of_setup(setup, Idealisation::AsBuilt, elements, None);
         StraightScan::new(&mut column).buckling()

@@ -3,7 +3,6 @@
 
 use super::events::{Event, EventKind};
 use super::imperfect::Imperfect;
-use super::straight::seat_compliance;
 use crate::result::{DeadLoad, Snap};
 use crate::setup::{LimitKind, Loading, Setup};
 
@@ -23,7 +22,7 @@ pub(super) fn dead_load(setup: &Setup, imperfect: &Imperfect) -> Option<DeadLoad
     let rest = regained.or(solid);
     let jump = lost.zip(rest);
     let force = lost.map_or(0.0, |lost| lost.point.force_n);
-    let rests_at = jump.map(|(_, rest)| rest.point.shortening_m + force * seat_compliance(setup));
+    let rests_at = jump.map(|(_, rest)| rest.point.shortening_m + setup.seats_give(force).0);
     Some(DeadLoad {
         path_ends_at_m: imperfect.ends_before_solid(),
         lost_at_force_n: lost.map(|lost| lost.point.force_n),
@@ -54,17 +53,17 @@ pub(super) fn snap(setup: &Setup, imperfect: &Imperfect) -> Option<Snap> {
         .event(EventKind::TravelRegained)
         .filter(|event| event.is_stable(Loading::Deflection))
         .filter(|event| solid.is_none_or(|solid| event.place < solid.place));
-    let rest = regained.or(solid);
-    let seats = seat_compliance(setup);
     // Solid, the spring shortens no more: the soft seats take up what is left of the travel.
+    let left = |solid: &Event| lost.point.deflection_m - solid.point.shortening_m;
+    let rest = regained.or(solid.filter(|solid| left(solid) > 0.0));
     let force_after = |rest: &Event| {
         if regained.is_some() {
             rest.point.force_n
         } else {
-            (lost.point.deflection_m - rest.point.shortening_m) / seats
+            force_of_seats(setup, left(rest))
         }
     };
-    let stored = |event: &Event, force: f64| event.strain_energy + 0.5 * force.powi(2) * seats;
+    let stored = |event: &Event, force: f64| event.strain_energy + setup.seats_store(force);
     Some(Snap {
         lost_at_deflection_m: lost.point.deflection_m,
         force_before_n: lost.point.force_n,
@@ -76,6 +75,28 @@ pub(super) fn snap(setup: &Setup, imperfect: &Imperfect) -> Option<Snap> {
             .map(|rest| stored(lost, lost.point.force_n) - stored(rest, force_after(rest))),
         clash_on_the_way: rest.is_some_and(|rest| clashes_before(imperfect, rest)),
     })
+}
+
+/// Force under which the soft seats together give that much, m. Halved to round-off: what they give
+/// rises with the force.
+fn force_of_seats(setup: &Setup, give: f64) -> f64 {
+    let (mut low, mut high) = (0.0, setup.spring.rate() * give);
+    while setup.seats_give(high).0 < give && high.is_finite() {
+        low = high;
+        high *= 2.0;
+    }
+    for _ in 0..200 {
+        let middle = 0.5 * (low + high);
+        if middle <= low || middle >= high {
+            break;
+        }
+        if setup.seats_give(middle).0 < give {
+            low = middle;
+        } else {
+            high = middle;
+        }
+    }
+    high
 }
 
 /// Whether the path reaches the first clash of coils before that event, by the bow it has there.

@@ -2,7 +2,7 @@
 
 use super::events::EventKind;
 use super::imperfect::Imperfect;
-use super::straight::{Critical, is_beyond_solid, seat_compliance, share_of_free_length};
+use super::straight::{Critical, is_beyond_solid, share_of_free_length};
 use crate::result::{Limit, StressAtSolid};
 use crate::setup::{LimitKind, Setup};
 use crate::spring::{compressed_radius, torsion_stress};
@@ -27,6 +27,9 @@ pub(super) fn collect(
         LimitKind::Clash,
         LimitKind::DeadLoadLost,
         LimitKind::TravelLost,
+        LimitKind::LiftOff,
+        LimitKind::Slide,
+        LimitKind::GuideTouch,
     ];
     limits.extend(
         from_path
@@ -34,6 +37,7 @@ pub(super) fn collect(
             .filter(|kind| setup.has(*kind))
             .map(|kind| path_limit(setup, imperfect, kind)),
     );
+    limits.extend(setup.has(LimitKind::BoreFilled).then(|| bore_limit(setup)));
     limits.sort_by(|a, b| {
         let key = |limit: &Limit| limit.deflection_m.unwrap_or(f64::INFINITY);
         key(a).total_cmp(&key(b)).then(a.name.cmp(&b.name))
@@ -84,7 +88,7 @@ fn critical_limit(setup: &Setup, critical: Option<&Critical>) -> Limit {
 /// counts as reached where the jump starts.
 fn solid_limit(setup: &Setup, imperfect: &Imperfect) -> Limit {
     let shortening = setup.spring.solid_deflection();
-    let reached_with = |force: f64| shortening + force * seat_compliance(setup);
+    let reached_with = |force: f64| shortening + setup.seats_give(force).0;
     let by_rate = setup.spring.rate() * shortening;
     let (reached, whose) = match imperfect.event(setup, EventKind::Limit(LimitKind::Solid)) {
         Some((event, error)) if event.in_jump => (
@@ -110,6 +114,29 @@ fn solid_limit(setup: &Setup, imperfect: &Imperfect) -> Limit {
     }
 }
 
+/// Where the coil, grown by compression, fills its bore: by the spring's geometry, straight.
+fn bore_limit(setup: &Setup) -> Limit {
+    let spring = &setup.spring;
+    let filled = setup
+        .guides
+        .iter()
+        .filter_map(|guide| guide.filled_at_pitch(spring))
+        .reduce(f64::max);
+    let reached = filled.map(|pitch| {
+        let shortening = spring.deformable_length() * (1.0 - pitch / spring.pitch());
+        let force = spring.rate() * shortening;
+        (shortening + setup.seats_give(force).0, force, None)
+    });
+    limit(
+        setup,
+        LimitKind::BoreFilled,
+        reached,
+        "outer diameter grown by compression, straight spring, for the worse of ends held and ends \
+         free to turn about the axis"
+            .to_owned(),
+    )
+}
+
 fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
     let duty = &setup.duty;
     let meaning = match kind {
@@ -124,6 +151,13 @@ fn path_limit(setup: &Setup, imperfect: &Imperfect, kind: LimitKind) -> Limit {
         LimitKind::DeadLoadLost => "imperfect column: largest force of its path".into(),
         LimitKind::TravelLost => "imperfect column: largest travel before it snaps".into(),
         LimitKind::Stress => "imperfect column: corrected shear stress at the worst section".into(),
+        LimitKind::LiftOff => {
+            "imperfect column: the force line leaves the rigid ring of a flat end, \
+                               which then stands on its edge"
+                .into()
+        }
+        LimitKind::Slide => "imperfect column: thrust at a flat end above friction".into(),
+        LimitKind::GuideTouch => "imperfect column: first touch of a guide".into(),
         _ => "imperfect column: inside of the bow; the model ends there".into(),
     };
     if kind == LimitKind::Stress && duty.allowable_stress.is_none() {

@@ -1,7 +1,6 @@
 //! What a reader must know of the models used on this case.
 
 use super::imperfect::Imperfect;
-use super::straight::seat_compliance;
 use crate::setup::{Loading, Restraint, Setup, Support};
 use crate::spring::Wire;
 
@@ -11,9 +10,10 @@ const FEW_COILS: f64 = 5.0;
 pub(super) fn notes(setup: &Setup, imperfect: &Imperfect) -> Vec<String> {
     let mut notes = Vec::new();
     let duty = &setup.duty;
+    let solid_force = setup.spring.rate() * setup.spring.solid_deflection();
     let solid = duty.reached(
-        setup.spring.solid_deflection() * (1.0 + setup.spring.rate() * seat_compliance(setup)),
-        setup.spring.rate() * setup.spring.solid_deflection(),
+        setup.spring.solid_deflection() + setup.seats_give(solid_force).0,
+        solid_force,
     );
     if duty.largest_working_deflection() > solid {
         notes.push(

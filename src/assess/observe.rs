@@ -1,9 +1,9 @@
 //! From a state of the column to what people ask about it.
 
-use super::straight::seat_compliance;
-use crate::column::{Column, Peak, Station};
+use super::leaned::Leaned;
+use crate::column::{Column, Peak, SeatPress, Station};
 use crate::result::PathPoint;
-use crate::setup::Setup;
+use crate::setup::{Contact, FixedTo, FlatSeat, Setup};
 use crate::solve;
 use crate::spring::{Wire, compressed_radius, torsion_stress};
 use std::f64::consts::PI;
@@ -16,7 +16,6 @@ pub(super) struct Observer {
     /// Unloaded in its seats: sideways position and slope at each station.
     start: Vec<Station>,
     start_height: f64,
-    seats: f64,
 }
 
 /// A path point with what only limits need.
@@ -25,19 +24,25 @@ pub(super) struct Seen {
     pub point: PathPoint,
     /// Axial gap between coils at the tightest place on the inside of the bow, m; 0 at contact.
     pub clearance: f64,
+    /// Least of what keeps a flat end flush, positive while all are: how far the force line stays
+    /// inside the edge, share of its distance; negative: how far the end is turned out.
+    pub seated: Option<f64>,
+    /// Least of friction less thrust where an end could slide, N.
+    pub slides: Option<f64>,
+    /// Smallest room to a guide that may not be touched, in the column's length.
+    pub forbidden_room: Option<f64>,
     /// Direction of the path: change of the force, N, and of the travel, m.
     pub along: (f64, f64),
 }
 
 impl Observer {
     /// An observer of paths that start at `unloaded`.
-    pub fn new(setup: &Setup, column: &Column, unloaded: &Solved) -> Self {
+    pub fn new(column: &Column, unloaded: &Solved) -> Self {
         let mut start = Vec::new();
         column.profile(&unloaded.state, &mut start);
         Observer {
             start,
             start_height: unloaded.state.nodes[column.elements()][0],
-            seats: seat_compliance(setup),
         }
     }
 
@@ -52,11 +57,23 @@ impl Observer {
         column.profile(&solved.state, &mut stations);
         let scale = column.scale;
         let last = column.elements();
-        let force = solved.load * scale.force;
+        // What the machine feels: a guide that the top seat carries pushes on the machine too, and
+        // the bottom seat alone is left to carry it all.
+        let carried = setup
+            .guides
+            .iter()
+            .any(|guide| guide.fixed_to == FixedTo::Top);
+        let (load, load_along) = if carried {
+            (-solved.state.inner[0][3], -solved.direction.inner[0][3])
+        } else {
+            (solved.load, solved.load_direction)
+        };
+        let force = load * scale.force;
         let shortening = (self.start_height - solved.state.nodes[last][0]) * scale.length;
-        let force_along = solved.load_direction * scale.force;
+        let force_along = load_along * scale.force;
+        let (seats, seat_compliance) = setup.seats_give(force);
         let travel_along =
-            -solved.direction.nodes[last][0] * scale.length + force_along * self.seats;
+            -solved.direction.nodes[last][0] * scale.length + force_along * seat_compliance;
         let dead = setup.spring.dead_height() / (2.0 * scale.length);
         let growth = |sign: f64| {
             let along = Peak::of(stations.iter().zip(&self.start).map(|(now, then)| {
@@ -89,10 +106,15 @@ impl Observer {
             (right, -right.value)
         };
         let actions = column.end_actions(&solved.state);
+        let seats_pressed = [0, 1].map(|end| column.seat_press(&solved.state, end));
+        let line =
+            |press: &SeatPress| (press.press.abs() > NO_FORCE).then_some(press.line * scale.length);
+        let guide = Leaned::on(setup, column, &solved.state, &stations);
+        let friction = guide.drag * scale.force;
         let falling = force_along * travel_along < 0.0;
         Seen {
             point: PathPoint {
-                deflection_m: shortening + force * self.seats,
+                deflection_m: shortening + seats,
                 shortening_m: shortening,
                 force_n: force,
                 bow_m: bow.value * scale.length,
@@ -103,6 +125,20 @@ impl Observer {
                 bottom_moment_n_m: actions[0][2] * scale.moment(),
                 top_moment_n_m: actions[1][2] * scale.moment(),
                 transverse_force_n: solved.state.inner[0][4] * scale.force,
+                bottom_thrust_n: seats_pressed[0].thrust * scale.force,
+                top_thrust_n: seats_pressed[1].thrust * scale.force,
+                bottom_line_m: line(&seats_pressed[0]),
+                top_line_m: line(&seats_pressed[1]),
+                bottom_lift_rad: seats_pressed[0].turned,
+                top_lift_rad: seats_pressed[1].turned,
+                guide_room_m: guide.room.map(|room| room * scale.length),
+                guide_force_n: guide.push * scale.force,
+                guide_coil_force_n: guide.on_one_coil.value * scale.force,
+                guide_coil_place: guide.on_one_coil.place,
+                guide_places: guide.places,
+                guide_longest_m: guide.longest * scale.length,
+                guide_corner_force_n: guide.at_corners * scale.force,
+                guide_friction_n: -friction,
                 rate_n_per_m: force_along / travel_along,
                 wire_stress_pa: wire_stress(setup, column, &stations),
                 unstable_set_deflection: solved.negatives
@@ -110,9 +146,51 @@ impl Observer {
                 unstable_dead_load: solved.negatives,
             },
             clearance: clearance(setup, column, &stations),
+            seated: flat_ends(setup, &seats_pressed),
+            slides: sliding_ends(setup, &seats_pressed, scale.force),
+            forbidden_room: column
+                .tightest(&solved.state, &stations, true)
+                .map(|tight| tight.value),
             along: (force_along, travel_along),
         }
     }
+}
+
+/// Force, EI/L², below which a force line has no place.
+const NO_FORCE: f64 = 1e-9;
+
+/// What keeps flat ends flush; `None` without a flat end.
+fn flat_ends(setup: &Setup, pressed: &[SeatPress; 2]) -> Option<f64> {
+    let kept = [&setup.bottom, &setup.top]
+        .into_iter()
+        .zip(pressed)
+        .filter_map(|(end, press)| match end.contact {
+            Contact::Flat(_) if press.turned != 0.0 => Some(-press.turned.abs()),
+            Contact::Flat(flat) => {
+                // Nothing is carried yet: flush by itself.
+                if press.press.abs() < NO_FORCE {
+                    return Some(1.0);
+                }
+                Some(1.0 - (press.line / flat.edge()).abs())
+            }
+            _ => None,
+        });
+    kept.reduce(f64::min)
+}
+
+/// Friction less thrust where an end could slide; `None` where none can.
+fn sliding_ends(setup: &Setup, pressed: &[SeatPress; 2], force: f64) -> Option<f64> {
+    let kept = [&setup.bottom, &setup.top]
+        .into_iter()
+        .zip(pressed)
+        .filter_map(|(end, press)| match end.contact {
+            Contact::Flat(FlatSeat {
+                friction: Some(friction),
+                ..
+            }) => Some((friction * press.press - press.thrust.abs()) * force),
+            _ => None,
+        });
+    kept.reduce(f64::min)
 }
 
 /// Largest corrected shear stress in the wire: T = |N| R + |M| at the worst section.

@@ -80,7 +80,7 @@ impl Run {
                 return run;
             }
         };
-        let observer = Observer::new(setup, &column, &first);
+        let observer = Observer::new(&column, &first);
         let mut points = vec![first];
         let walked = walk(
             setup,

@@ -9,7 +9,6 @@
 //! derived here.
 
 use super::observe::{Observer, Solved};
-use super::straight::seat_compliance;
 use crate::column::{Buckling, Column};
 use crate::result::Southwell;
 use crate::setup::Setup;
@@ -67,7 +66,7 @@ pub(super) fn estimate(
     let xi = 2.0 * q / (1.0 + under.sqrt());
     let force = xi / compliance * column.scale.force;
     Some(Southwell {
-        deflection_m: xi * column.scale.length + force * seat_compliance(setup),
+        deflection_m: xi * column.scale.length + setup.seats_give(force).0,
         r_squared,
         points: line.len(),
     })

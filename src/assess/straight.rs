@@ -28,11 +28,6 @@ pub(super) fn floor(setup: &Setup, deflection: Metre) -> Metre {
     FLOOR_OF_DEFLECTION * deflection + FLOOR_OF_LENGTH * setup.spring.free_length
 }
 
-/// What the machine travels more than the spring shortens, per newton: its seats' axial compliance.
-pub(super) fn seat_compliance(setup: &Setup) -> f64 {
-    1.0 / setup.bottom.axial.stiffness() + 1.0 / setup.top.axial.stiffness()
-}
-
 fn critical(setup: &Setup, idealisation: Idealisation) -> Option<Critical> {
     let on_mesh = |elements: usize| {
         let mut column = Column::of_setup(setup, idealisation, elements, None);
@@ -41,7 +36,7 @@ fn critical(setup: &Setup, idealisation: Idealisation) -> Option<Critical> {
             let force = found.load * scale.force;
             let travel = |shortening: f64| {
                 let share = shortening / found.shortening;
-                shortening * scale.length + share * force * seat_compliance(setup)
+                shortening * scale.length + setup.seats_give(share * force).0
             };
             (
                 travel(found.shortening),
@@ -96,10 +91,10 @@ pub(super) fn measure(setup: &Setup, deflection: Metre, force: Newton) -> Measur
 
 /// Shortening of the spring, without what its seats give, over its free length.
 pub(super) fn share_of_free_length(setup: &Setup, deflection: Metre, force: Newton) -> f64 {
-    (deflection - force * seat_compliance(setup)) / setup.spring.free_length
+    (deflection - setup.seats_give(force).0) / setup.spring.free_length
 }
 
 /// Whether the spring is solid before it gets there.
 pub(super) fn is_beyond_solid(setup: &Setup, deflection: Metre, force: Newton) -> bool {
-    deflection - force * seat_compliance(setup) > setup.spring.solid_deflection()
+    deflection - setup.seats_give(force).0 > setup.spring.solid_deflection()
 }

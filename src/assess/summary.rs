@@ -17,6 +17,9 @@ impl Imperfect {
             LimitKind::TravelLost,
             LimitKind::Stress,
             LimitKind::Clash,
+            LimitKind::LiftOff,
+            LimitKind::Slide,
+            LimitKind::GuideTouch,
         ];
         let first = limits
             .iter()
@@ -116,6 +119,11 @@ fn mark_name(loading: Loading, kind: EventKind) -> Option<&'static str> {
         }
         (EventKind::Installed, _) => "installed",
         (EventKind::Working, _) => "working",
+        (EventKind::Seated, _) => "seated",
+        (EventKind::FirstTouch, _) => "first_touch",
+        (EventKind::LineContact, _) => "line_contact",
+        (EventKind::SecondPlace, _) => "second_place",
+        (EventKind::LooseFlat, _) => "loose_flat",
     })
 }
 

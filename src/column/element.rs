@@ -202,7 +202,7 @@ impl Element {
 
 impl ElementForms {
     #[inline]
-    fn add_lever(&mut self, end: usize, lever: &Lever, angle: f64, fx: f64, fy: f64) {
+    pub(super) fn add_lever(&mut self, end: usize, lever: &Lever, angle: f64, fx: f64, fy: f64) {
         let (sin, cos) = angle.sin_cos();
         let reach = [
             lever.along * cos - lever.across * sin,

@@ -6,11 +6,14 @@
 
 use super::basis::{GAUSS_AT, Tables};
 use super::element::{Element, INNER, Lever, PointLaw};
+use super::guided::Leaning;
+use super::lean::Held;
+use super::seat::Seat;
 use crate::setup::Curve;
-use crate::solve::Unknowns;
+use crate::solve::{System, Unknowns};
 use crate::spring::Section;
 use crate::units::{Metre, Newton, NewtonMetre, Radian};
-use nalgebra::{SMatrix, Vector3};
+use nalgebra::{Matrix3, SMatrix, Vector3};
 
 /// State of a column: (x, y, θ) at the nodes, (c_1, c_2, c_3, F_x, F_y) in the elements.
 pub type ColumnState = Unknowns<3, INNER>;
@@ -36,6 +39,7 @@ impl Scale {
     }
 }
 
+#[allow(clippy::large_enum_variant)] // plain data, kept `Copy`
 /// How one unknown of an end is held. Values in the column's units.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Hold {
@@ -138,6 +142,8 @@ pub struct Column {
     pub(super) elements: Vec<Element>,
     pub(super) bottom: EndLaws,
     pub(super) top: EndLaws,
+    pub(super) seats: [Seat; 2],
+    pub(super) leaning: Option<Leaning>,
     pub(super) pattern: Vec<Vector3<f64>>,
     pub(super) natural_angles: Vec<f64>,
     pub(super) load_scale: f64,
@@ -145,6 +151,12 @@ pub struct Column {
     /// For back-substitution, of the last assembly: what the inner unknowns answer to the columns
     /// of [`super::element::ElementForms::inner_right`], one a row.
     pub(super) inner_answers: Vec<SMatrix<f64, 5, INNER>>,
+    /// ∂u/∂q of the ends, of the last assembly.
+    pub(super) end_turns: [Matrix3<f64>; 2],
+    /// Rotations of the ends when the step began.
+    pub(super) end_was: [f64; 2],
+    /// Edge on which a flat end stands, in the iteration under way.
+    pub(super) standing: [Option<f64>; 2],
 }
 
 /// Force at which a load along a path counts as of order one: about (2π)² EI/L².
@@ -195,6 +207,8 @@ impl Column {
             elements: parts,
             bottom: EndLaws([Hold::Held(0.0); 3]),
             top: EndLaws([Hold::Free; 3]),
+            seats: [Seat::joined(false), Seat::joined(true)],
+            leaning: None,
             pattern,
             natural_angles: (0..=elements)
                 .map(|i| (natural.angle)(i as f64 * size))
@@ -202,6 +216,9 @@ impl Column {
             load_scale: (first.axial / scale.force).min(LARGEST_LOAD_SCALE),
             tables: Tables::new(),
             inner_answers: vec![SMatrix::zeros(); elements],
+            end_turns: [Matrix3::identity(); 2],
+            end_was: [0.0; 2],
+            standing: [None; 2],
         }
     }
 
@@ -209,6 +226,12 @@ impl Column {
     pub fn held(mut self, bottom: EndLaws, top: EndLaws) -> Self {
         self.bottom = bottom;
         self.top = top;
+        self
+    }
+
+    /// Sets the end nodes on these seats.
+    pub fn seated(mut self, bottom: Seat, top: Seat) -> Self {
+        self.seats = [bottom, top];
         self
     }
 
@@ -263,7 +286,7 @@ impl Column {
     /// A state near the stress-free one: the stress-free rotations, turned and shifted so that
     /// the bottom node stands where it is held, and all held unknowns at their values.
     pub fn first_guess(&self) -> ColumnState {
-        let mut state = ColumnState::zero(self.elements());
+        let mut state = self.zero();
         let held = |hold: Hold| match hold {
             Hold::Held(value) => Some(value),
             Hold::Elastic { rest, .. } | Hold::Curved { rest, .. } => Some(rest),
@@ -318,12 +341,20 @@ impl Column {
             .iter()
             .enumerate()
             .map(|(e, element)| {
-                element.strain_energy(
-                    &self.tables,
-                    &state.nodes[e],
-                    &state.nodes[e + 1],
-                    &state.inner[e],
-                )
+                let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+                let inner = &state.inner[e];
+                match &self.leaning {
+                    Some(leaning) => Held {
+                        element,
+                        laws: &leaning.laws[e],
+                        a: &a,
+                        b: &b,
+                        inner,
+                        jumps: Leaning::jumps(&state.side, e),
+                    }
+                    .strain_energy(&self.tables, &leaning.tables),
+                    None => element.strain_energy(&self.tables, &a, &b, inner),
+                }
             })
             .sum();
         let last = self.elements();

@@ -4,14 +4,22 @@
 mod assembly;
 mod basis;
 mod element;
+mod guided;
 mod layout;
+mod lean;
 mod profile;
+mod seat;
 mod straight;
 mod support;
+mod wall;
 
+pub use assembly::SeatPress;
 pub use basis::GAUSS_POINTS;
 pub use element::{Element, ElementForms, Lever, PointLaw};
+pub use guided::{Contact, Leaning};
 pub use layout::{Column, ColumnState, EndLaws, Hold, NaturalShape, NodeLoad, Scale};
 pub use profile::{Peak, Station};
+pub use seat::{Seat, Touch};
 pub use straight::{Buckling, StraightScan};
 pub use support::{Deviations, Idealisation};
+pub use wall::Wall;

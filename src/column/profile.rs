@@ -2,7 +2,9 @@
 
 use super::basis::{GAUSS_AT, GAUSS_WEIGHT, values};
 use super::element::Element;
+use super::guided::Leaning;
 use super::layout::{Column, ColumnState};
+use super::lean::PADS;
 
 /// Stations in an element.
 const STATIONS: usize = 4;
@@ -50,22 +52,33 @@ pub struct Peak {
 }
 
 impl Column {
+    /// The jumps of the force over the pads of an element.
+    fn pushes(&self, state: &ColumnState, e: usize) -> [[f64; 2]; PADS] {
+        if self.leaning.is_some() {
+            Leaning::jumps(&state.side, e)
+        } else {
+            [[0.0; 2]; PADS]
+        }
+    }
+
     /// Sections of the column at `state`, four in an element and one at the top, from bottom to
     /// top. The moment follows from the balance of the part below; no derivative of the
     /// interpolation is used.
     pub fn profile(&self, state: &ColumnState, out: &mut Vec<Station>) {
         out.clear();
-        let seat = &state.nodes[0];
-        let seat_moment = -self.end_actions(state)[0][2];
+        // The moment at the end node, from below.
+        let mut moment = -self.end_actions(state)[0][2];
         let mut start = 0.0;
         for (e, element) in self.elements.iter().enumerate() {
-            let (a, b, inner) = (&state.nodes[e], &state.nodes[e + 1], &state.inner[e]);
-            let rotations = Element::rotations(a, b, inner);
-            let (fx, fy) = (inner[3], inner[4]);
+            let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+            let inner = &state.inner[e];
+            let rotations = Element::rotations(&a, &b, inner);
+            let pushes = self.pushes(state, e);
             let angle_at =
                 |t: f64| -> f64 { values(t).iter().zip(rotations).map(|(n, q)| n * q).sum() };
             let strains = |angle: f64, t: f64| {
                 let (sin, cos) = angle.sin_cos();
+                let (fx, fy) = force_at(inner, &pushes, t);
                 let law = element.law_at(t);
                 let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
                 let (stretch, slide) = (axial * law.axial_compliance, shear * law.shear_compliance);
@@ -73,20 +86,30 @@ impl Column {
                     (1.0 + stretch) * cos - slide * sin,
                     (1.0 + stretch) * sin + slide * cos,
                 );
-                (axial, shear, stretch, slide, slopes)
+                (
+                    axial,
+                    shear,
+                    stretch,
+                    slide,
+                    slopes,
+                    slopes.0 * fy - slopes.1 * fx,
+                )
             };
             let (sin, cos) = a[2].sin_cos();
             let lever = element.from_a;
-            let mut x = a[0] + lever.along * cos - lever.across * sin;
-            let mut y = a[1] + lever.along * sin + lever.across * cos;
+            let reach = [
+                lever.along * cos - lever.across * sin,
+                lever.along * sin + lever.across * cos,
+            ];
+            let (mut x, mut y) = (a[0] + reach[0], a[1] + reach[1]);
+            moment -= reach[0] * inner[4] - reach[1] * inner[3];
             let part = 2.0 / STATIONS as f64;
             let stations = STATIONS + usize::from(e + 1 == self.elements.len());
             for k in 0..stations {
                 let t = -1.0 + part * k as f64;
                 let angle = angle_at(t);
-                let (axial_force, shear_force, stretch, slide, slopes) = strains(angle, t);
-                let moment = seat_moment - ((x - seat[0]) * fy - (y - seat[1]) * fx);
-                let moment_slope = -(slopes.0 * fy - slopes.1 * fx);
+                let (axial_force, shear_force, stretch, slide, slopes, arm) = strains(angle, t);
+                let moment_slope = -arm;
                 let law = element.law_at(t);
                 out.push(Station {
                     place: start + 0.5 * (1.0 + t) * element.length,
@@ -108,10 +131,11 @@ impl Column {
                 if k + 1 < STATIONS + 1 {
                     for (at, weight) in GAUSS_AT.iter().zip(GAUSS_WEIGHT) {
                         let u = t + 0.5 * part * (1.0 + at);
-                        let (.., (dx, dy)) = strains(angle_at(u), u);
+                        let (.., (dx, dy), arm) = strains(angle_at(u), u);
                         let share = weight * 0.25 * part * element.length;
                         x += share * dx;
                         y += share * dy;
+                        moment -= share * arm;
                     }
                 }
             }
@@ -120,9 +144,25 @@ impl Column {
     }
 }
 
+/// Force at `t` in an element with the jumps of its pads.
+fn force_at(
+    inner: &nalgebra::SVector<f64, { super::element::INNER }>,
+    jumps: &[[f64; 2]; PADS],
+    t: f64,
+) -> (f64, f64) {
+    let at = 0.5 * (1.0 + t) * PADS as f64;
+    let mut force = (inner[3], inner[4]);
+    for (k, jump) in jumps.iter().enumerate() {
+        let share = (at - k as f64).clamp(0.0, 1.0);
+        force.0 += share * jump[0];
+        force.1 += share * jump[1];
+    }
+    force
+}
+
 impl Element {
     /// The law at `t`, from the cubic through its quadrature points.
-    fn law_at(&self, t: f64) -> super::PointLaw {
+    pub(super) fn law_at(&self, t: f64) -> super::PointLaw {
         let mut law = super::PointLaw {
             bending: 0.0,
             axial_compliance: 0.0,

@@ -8,7 +8,7 @@
 //! is followed to its least value.
 
 use super::layout::{Column, ColumnState};
-use crate::solve::{Newton, null_direction};
+use crate::solve::{Newton, System, null_direction};
 use nalgebra::Vector3;
 
 /// Deflections tried, evenly over the length.
@@ -205,7 +205,7 @@ impl Column {
 
     /// The straight state under `load`: exact, for a column without imperfection.
     pub fn straight_state(&self, load: f64) -> ColumnState {
-        let mut state = ColumnState::zero(self.elements());
+        let mut state = self.zero();
         let mut x = 0.0;
         for (e, element) in self.elements.iter().enumerate() {
             let shortened: f64 = element

@@ -2,8 +2,13 @@
 
 use super::Peak;
 use super::element::Lever;
-use super::layout::{Column, ColumnState, EndLaws, Hold, NaturalShape};
-use crate::setup::{BowShape, Imperfections, Orientation, Restraint, Setup, Support, TopPosition};
+use super::layout::{Column, ColumnState, EndLaws, Hold, NaturalShape, Scale};
+use super::seat::{Seat, Touch};
+use super::wall::Wall;
+use crate::setup::{
+    self, BowShape, FixedTo, Guide, GuideKind, Imperfections, Orientation, Restraint, Setup,
+    Support, TopPosition,
+};
 use std::f64::consts::PI;
 
 /// What of the spring is taken as deformable.
@@ -25,6 +30,65 @@ pub struct Deviations<'a> {
     /// First mode on the same mesh, with its largest sideways motion of size one: needed for a
     /// bow of that shape.
     pub mode: Option<&'a ColumnState>,
+}
+
+/// The seat of a support. On the straight path of the perfect column a swivel's friction and the arc
+/// of a moving seat have nothing to act on: there a ball is a hinge.
+fn seat(support: &Support, scale: Scale, start: f64, at_top: bool, real: bool) -> Seat {
+    let touch = match (support.contact, support.link) {
+        (_, Some(link)) => Touch::Link {
+            length: link.length / scale.length,
+            hanging: link.hanging,
+        },
+        (setup::Contact::Flat(flat), _) => Touch::Flat {
+            edge: flat.edge() / scale.length,
+        },
+        (setup::Contact::Swivel(swivel), _) if real => Touch::Swivel {
+            reach: swivel.friction * swivel.radius / scale.length,
+        },
+        _ => Touch::Joined,
+    };
+    let built = f64::from(real);
+    Seat {
+        touch,
+        motion: support.motion.filter(|_| real),
+        length: scale.length,
+        start,
+        tilt: built * support.tilt,
+        offset: built * support.offset / scale.length,
+        at_top,
+    }
+}
+
+/// A guide of the setup, in the column's units.
+fn wall(setup: &Setup, guide: &Guide, scale: Scale) -> Wall {
+    let spring = &setup.spring;
+    let length = |value: f64| value / scale.length;
+    let half_wire = 0.5 * spring.wire.radial_size();
+    // A guide on a seat leans and stands aside with it. The top seat's own position is added there.
+    let (offset, tilt) = match guide.fixed_to {
+        FixedTo::Bottom => (setup.bottom.offset, setup.bottom.tilt),
+        FixedTo::Ground | FixedTo::Top => (0.0, 0.0),
+    };
+    Wall {
+        around: guide.kind == GuideKind::Bore,
+        radius: length(0.5 * guide.diameter),
+        half_wire: length(half_wire),
+        mean_diameter: length(spring.mean_diameter),
+        pitch: length(spring.pitch()),
+        offset: length(offset),
+        slope: tilt.tan(),
+        from: if guide.from > 0.0 {
+            length(guide.from)
+        } else {
+            f64::NEG_INFINITY
+        },
+        to: length(guide.to),
+        from_top: guide.fixed_to == FixedTo::Top,
+        corner: length(half_wire),
+        friction: guide.friction,
+        may_touch: guide.touching_allowed,
+    }
 }
 
 impl Column {
@@ -111,6 +175,15 @@ impl Column {
         let bottom = laws(&setup.bottom, Hold::Held(0.0), leans[0], 0.0);
         let top = laws(&setup.top, Hold::Free, leans[1], landed);
         column = column.held(bottom, top);
+        let start = column.straight_state(0.0).nodes[elements][0];
+        column = column.seated(
+            seat(&setup.bottom, scale, start, false, deviations.is_some()),
+            seat(&setup.top, scale, start, true, deviations.is_some()),
+        );
+        if deviations.is_some() {
+            let walls = setup.guides.iter().map(|guide| wall(setup, guide, scale));
+            column = column.with_guides(walls.collect());
+        }
         if let Some(d) = deviations
             && d.sizes.bow_shape == BowShape::FirstMode
             && let Some(mode) = d.mode
@@ -118,6 +191,12 @@ impl Column {
             column.add_bow(mode, d.orientation.bow * d.sizes.bow / length);
         }
         column
+    }
+
+    /// The same column with its guides left away.
+    pub fn unguided(mut self) -> Self {
+        self.leaning = None;
+        self
     }
 
     /// Adds a stress-free bow of the given height (share of the length) in the shape that the

@@ -44,6 +44,39 @@ pub fn second_share(section: &Section, effective_length: Metre) -> Option<f64> {
     (under >= 0.0 && m > 0.0 && share < 1.0).then_some(share)
 }
 
+/// The end constant of a column that is critical at this share of its free length, m:
+///
+/// ```text
+/// α = π/q,   q² = L0² EA ξ(1 − m ξ)/EI
+/// ```
+///
+/// Whatever holds its ends, the linearised column obeys θ'' + (q/L0)² θ = const: its mode is a piece
+/// of a sine with half waves of the length π L0/q, and the closed form's α L0 is that length. The
+/// relation ξ(1 − m ξ) = K is the closed form's own, read from ξ to α, so α is exact for every
+/// support and wire section. Up to ξ = C1 = 1/(2m) it is the constant for which
+/// [`critical_share`] gives ξ; beyond C1, where only the ends can make a column critical first, it
+/// is the one for which [`second_share`] does. `None` outside 0 < ξ < 1.
+///
+/// Source: derived here from the closed form above.
+pub fn effective_end_constant(section: &Section, free_length: Metre, share: f64) -> Option<f64> {
+    let (m, k) = load_term(section, free_length);
+    (share > 0.0 && share < 1.0).then(|| (k / (share * (1.0 - m * share))).sqrt())
+}
+
+/// The end constant below which the closed form finds no critical share: where K passes the
+/// largest value of ξ(1 − m ξ) over 0 < ξ < 1, which is 1/(4m) at C1, or 1 − m at ξ = 1 where
+/// m ≤ ½. Source: as above.
+pub fn never_critical_below(section: &Section, free_length: Metre) -> f64 {
+    let (m, k) = load_term(section, free_length);
+    let largest = if m > 0.5 { 0.25 / m } else { 1.0 - m };
+    (k / largest).sqrt()
+}
+
+/// Whether a share lies beyond C1, where the effect of the load on the column is largest.
+pub fn is_beyond_peak(section: &Section, share: f64) -> bool {
+    2.0 * (1.0 - section.axial / section.shear) * share > 1.0
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -101,5 +134,38 @@ mod tests {
         let (lambda, k) = (4.0, PI.powi(2) / (6.0 * 16.0));
         let share = critical_share(&section(1.0, lambda), lambda);
         approx::assert_relative_eq!(share.expect("buckles"), k, max_relative = 1e-14);
+    }
+
+    #[test]
+    fn the_end_constant_is_the_formula_read_backwards() {
+        for r in [1.0, 1.7, 2.6, 3.5] {
+            for length in [2.7, 4.0, 9.0] {
+                let section = section(r, length);
+                for share in [1e-6, 0.01, 0.3, 0.6, 0.9, 0.98] {
+                    let alpha = effective_end_constant(&section, length, share).expect("in range");
+                    let back = if is_beyond_peak(&section, share) {
+                        second_share(&section, alpha * length)
+                    } else {
+                        critical_share(&section, alpha * length)
+                    };
+                    approx::assert_relative_eq!(
+                        back.expect("critical"),
+                        share,
+                        max_relative = 1e-7
+                    );
+                }
+                assert_eq!(effective_end_constant(&section, length, 1.0), None);
+            }
+        }
+    }
+
+    #[test]
+    fn below_its_limit_the_formula_is_never_critical() {
+        for r in [1.2, 1.9, 2.6, 3.5] {
+            let section = section(r, 5.0);
+            let limit = never_critical_below(&section, 5.0);
+            assert!(critical_share(&section, 5.0 * limit * (1.0 - 1e-9)).is_none());
+            assert!(critical_share(&section, 5.0 * limit * (1.0 + 1e-9)).is_some());
+        }
     }
 }

@@ -33,6 +33,11 @@ pub fn mark_title(key: &str) -> String {
         "travel_regained" => "rests again, same travel".to_string(),
         "installed" => "installed".to_string(),
         "working" => "working point".to_string(),
+        "seated" => "flat ends sit flush".to_string(),
+        "first_touch" => "first touch of a guide".to_string(),
+        "line_contact" => "more than one coil leans".to_string(),
+        "second_place" => "leans at another place".to_string(),
+        "loose_flat" => "flat stretch could leave the guide".to_string(),
         other => other.replace('_', " "),
     }
 }

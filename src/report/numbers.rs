@@ -97,6 +97,11 @@ impl Units {
         )
     }
 
+    /// Unit of moments.
+    pub fn moment(self) -> Unit {
+        self.choose(units::NEWTON_METRE, units::POUND_FORCE_INCH)
+    }
+
     /// Unit of energies.
     pub fn energy(self) -> Unit {
         self.choose(units::JOULE, units::POUND_FORCE_INCH)

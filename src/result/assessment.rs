@@ -1,6 +1,9 @@
 //! The answer to one case.
 
-use super::{DutyEcho, ImperfectionEcho, Path, SpringEcho, SupportsEcho};
+use super::{
+    DutyEcho, EffectiveEndConstant, GuideEcho, ImperfectionEcho, Path, PlaneAnswer, Sensitivities,
+    SpringEcho, SupportsEcho,
+};
 use crate::setup::LimitKind;
 use crate::units::{Joule, Metre, Newton, Pascal};
 use serde::{Serialize, Serializer};
@@ -73,8 +76,10 @@ pub struct ClosedForm {
     pub critical_deflection_m: Option<Metre>,
     /// Every curve that the handbooks give: two where they differ (0.7 and 0.707).
     pub curves: Vec<ClosedFormCurve>,
-    /// The formula with its source, or why no closed form covers this support.
+    /// The formula with its source, or that no closed form covers this support.
     pub note: String,
+    /// What of the case neither closed form nor straight column sees, each in a sentence.
+    pub unseen: Vec<String>,
 }
 
 /// The straight, perfect column with the whole free length deformable (the formula's
@@ -290,16 +295,23 @@ pub struct Assessment {
     pub spring: SpringEcho,
     /// The supports as resolved.
     pub supports: SupportsEcho,
+    /// The guides as resolved.
+    pub guides: Vec<GuideEcho>,
     /// The imperfections as resolved.
     pub imperfections: ImperfectionEcho,
     /// The duty as resolved.
     pub duty: DutyEcho,
     /// Inputs taken by default.
     pub defaulted: Vec<String>,
+    /// The answers of the two lateral planes; empty where the supports are alike all round. All
+    /// else is of the weaker plane.
+    pub planes: Vec<PlaneAnswer>,
     /// Handbook.
     pub closed_form: ClosedForm,
     /// Straight column with the formula's idealisation.
     pub straight_column: StraightColumn,
+    /// The end constant that stands for these supports.
+    pub effective_end_constant: EffectiveEndConstant,
     /// Column as built, imperfect.
     pub imperfect_column: Option<ImperfectColumn>,
     /// Formula against column.
@@ -312,6 +324,8 @@ pub struct Assessment {
     pub snap: Option<Snap>,
     /// Absolute stability.
     pub absolute_stability: AbsoluteStability,
+    /// How the critical deflection hangs on the supports; `null` where nothing of them can change.
+    pub support_sensitivity: Option<Sensitivities>,
     /// Wire stress at solid.
     pub stress_at_solid: StressAtSolid,
     /// Computations that failed.

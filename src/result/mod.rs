@@ -4,6 +4,7 @@
 
 mod assessment;
 mod echo;
+mod ends;
 mod outcome;
 mod path;
 mod wires;
@@ -13,7 +14,11 @@ pub use assessment::{
     Failure, ImperfectColumn, Limit, Measure, Side, Snap, Southwell, StraightColumn, StressAtSolid,
     Verdict,
 };
-pub use echo::{DutyEcho, ImperfectionEcho, SpringEcho, SupportEcho, SupportsEcho};
+pub use echo::{
+    DutyEcho, ForceLawPoint, GuideEcho, ImperfectionEcho, LateralEcho, LinkEcho, MomentLawPoint,
+    MotionEcho, MotionPoint, SpringEcho, SupportEcho, SupportsEcho,
+};
+pub use ends::{EffectiveEndConstant, PlaneAnswer, Sensitivities, SupportSensitivity};
 pub use outcome::{Mistake, Outcome, Refusal};
 pub use path::{Mark, Path, PathPoint};
 pub use wires::{WireMaterial, wire_materials};

@@ -1,6 +1,6 @@
 //! A rod inside the spring or a bore around it.
 
-use crate::spring::{Spring, compressed_radius};
+use crate::spring::{Spring, compressed_radius, widest_diameter};
 use crate::units::Metre;
 
 /// Which side of the coil it faces.
@@ -43,6 +43,39 @@ pub struct Guide {
 }
 
 impl Guide {
+    /// Pitch, m, at which the coil, grown by compression, fills the bore, for the worse of the two
+    /// ways in which its ends may be held about the axis; `None`: not down to closed coils, or a rod.
+    pub fn filled_at_pitch(&self, spring: &Spring) -> Option<Metre> {
+        if self.kind == GuideKind::Rod {
+            return None;
+        }
+        let wire = spring.wire.axial_size();
+        let widest = |pitch: Metre| {
+            widest_diameter(spring.mean_diameter, spring.pitch(), wire, pitch)
+                + spring.wire.radial_size()
+        };
+        let (mut low, mut high) = (wire, spring.pitch());
+        if widest(low) <= self.diameter {
+            return None;
+        }
+        for _ in 0..200 {
+            let middle = 0.5 * (low + high);
+            if widest(middle) > self.diameter {
+                low = middle;
+            } else {
+                high = middle;
+            }
+        }
+        Some(high)
+    }
+
+    /// Outer diameter of the coil pressed closed, m, for the worse of those two ways.
+    pub fn closed_outer_diameter(spring: &Spring) -> Metre {
+        let wire = spring.wire.axial_size();
+        widest_diameter(spring.mean_diameter, spring.pitch(), wire, wire)
+            + spring.wire.radial_size()
+    }
+
     /// Radial clearance, m, where the coils' pitch is compressed to `open` times the free one:
     /// `(D' − d − d_rod)/2` or `(d_bore − D' − d)/2`, D' the mean diameter grown by compression.
     pub fn clearance(&self, spring: &Spring, open: f64) -> Metre {

@@ -15,7 +15,7 @@ pub use support::{
 };
 
 use crate::spring::Spring;
-use crate::units::{Celsius, Metre, Newton};
+use crate::units::{Celsius, Joule, Metre, Newton};
 
 /// A spring in its supports, its imperfections and its duty.
 #[derive(Clone, Debug, PartialEq)]
@@ -52,6 +52,11 @@ impl Setup {
             self.top.axial.gives_under(force),
         );
         (bottom.0 + top.0, bottom.1 + top.1)
+    }
+
+    /// Energy that the seats store axially under a force, J.
+    pub fn seats_store(&self, force: Newton) -> Joule {
+        self.bottom.axial.stores_under(force) + self.top.axial.stores_under(force)
     }
 
     /// Whether that limit exists for this case.

@@ -1,4 +1,4 @@
-//! The bordered solve: a symmetric matrix with one more row and column.
+//! The bordered solve: a matrix with one more row and column.
 //!
 //! ```text
 //! [ A   b ] [x]   [f]
@@ -12,7 +12,7 @@
 //!
 //! Source: Govaerts & Pryce, Numer. Math. 63 (1993) 155–169 (from memory; tested).
 
-use super::{Factorisation, unknowns::dot};
+use super::{Factored, unknowns::dot};
 use nalgebra::SVector;
 
 /// Work space of bordered solves.
@@ -40,13 +40,13 @@ impl<const B: usize> Bordered<B> {
     /// Prepares for the border `b`, `c`, `d` around the matrix of `factor`.
     pub fn prepare(
         &mut self,
-        factor: &Factorisation<B>,
+        factor: &Factored<B>,
         b: &[SVector<f64, B>],
         c: &[SVector<f64, B>],
         d: f64,
     ) {
         self.left.copy_from_slice(c);
-        factor.solve(&mut self.left);
+        factor.solve_transposed(&mut self.left);
         self.left_delta = d - dot(&self.left, b);
         self.right.copy_from_slice(b);
         factor.solve(&mut self.right);
@@ -56,7 +56,7 @@ impl<const B: usize> Bordered<B> {
     /// Solves (1) for the right-hand side (f, g) in place of `f`; returns y.
     pub fn solve(
         &mut self,
-        factor: &Factorisation<B>,
+        factor: &Factored<B>,
         b: &[SVector<f64, B>],
         c: &[SVector<f64, B>],
         d: f64,

@@ -21,7 +21,7 @@ pub fn null_direction<const B: usize, const I: usize>(
     taking_part: [bool; B],
 ) -> (Unknowns<B, I>, f64) {
     newton.evaluate(system, state, load);
-    let mut direction: Unknowns<B, I> = Unknowns::zero(system.links());
+    let mut direction: Unknowns<B, I> = system.zero();
     // A start with a share of every mode, the same each time.
     let golden = 0.618_033_988_749_895;
     let mut seed = 0.5;

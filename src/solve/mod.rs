@@ -4,6 +4,8 @@
 mod bordered;
 mod branch;
 mod event;
+mod factored;
+mod general;
 mod newton;
 mod path;
 mod pivots;
@@ -15,6 +17,8 @@ mod unknowns;
 pub use bordered::Bordered;
 pub use branch::{BranchPoint, branch_point, crosses_another, null_direction};
 pub use event::{Located, locate};
+pub use factored::Factored;
+pub use general::GeneralFactor;
 pub use newton::{Newton, NotConverged};
 pub use path::{Outcome, PathPoint, PathSettings, Walk, follow, start};
 pub use symmetric::SymmetricFactor;

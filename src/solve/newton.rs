@@ -1,6 +1,6 @@
 //! Newton's iteration on the system bordered by one linear constraint, or with the load held.
 
-use super::{Assembled, Bordered, Factorisation, System, Unknowns, unknowns::dot};
+use super::{Assembled, Bordered, Factored, System, Unknowns, unknowns::dot};
 use nalgebra::SVector;
 
 /// Iterations before giving up.
@@ -27,7 +27,7 @@ pub struct Newton<const B: usize, const I: usize> {
     /// Residual and tangent of the last assembly.
     pub assembled: Assembled<B>,
     /// Factor of the last tangent.
-    pub factor: Factorisation<B>,
+    pub factor: Factored<B>,
     bordered: Bordered<B>,
     step: Unknowns<B, I>,
     minus_pattern: Vec<SVector<f64, B>>,
@@ -51,10 +51,10 @@ impl<const B: usize, const I: usize> Newton<B, I> {
         let links = system.links();
         let rows = links + 1;
         Newton {
-            assembled: Assembled::zero(links),
-            factor: Factorisation::with_rows(rows),
+            assembled: Assembled::of(system),
+            factor: Factored::with_rows(rows, system.is_symmetric()),
             bordered: Bordered::with_rows(rows),
-            step: Unknowns::zero(links),
+            step: system.zero(),
             minus_pattern: system.load_pattern().iter().map(|q| -q).collect(),
             work: [vec![SVector::zeros(); rows], vec![SVector::zeros(); rows]],
             iterations: 0,
@@ -75,8 +75,7 @@ impl<const B: usize, const I: usize> Newton<B, I> {
 
     /// Negative eigenvalues of the last tangent.
     pub fn negatives(&self) -> u32 {
-        u32::try_from(i64::from(self.factor.negatives) + self.assembled.inner_negatives)
-            .unwrap_or(0)
+        self.factor.negatives(self.assembled.inner_negatives)
     }
 
     /// Solves with the load held, from `state`, in place.

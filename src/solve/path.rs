@@ -6,7 +6,7 @@
 //! (t − t₋)/h₋`, t₋ the tangent one step of h₋ before. The step adapts to the iterations taken and to
 //! the angle between successive tangents, and is halved where Newton fails or where the step would
 //! cross another path: a real branch point is then approached in short steps, while a path that only
-//! passes close by is not left.
+//! passes close by is not left. One-sided laws put kinks into a path; a short step goes over them.
 //!
 //! Source: Keller, in Applications of Bifurcation Theory (1977); Seydel, Practical Bifurcation and
 //! Stability Analysis (both from memory).
@@ -50,6 +50,8 @@ pub struct PathSettings {
     /// Step down to which a step across another path is not believed: a path that turns sharply
     /// before another one is easily jumped from.
     pub crossing_step: f64,
+    /// Step down to which a sharp turn is not believed in a system whose paths have kinks.
+    pub kink_step: f64,
     /// Points before giving up.
     pub most_points: usize,
 }
@@ -62,6 +64,7 @@ impl Default for PathSettings {
             smallest_step: 1e-12,
             largest_turn: 0.15,
             crossing_step: 1e-5,
+            kink_step: 1e-4,
             most_points: 1500,
         }
     }
@@ -129,7 +132,12 @@ pub fn follow<const B: usize, const I: usize>(
         };
         walk.iterations += newton.iterations;
         let turn = inner_product(system, base, &next).clamp(-1.0, 1.0).acos();
-        let sharp = turn > settings.largest_turn && step > 4.0 * settings.smallest_step;
+        let believed = if system.has_kinks() {
+            settings.kink_step
+        } else {
+            4.0 * settings.smallest_step
+        };
+        let sharp = turn > settings.largest_turn && step > believed;
         if sharp || (step > settings.crossing_step && crosses_another(base, &next)) {
             walk.refused += 1;
             step *= 0.5;
@@ -156,6 +164,7 @@ pub(super) fn at_distance<const B: usize, const I: usize>(
     base: &PathPoint<B, I>,
     distance: f64,
 ) -> Result<PathPoint<B, I>, NotConverged> {
+    system.depart(&base.state);
     let mut state = base.state.clone();
     state.add(distance, &base.direction);
     let mut load = base.load + distance * base.load_direction;
@@ -194,7 +203,7 @@ pub(super) fn complete<const B: usize, const I: usize>(
     d: f64,
 ) -> PathPoint<B, I> {
     let negatives = newton.evaluate(system, &state, load);
-    let mut direction = Unknowns::zero(system.links());
+    let mut direction = system.zero();
     let mut load_direction = newton.tangent(system, row, d, &mut direction);
     let weight = 1.0 / direction.nodes.len() as f64;
     let length = (dot(&direction.nodes, &direction.nodes) * weight

@@ -25,15 +25,52 @@ impl<const B: usize> Assembled<B> {
             inner_negatives: 0,
         }
     }
+
+    /// Zero, for `system`.
+    pub fn of<const I: usize>(system: &impl System<B, I>) -> Self {
+        let mut assembled = Assembled::zero(system.links());
+        if !system.is_symmetric() {
+            assembled.tangent = BlockTridiagonal::unsymmetric(system.links() + 1);
+        }
+        assembled
+    }
 }
 
-/// A system of equations `g(u) = λ q` along a chain of links, with a symmetric tangent, whose
-/// links keep `I` inner unknowns to themselves and share `B` at each node.
+/// A system of equations `g(u) = λ q` along a chain of links, whose links keep `I` inner unknowns to
+/// themselves and share `B` at each node.
 ///
 /// Unknowns are expected of order one, so that one norm fits them all.
 pub trait System<const B: usize, const I: usize> {
     /// Number of links.
     fn links(&self) -> usize;
+
+    /// Unknowns on the side of a state.
+    fn side(&self) -> usize {
+        0
+    }
+
+    /// Unknowns of this system, all zero.
+    fn zero(&self) -> Unknowns<B, I> {
+        Unknowns {
+            side: vec![0.0; self.side()],
+            ..Unknowns::zero(self.links())
+        }
+    }
+
+    /// Whether the tangent is symmetric. Where it is not, only the sign of its determinant is
+    /// known, and `negatives` is 0 or 1.
+    fn is_symmetric(&self) -> bool {
+        true
+    }
+
+    /// Whether one-sided laws put kinks into its paths.
+    fn has_kinks(&self) -> bool {
+        false
+    }
+
+    /// Takes `state` as the one from which the next is reached, for laws that depend on the way
+    /// (friction sticks to where it was). Does not allocate.
+    fn depart(&mut self, _state: &Unknowns<B, I>) {}
 
     /// Evaluates residual and tangent at `state` under the load `load`, and remembers what
     /// [`System::recover`] needs. Does not allocate.

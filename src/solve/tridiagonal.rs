@@ -20,13 +20,15 @@ use nalgebra::{SMatrix, SVector};
 /// are joined to one pivot where that grows less: costs that many times the round-off.
 const GROWTH: f64 = 1e3;
 
-/// A symmetric block-tridiagonal matrix.
+/// A block-tridiagonal matrix, symmetric unless it has blocks of its own to the left.
 #[derive(Clone, Debug)]
 pub struct BlockTridiagonal<const B: usize> {
-    /// Diagonal blocks, symmetric.
+    /// Diagonal blocks.
     pub diagonal: Vec<SMatrix<f64, B, B>>,
-    /// `right[i]` stands in row i, column i+1; its transpose in row i+1, column i.
+    /// `right[i]` stands in row i, column i+1.
     pub right: Vec<SMatrix<f64, B, B>>,
+    /// `left[i]` stands in row i+1, column i; empty where it is the transpose of `right[i]`.
+    pub left: Vec<SMatrix<f64, B, B>>,
 }
 
 impl<const B: usize> BlockTridiagonal<B> {
@@ -35,7 +37,21 @@ impl<const B: usize> BlockTridiagonal<B> {
         BlockTridiagonal {
             diagonal: vec![SMatrix::zeros(); rows],
             right: vec![SMatrix::zeros(); rows.saturating_sub(1)],
+            left: Vec::new(),
         }
+    }
+
+    /// Zero, with `rows` block rows and blocks of its own to the left.
+    pub fn unsymmetric(rows: usize) -> Self {
+        BlockTridiagonal {
+            left: vec![SMatrix::zeros(); rows.saturating_sub(1)],
+            ..BlockTridiagonal::zero(rows)
+        }
+    }
+
+    /// Whether it is symmetric.
+    pub fn is_symmetric(&self) -> bool {
+        self.left.is_empty()
     }
 
     /// Number of block rows.
@@ -48,7 +64,10 @@ impl<const B: usize> BlockTridiagonal<B> {
         for (i, row) in out.iter_mut().enumerate() {
             *row = self.diagonal[i] * x[i];
             if i > 0 {
-                *row += self.right[i - 1].tr_mul(&x[i - 1]);
+                *row += match self.left.get(i - 1) {
+                    Some(left) => left * x[i - 1],
+                    None => self.right[i - 1].tr_mul(&x[i - 1]),
+                };
             }
             if i + 1 < self.rows() {
                 *row += self.right[i] * x[i + 1];
@@ -56,7 +75,7 @@ impl<const B: usize> BlockTridiagonal<B> {
         }
     }
 
-    /// `xᵀ A x`.
+    /// `xᵀ A x` of a symmetric matrix.
     pub fn quadratic(&self, x: &[SVector<f64, B>]) -> f64 {
         let mut sum = 0.0;
         for (i, value) in x.iter().enumerate() {
@@ -269,26 +288,6 @@ impl<const B: usize> Factorisation<B> {
                 }
                 _ => {}
             }
-        }
-    }
-
-    /// Solves `A x = b` in place and improves x once with the residual of `matrix`.
-    pub fn solve_refined(
-        &self,
-        matrix: &BlockTridiagonal<B>,
-        b: &mut [SVector<f64, B>],
-        right: &mut [SVector<f64, B>],
-        product: &mut [SVector<f64, B>],
-    ) {
-        right.copy_from_slice(b);
-        self.solve(b);
-        matrix.multiply(b, product);
-        for (mine, its) in right.iter_mut().zip(product.iter()) {
-            *mine -= its;
-        }
-        self.solve(right);
-        for (x, correction) in b.iter_mut().zip(right.iter()) {
-            *x += correction;
         }
     }
 }

@@ -10,6 +10,9 @@ pub struct Unknowns<const B: usize, const I: usize> {
     pub nodes: Vec<SVector<f64, B>>,
     /// One block a link; one less than there are nodes.
     pub inner: Vec<SVector<f64, I>>,
+    /// Further unknowns of links that come and go (forces of one-sided contacts); eliminated with
+    /// the inner ones. Empty where there are none.
+    pub side: Vec<f64>,
 }
 
 impl<const B: usize, const I: usize> Unknowns<B, I> {
@@ -18,6 +21,7 @@ impl<const B: usize, const I: usize> Unknowns<B, I> {
         Unknowns {
             nodes: vec![SVector::zeros(); links + 1],
             inner: vec![SVector::zeros(); links],
+            side: Vec::new(),
         }
     }
 
@@ -25,6 +29,7 @@ impl<const B: usize, const I: usize> Unknowns<B, I> {
     pub fn copy_from(&mut self, other: &Self) {
         self.nodes.copy_from_slice(&other.nodes);
         self.inner.copy_from_slice(&other.inner);
+        self.side.copy_from_slice(&other.side);
     }
 
     /// Adds `factor` times `direction`.
@@ -35,12 +40,16 @@ impl<const B: usize, const I: usize> Unknowns<B, I> {
         for (mine, its) in self.inner.iter_mut().zip(&direction.inner) {
             *mine += *its * factor;
         }
+        for (mine, its) in self.side.iter_mut().zip(&direction.side) {
+            *mine += its * factor;
+        }
     }
 
     /// Multiplies everything by `factor`.
     pub fn scale(&mut self, factor: f64) {
         self.nodes.iter_mut().for_each(|v| *v *= factor);
         self.inner.iter_mut().for_each(|v| *v *= factor);
+        self.side.iter_mut().for_each(|v| *v *= factor);
     }
 }
 

@@ -11,7 +11,7 @@ mod wire;
 
 pub use coil::{Hand, Spring};
 pub use ends::EndType;
-pub use growth::compressed_radius;
+pub use growth::{compressed_radius, widest_diameter};
 pub use material::{Material, Sureness, materials, named_material};
 pub use section::{Section, TurnCompliance};
 pub use stress::{curvature_factor, torsion_stress};

@@ -1,6 +1,6 @@
 //! JSON and CSV.
 
-use super::fixture::{Shape, assessment};
+use super::fixture::{Shape, assessment, in_every_support};
 use coilstay::report;
 use coilstay::result::{Assessment, Mistake, Outcome, PathPoint, Refusal};
 use serde_json::Value;
@@ -16,6 +16,22 @@ fn assessed(assessment: Assessment) -> Outcome {
 #[test]
 fn the_shape_is_kept() {
     insta::assert_json_snapshot!(json(&[assessed(assessment(Shape::Falling))]));
+}
+
+#[test]
+fn the_shape_of_supports_and_guides_is_kept() {
+    let all = json(&[assessed(in_every_support())]);
+    let parts: serde_json::Map<String, Value> = [
+        "supports",
+        "guides",
+        "planes",
+        "effective_end_constant",
+        "support_sensitivity",
+    ]
+    .into_iter()
+    .map(|key| (key.to_owned(), all[key].clone()))
+    .collect();
+    insta::assert_json_snapshot!(parts);
 }
 
 #[test]
@@ -76,7 +92,7 @@ fn quantities_end_in_their_unit() {
         "_per_k",
         "_kg_per_m3",
     ];
-    const PURE: [&str; 17] = [
+    const PURE: [&str; 25] = [
         "spring_index",
         "slenderness",
         "active_coils",
@@ -94,6 +110,14 @@ fn quantities_end_in_their_unit() {
         "bow_place",
         "line",
         "column",
+        "end_constant_error",
+        "end_constant_below",
+        "handbook_constants",
+        "relative_change_if_larger",
+        "relative_change_if_smaller",
+        "relative_change_error",
+        "ground_share",
+        "friction",
     ];
     fn walk(value: &Value, found: &mut Vec<String>) {
         match value {
@@ -111,6 +135,7 @@ fn quantities_end_in_their_unit() {
     }
     let mut keys = Vec::new();
     walk(&json(&[assessed(assessment(Shape::Falling))]), &mut keys);
+    walk(&json(&[assessed(in_every_support())]), &mut keys);
     assert!(keys.len() > 50);
     for key in keys {
         let unit = UNITS.iter().any(|unit| key.ends_with(unit));

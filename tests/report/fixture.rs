@@ -146,9 +146,21 @@ fn support(kind: &str) -> SupportEcho {
         rotational_stiffness_n_m_per_rad: if kind == "hinged" { Some(0.0) } else { None },
         sideways_stiffness_n_per_m: None,
         axial_stiffness_n_per_m: None,
+        rotational_law: None,
+        sideways_law: None,
+        axial_law: None,
         arm_m: 0.0,
         tilt_rad: 0.0,
         offset_m: 0.0,
+        contact: "joined".into(),
+        seat_radius_m: None,
+        ground_share: None,
+        friction: None,
+        swivel_radius_m: None,
+        link: None,
+        motion: None,
+        other_plane: None,
+        plane_rad: 0.0,
     }
 }
 
@@ -279,6 +291,7 @@ pub fn assessment(shape: Shape) -> Assessment {
             bottom: support("clamped"),
             top: support("hinged"),
         },
+        guides: vec![],
         imperfections: ImperfectionEcho {
             squareness_m: 0.002,
             parallelism_m: 0.0,
@@ -295,6 +308,18 @@ pub fn assessment(shape: Shape) -> Assessment {
             "duty.rate_loss_share".into(),
             "material.invented_key".into(),
         ],
+        planes: vec![],
+        effective_end_constant: EffectiveEndConstant {
+            end_constant: Some(0.7031),
+            end_constant_error: Some(2.1e-11),
+            end_constant_below: None,
+            beyond_peak: false,
+            handbook_ends: Some("clamped-hinged".into()),
+            handbook_constants: vec![0.7, 0.707],
+            is_handbook_case: true,
+            relative_difference: Some(-0.0183),
+            sentence: "An invented constant.".into(),
+        },
         closed_form: ClosedForm {
             end_constant: Some(0.7),
             critical_deflection_m: Some(0.0491),
@@ -318,6 +343,7 @@ pub fn assessment(shape: Shape) -> Assessment {
                 },
             ],
             note: "ξ = C1 (1 − √(1 − C2/λ²)), EN 13906-1 and Shigley.".into(),
+            unseen: vec![],
         },
         straight_column: StraightColumn {
             critical_deflection_m: Some(CRITICAL),
@@ -388,6 +414,7 @@ pub fn assessment(shape: Shape) -> Assessment {
             column_below_error_m: Some(3.0e-9),
             sentence: "An invented bound.".into(),
         },
+        support_sensitivity: None,
         stress_at_solid: StressAtSolid {
             stress_pa: 1.21e9,
             allowable_pa: None,
@@ -398,4 +425,135 @@ pub fn assessment(shape: Shape) -> Assessment {
             "The closed form is on the unsafe side of the column for the end constant 0.7.".into(),
         ],
     }
+}
+
+/// The same spring in every kind of support and guide there is, its two planes unlike.
+pub fn in_every_support() -> Assessment {
+    let mut all = assessment(Shape::Rising);
+    all.supports.bottom = SupportEcho {
+        kind: "flat".into(),
+        rotational_stiffness_n_m_per_rad: None,
+        contact: "flat".into(),
+        seat_radius_m: Some(0.014),
+        ground_share: Some(0.75),
+        friction: Some(0.15),
+        axial_stiffness_n_per_m: Some(9e4),
+        axial_law: Some(vec![
+            ForceLawPoint {
+                motion_m: 0.0,
+                force_n: 0.0,
+            },
+            ForceLawPoint {
+                motion_m: 0.001,
+                force_n: 90.0,
+            },
+            ForceLawPoint {
+                motion_m: 0.002,
+                force_n: 400.0,
+            },
+        ]),
+        ..support("clamped")
+    };
+    all.supports.top = SupportEcho {
+        kind: "ball".into(),
+        contact: "ball".into(),
+        friction: Some(0.1),
+        swivel_radius_m: Some(0.006),
+        rotational_stiffness_n_m_per_rad: Some(3.5),
+        rotational_law: Some(vec![
+            MomentLawPoint {
+                rotation_rad: 0.0,
+                moment_n_m: 0.0,
+            },
+            MomentLawPoint {
+                rotation_rad: 0.1,
+                moment_n_m: 0.35,
+            },
+        ]),
+        link: Some(LinkEcho {
+            kind: "strut".into(),
+            length_m: 0.04,
+        }),
+        motion: Some(MotionEcho {
+            kind: "lever".into(),
+            pivot_along_m: Some(0.01),
+            pivot_across_m: Some(-0.12),
+            table: vec![],
+        }),
+        other_plane: Some(LateralEcho {
+            rotational_stiffness_n_m_per_rad: Some(0.0),
+            sideways_stiffness_n_per_m: Some(12e3),
+            rotational_law: None,
+            sideways_law: None,
+            tilt_rad: 0.01,
+            offset_m: 0.001,
+        }),
+        plane_rad: 0.5235987755982988,
+        ..support("hinged")
+    };
+    all.guides = vec![
+        GuideEcho {
+            kind: "rod".into(),
+            diameter_m: 0.022,
+            clearance_free_m: 0.001,
+            clearance_closed_m: 0.0012,
+            fixed_to: "bottom".into(),
+            from_m: 0.0,
+            to_m: Some(0.05),
+            friction: 0.12,
+            touching_allowed: true,
+        },
+        GuideEcho {
+            kind: "bore".into(),
+            diameter_m: 0.036,
+            clearance_free_m: 0.002,
+            clearance_closed_m: 0.0018,
+            fixed_to: "ground".into(),
+            from_m: 0.0,
+            to_m: None,
+            friction: 0.0,
+            touching_allowed: false,
+        },
+    ];
+    all.closed_form.unseen = vec!["An invented blind spot.".into()];
+    let plane = |direction_rad: f64, governs: bool, at: f64| PlaneAnswer {
+        direction_rad,
+        governs,
+        verdict: if governs {
+            Verdict::DoesNotHold
+        } else {
+            Verdict::Holds
+        },
+        undecided_reason: None,
+        governing: Some(LimitKind::Bow),
+        deflection_m: Some(at),
+        force_n: Some(RATE * at),
+        margin: Some(measure(at, 0.0).margin),
+        required_margin: Some(0.15),
+        critical_deflection_m: governs.then_some(CRITICAL),
+    };
+    all.planes = vec![
+        plane(0.5235987755982988, false, 0.051),
+        plane(2.0943951023931953, true, 0.043),
+    ];
+    let property = |property: &str, larger: Option<f64>, smaller: Option<f64>| {
+        let critical = |change: Option<f64>| change.map(|change| CRITICAL * (1.0 + change));
+        SupportSensitivity {
+            end: "top".into(),
+            property: property.into(),
+            critical_if_larger_m: critical(larger),
+            critical_if_smaller_m: critical(smaller),
+            relative_change_if_larger: larger,
+            relative_change_if_smaller: smaller,
+            relative_change_error: Some(3e-11),
+        }
+    };
+    all.support_sensitivity = Some(Sensitivities {
+        properties: vec![
+            property("sideways_stiffness", None, Some(-0.0312)),
+            property("rotational_stiffness", Some(0.00412), Some(-0.0047)),
+        ],
+        sentence: "An invented advice.".into(),
+    });
+    all
 }

@@ -1,6 +1,6 @@
 //! The verdict as text.
 
-use super::fixture::{Shape, assessment};
+use super::fixture::{Shape, assessment, in_every_support};
 use coilstay::report::{self, Units};
 use coilstay::result::{
     Assessment, Failure, LimitKind, Mistake, Outcome, Refusal, Verdict, wire_materials,
@@ -34,6 +34,15 @@ fn set_deflection() {
 }
 
 #[test]
+fn every_support_and_guide() {
+    let all = in_every_support();
+    for units in [Units::Metric, Units::Inch] {
+        assert_fits(&page(&all, units));
+    }
+    insta::assert_snapshot!(page(&all, Units::Metric));
+}
+
+#[test]
 fn dead_load_in_inches() {
     insta::assert_snapshot!(page(&assessment(Shape::Falling), Units::Inch));
 }
@@ -49,6 +58,7 @@ fn sections_stand_in_their_order() {
         "Warnings",
         "Formula and column",
         "Formula against straight column",
+        "Effective end constant",
         "Limits, in order",
         "Under a dead load",
         "Absolute stability",

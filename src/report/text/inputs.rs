@@ -1,17 +1,18 @@
 //! The inputs as resolved, those taken by default marked.
 
 use super::section;
+use super::supports::{guides, support};
 use crate::report::Units;
 use crate::report::layout::{pad_right, paragraph};
-use crate::report::numbers::{Unit, percent_input, rounded, shortest};
-use crate::result::{Assessment, SupportEcho};
+use crate::report::numbers::{percent_input, rounded, shortest};
+use crate::result::Assessment;
 use unicode_width::UnicodeWidthStr;
 
 /// One input: the names it may have in a case file, what it is, its value.
-struct Input {
-    keys: Vec<String>,
-    label: String,
-    value: String,
+pub(super) struct Input {
+    pub keys: Vec<String>,
+    pub label: String,
+    pub value: String,
 }
 
 fn input(keys: &[&str], label: &str, value: String) -> Input {
@@ -27,6 +28,7 @@ pub fn inputs(assessment: &Assessment, units: Units) -> String {
     let mut inputs = spring(assessment, units);
     inputs.extend(support("bottom", &assessment.supports.bottom, units));
     inputs.extend(support("top", &assessment.supports.top, units));
+    inputs.extend(guides(&assessment.guides, units));
     inputs.extend(imperfections(assessment, units));
     inputs.extend(duty(assessment, units));
 
@@ -173,50 +175,6 @@ fn spring(assessment: &Assessment, units: Units) -> Vec<Input> {
             format!("{} degC", shortest(spring.service_temperature_degc)),
         ),
         input(&["spring.measured_rate"], "rate", rate),
-    ]
-}
-
-fn support(place: &str, support: &SupportEcho, units: Units) -> Vec<Input> {
-    let key = |name: &str| format!("{place}.{name}");
-    let mut text = support.kind.clone();
-    if support.kind == "elastic" {
-        let stiffness = |value: Option<f64>, unit: Unit| match value {
-            None => "held".to_string(),
-            Some(0.0) => "free".to_string(),
-            Some(value) => unit.show_input(value),
-        };
-        text += &format!(
-            ": rotation {}, sideways {}",
-            stiffness(
-                support.rotational_stiffness_n_m_per_rad,
-                units.rotational_stiffness()
-            ),
-            stiffness(support.sideways_stiffness_n_per_m, units.rate())
-        );
-    }
-    if let Some(axial) = support.axial_stiffness_n_per_m {
-        text += &format!(
-            ", gives along the axis with {}",
-            units.rate().show_input(axial)
-        );
-    }
-    let length = units.length();
-    vec![
-        Input {
-            keys: vec![key("kind")],
-            label: format!("{place} support"),
-            value: text,
-        },
-        Input {
-            keys: vec![key("arm"), key("tilt"), key("offset")],
-            label: format!("{place} seat"),
-            value: format!(
-                "arm {}, tilt {}, offset {}",
-                length.show_input(support.arm_m),
-                units.show_angle(support.tilt_rad),
-                length.show_input(support.offset_m)
-            ),
-        },
     ]
 }
 

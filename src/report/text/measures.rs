@@ -216,6 +216,9 @@ fn notes(assessment: &Assessment, units: Units) -> String {
         let start = format!("  End constant {}: ", shortest(curve.end_constant));
         out += &paragraph(&start, &format!("{}.", curve.source.trim_end_matches('.')));
     }
+    for unseen in &closed.unseen {
+        out += &paragraph("  ", unseen);
+    }
     if let Some(again) = assessment.straight_column.straightens_again_at_m {
         let text = format!(
             "The straight column straightens again at {}.",

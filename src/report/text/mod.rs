@@ -2,11 +2,13 @@
 //! then what it rests on.
 
 mod answer;
+mod ends;
 mod inputs;
 mod limits;
 mod measures;
 mod remarks;
 mod summary;
+mod supports;
 
 pub use summary::summary;
 
@@ -31,12 +33,15 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
         title(&assessment.title, &assessment.file),
         answer::question(assessment, units),
         answer::answer(assessment, units),
+        ends::planes(assessment, units),
         remarks::warnings(assessment),
         measures::measures(assessment, units),
         measures::comparisons(assessment, units),
+        ends::end_constant(assessment),
         limits::limits(assessment, units),
         remarks::dead_load(assessment, units),
         remarks::snap(assessment, units),
+        ends::sensitivity(assessment),
         remarks::absolute_stability(assessment, units),
         remarks::stress_at_solid(assessment, units),
         inputs::inputs(assessment, units),

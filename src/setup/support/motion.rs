@@ -3,6 +3,7 @@
 use super::{Curve, CurvePoint};
 use crate::units::{Metre, Radian};
 
+#[allow(clippy::large_enum_variant)] // plain data, kept `Copy`
 /// How the top seat's offset and tilt grow with its travel.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Motion {

@@ -2,6 +2,7 @@
 
 use super::Curve;
 
+#[allow(clippy::large_enum_variant)] // plain data, kept `Copy`
 /// How one motion of a seat is held. The stiffness is in N/m or N·m/rad and positive.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Restraint {
@@ -52,6 +53,16 @@ impl Restraint {
                 (motion, 1.0 / curve.odd_at(motion).slope)
             }
             Restraint::Held => (0.0, 0.0),
+        }
+    }
+
+    /// Energy stored under a force. Not for a free one.
+    pub fn stores_under(self, force: f64) -> f64 {
+        match self {
+            Restraint::Free => f64::INFINITY,
+            Restraint::Elastic(k) => 0.5 * force * force / k,
+            Restraint::Progressive(curve) => curve.odd_energy(curve.inverse(force.abs())),
+            Restraint::Held => 0.0,
         }
     }
 

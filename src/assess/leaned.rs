@@ -1,0 +1,131 @@
+//! What the contact with guides comes to at a state.
+
+use crate::column::{Column, ColumnState, Contact, Peak, Station};
+use crate::setup::Setup;
+
+/// Contact with the guides, in the column's units.
+pub(super) struct Leaned {
+    /// Smallest room; `None` without a guide beside the column.
+    pub room: Option<f64>,
+    /// All forces added up.
+    pub push: f64,
+    /// The largest over any one pitch, with its place.
+    pub on_one_coil: Peak,
+    /// Separate places.
+    pub places: u32,
+    /// Length of the longest of them.
+    pub longest: f64,
+    /// On corners at the ends of guides.
+    pub at_corners: f64,
+    /// Friction on the column along x, added up.
+    pub drag: f64,
+}
+
+impl Leaned {
+    /// Of a column at `state`; `stations` are those of its profile.
+    pub fn on(setup: &Setup, column: &Column, state: &ColumnState, stations: &[Station]) -> Self {
+        let mut contacts = Vec::new();
+        column.contacts(state, &mut contacts);
+        let pitch = setup.spring.pitch() / column.scale.length;
+        let room = column.tightest(state, stations, false);
+        let spans = spans(&contacts);
+        Leaned {
+            room: room.map(|tight| tight.value),
+            push: contacts.iter().map(|c| c.push).sum(),
+            on_one_coil: on_one_coil(&contacts, pitch),
+            places: spans.len() as u32,
+            longest: spans
+                .iter()
+                .fold(0.0, |longest, span| longest.max(span.1 - span.0)),
+            at_corners: contacts
+                .iter()
+                .filter(|c| c.at_corner)
+                .map(|c| c.push)
+                .sum(),
+            drag: contacts.iter().map(|c| c.drag).sum(),
+        }
+    }
+}
+
+/// Stretches that lean without a gap on the same side: from where to where along the axis.
+fn spans(contacts: &[Contact]) -> Vec<(f64, f64)> {
+    let mut spans: Vec<(f64, f64, f64)> = Vec::new();
+    for contact in contacts {
+        let (from, to) = (
+            contact.place - 0.5 * contact.width,
+            contact.place + 0.5 * contact.width,
+        );
+        match spans.last_mut() {
+            Some((_, end, side)) if *side == contact.side && from - *end < 0.5 * contact.width => {
+                *end = to;
+            }
+            _ => spans.push((from, to, contact.side)),
+        }
+    }
+    spans.iter().map(|(from, to, _)| (*from, *to)).collect()
+}
+
+/// The largest force over any stretch of one pitch, on one side.
+fn on_one_coil(contacts: &[Contact], pitch: f64) -> Peak {
+    let mut peak = Peak {
+        place: 0.0,
+        value: 0.0,
+    };
+    for (i, first) in contacts.iter().enumerate() {
+        // A stretch that begins where this pad does.
+        let from = first.place - 0.5 * first.width;
+        let (mut force, mut moment) = (0.0, 0.0);
+        for contact in contacts[i..].iter().filter(|c| c.side == first.side) {
+            let start = contact.place - 0.5 * contact.width;
+            let share = ((from + pitch - start) / contact.width).clamp(0.0, 1.0);
+            force += share * contact.push;
+            moment += share * contact.push * contact.place;
+        }
+        if force > peak.value {
+            peak = Peak {
+                place: moment / force,
+                value: force,
+            };
+        }
+    }
+    peak
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn pad(place: f64, push: f64, side: f64) -> Contact {
+        Contact {
+            place,
+            width: 0.01,
+            side,
+            push,
+            drag: 0.0,
+            at_corner: false,
+        }
+    }
+
+    #[test]
+    fn stretches_are_told_apart_by_gaps_and_sides() {
+        let contacts = [
+            pad(0.105, 1.0, 1.0),
+            pad(0.115, 1.0, 1.0),
+            pad(0.125, 1.0, -1.0),
+            pad(0.5, 2.0, 1.0),
+        ];
+        assert_eq!(spans(&contacts).len(), 3);
+        approx::assert_abs_diff_eq!(spans(&contacts)[0].1, 0.12, epsilon = 1e-12);
+    }
+
+    #[test]
+    fn the_worst_coil_is_the_heaviest_pitch() {
+        let contacts: Vec<Contact> = (0..10)
+            .map(|i| pad(0.005 + 0.01 * f64::from(i), f64::from(i), 1.0))
+            .collect();
+        let peak = on_one_coil(&contacts, 0.025);
+        approx::assert_abs_diff_eq!(peak.value, 8.0 + 7.0 + 4.5, epsilon = 9.0 + 8.0);
+        // A stretch of two pads and a half that begins at a pad: 7 + 8 + 9/2 is the most.
+        approx::assert_abs_diff_eq!(peak.value, 7.0 + 8.0 + 4.5, epsilon = 1e-9);
+    }
+}
