@@ -5,7 +5,7 @@ use super::field::{Absent, Field, Form, Kind, Range, Rule};
 use super::filled::{Filled, Log};
 use crate::setup::{Duty, LimitKind, Loading, Margins, Restraint, Support};
 use crate::spring::Spring;
-use crate::units::{Dimension, MILLIMETRE, Metre, Newton, significant};
+use crate::units::{Dimension, MILLIMETRE, Metre, Newton, NewtonPerMetre, significant};
 
 const LENGTH: Kind = Kind::Quantity(Dimension::LENGTH, Range::Positive);
 const TRAVEL: Kind = Kind::Quantity(Dimension::LENGTH, Range::NotNegative);
@@ -31,7 +31,7 @@ static INSTALLED_FORCE: Field = Field::new(
     "installed_force",
     Kind::Quantity(Dimension::FORCE, Range::NotNegative),
     "820 N",
-    "Force as installed, instead of the deflection. The straight spring's rate and the seats' axial stiffness turn it into travel.",
+    "Force as installed, instead of the deflection. The straight spring's rate and what the seats give axially turn it into travel.",
 )
 .or(Absent::Nothing);
 static INSTALLED_LENGTH: Field = Field::new(
@@ -114,6 +114,16 @@ static BOW: Field = margin("bow", "The bow limit.");
 static RATE_LOST: Field = margin("rate_lost", "The axial rate has lost its share.");
 static STRESS: Field = margin("stress", "The allowable stress.");
 static CLASH: Field = margin("clash", "The first coils touch on the inside of the bow.");
+static LIFT_OFF: Field = margin("lift_off", "An end lifts off its flat seat.");
+static SLIDE: Field = margin("slide", "An end slides on its flat seat.");
+static GUIDE_TOUCH: Field = margin(
+    "guide_touch",
+    "The spring touches a guide that it may not touch.",
+);
+static BORE_FILLED: Field = margin(
+    "bore_filled",
+    "The coil, grown by compression, fills its bore.",
+);
 static SOLID: Field = margin("solid", "The spring is solid.");
 
 const fn margin(key: &'static str, doc: &'static str) -> Field {
@@ -130,6 +140,10 @@ static MARGIN_FORM: Form = Form {
         &RATE_LOST,
         &STRESS,
         &CLASH,
+        &LIFT_OFF,
+        &SLIDE,
+        &GUIDE_TOUCH,
+        &BORE_FILLED,
         &SOLID,
     ],
     rules: &[],
@@ -253,34 +267,42 @@ fn own_margins(filled: &Filled, log: &mut Log) -> Vec<(LimitKind, f64)> {
 /// What the straight spring between its seats makes of forces and lengths.
 struct Machine {
     free_length: Option<Metre>,
-    /// Compliance of the spring, m/N.
-    own: Option<f64>,
-    /// Travel per force, m/N: 1/k of the spring and of both seats, added up.
-    compliance: Option<f64>,
+    /// Rate of the spring, N/m.
+    rate: Option<NewtonPerMetre>,
+    /// How both seats give axially; `None` where one is not known.
+    seats: Option<[Restraint; 2]>,
 }
 
 impl Machine {
     fn of(spring: Option<&Spring>, seats: [Option<&Support>; 2]) -> Self {
-        let seat = |support: Option<&Support>| match support?.axial {
-            Restraint::Free => Some(0.0),
-            restraint => Some(restraint.gives_under(0.0).1),
-        };
-        let own = spring.map(|spring| 1.0 / spring.rate());
-        let sum = || Some(own? + seat(seats[0])? + seat(seats[1])?);
+        let both = || Some([seats[0]?.axial, seats[1]?.axial]);
         Machine {
             free_length: spring.map(|spring| spring.free_length),
-            own,
-            compliance: sum(),
+            rate: spring.map(Spring::rate),
+            seats: both(),
         }
     }
 
+    /// Travel under a force: what the straight spring and both seats give, added up.
     fn travel_at(&self, force: Newton) -> Option<Metre> {
-        Some(force * self.compliance?)
+        let [bottom, top] = self.seats?.map(|seat| seat.gives_under(force).0);
+        Some(force / self.rate? + bottom + top)
     }
 
-    /// How much the spring itself is compressed at `travel`.
+    /// How much the spring itself is compressed at `travel`: the root of the travel at the force of
+    /// that compression, which rises with it, by halving.
     fn compression_at(&self, travel: Metre) -> Option<Metre> {
-        Some(travel * self.own? / self.compliance?)
+        let rate = self.rate?;
+        let (mut low, mut high) = (0.0, travel);
+        for _ in 0..60 {
+            let middle = 0.5 * (low + high);
+            if self.travel_at(rate * middle)? < travel {
+                low = middle;
+            } else {
+                high = middle;
+            }
+        }
+        Some(high)
     }
 
     fn check(

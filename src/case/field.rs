@@ -53,6 +53,8 @@ pub(super) enum Kind {
     Number(Range),
     /// A bare number or a percentage in quotes.
     Share(Range),
+    /// True or false.
+    Flag,
     /// A number with its unit, in quotes.
     Quantity(Dimension, Range),
     /// A quantity, or a share of the value it belongs to.
@@ -66,6 +68,15 @@ pub(super) enum Kind {
     },
     /// A table.
     Table(&'static Form),
+    /// A list of tables of one form.
+    Rows {
+        /// Of each.
+        form: &'static Form,
+        /// Fewest.
+        least: usize,
+        /// Most.
+        most: usize,
+    },
     /// A length, or a table for what one length does not describe.
     LengthOrTable(&'static Form),
 }
@@ -83,6 +94,10 @@ pub(super) enum Range {
     Any,
     /// Above nought and below one.
     ProperShare,
+    /// Nought or above, and below one.
+    BelowOne,
+    /// Above one half, and one at most.
+    MoreThanHalf,
 }
 
 /// What the fields of a form demand of one another.
@@ -103,14 +118,33 @@ pub(super) enum Rule {
     },
     /// Where the first is given, none of the others may be.
     NotBeside(&'static Field, &'static [&'static Field]),
-    /// Needed where `field` says `word`, a mistake where it says anything else.
+    /// A mistake where `field` says anything but one of `words`.
     OnlyWith {
+        /// The field that decides.
+        field: &'static Field,
+        /// Its deciding words.
+        words: &'static [&'static str],
+        /// The fields that go with it.
+        fields: &'static [&'static Field],
+    },
+    /// Where `field` says `word`, exactly one of `fields` must be given.
+    OneOfWith {
         /// The field that decides.
         field: &'static Field,
         /// Its deciding word.
         word: &'static str,
-        /// The fields that go with it.
+        /// The fields of which one is needed.
         fields: &'static [&'static Field],
+    },
+    /// Where `field` is given, `needed` must be too; where `with` names a field and its word, only
+    /// where that field says so.
+    Needs {
+        /// The field that is given.
+        field: &'static Field,
+        /// The field then needed.
+        needed: &'static Field,
+        /// The field that decides whether it is, and its word.
+        with: Option<(&'static Field, &'static str)>,
     },
     /// Where `field` says `word`, `needed` must be given.
     Demands {
@@ -145,22 +179,41 @@ impl Field {
         Field { absent, ..self }
     }
 
-    /// `text` as this field's value in TOML: quoted, but for bare numbers.
+    /// `text` as this field's value in TOML: quoted, but for bare numbers and truths.
     pub fn toml(&self, text: &str) -> String {
         match self.kind {
-            Kind::Number(_) | Kind::Share(_) => text.to_string(),
+            Kind::Number(_) | Kind::Share(_) | Kind::Flag => text.to_string(),
             _ => format!("\"{text}\""),
         }
     }
 
     /// The example as a line of TOML: `free_length = "210 mm"`.
     pub fn example_line(&self) -> String {
-        format!("{} = {}", self.key, self.toml(self.example))
+        let value = match self.kind {
+            Kind::Table(form) => form.example(),
+            Kind::Rows { form, .. } => format!("[{}]", form.example()),
+            _ => self.toml(self.example),
+        };
+        format!("{} = {value}", self.key)
     }
 
     /// The unit of the example: "mm".
     pub fn example_unit(&self) -> &'static str {
         self.example.split_once(' ').map_or("", |(_, unit)| unit)
+    }
+}
+
+impl Form {
+    /// The fields that must be given.
+    pub fn required(&self) -> impl Iterator<Item = &'static Field> {
+        let must = |field: &&Field| field.absent == Absent::Mistake;
+        self.fields.iter().copied().filter(must)
+    }
+
+    /// What must be given, as a table in one line: `{ motion = "1 mm", force = "300 N" }`.
+    pub fn example(&self) -> String {
+        let lines: Vec<String> = self.required().map(Field::example_line).collect();
+        format!("{{ {} }}", lines.join(", "))
     }
 }
 

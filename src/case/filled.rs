@@ -18,7 +18,8 @@ pub(super) struct Log {
 /// A form as filled in by a file.
 #[derive(Debug)]
 pub(super) struct Filled {
-    /// Dotted name of the table; empty for the file itself.
+    /// Dotted name of the table; empty for the file itself. A row of a list has its number, from
+    /// 1, behind the name of the list: "top.axial_law.2".
     pub name: String,
     /// Where the table begins.
     pub place: Place,
@@ -48,8 +49,12 @@ pub(super) enum Content {
     Share(f64),
     /// Text, or a word of a choice.
     Text(String),
+    /// True or false.
+    Flag(bool),
     /// A table.
     Table(Filled),
+    /// A list of tables.
+    Rows(Vec<Filled>),
 }
 
 impl Filled {
@@ -74,6 +79,33 @@ impl Filled {
         match &self.answer(field)?.content {
             Some(Content::Table(table)) => Some(table),
             _ => None,
+        }
+    }
+
+    /// The tables listed in `field`, if given and readable.
+    pub fn rows(&self, field: &Field) -> Option<&[Filled]> {
+        match &self.answer(field)?.content {
+            Some(Content::Rows(rows)) => Some(rows),
+            _ => None,
+        }
+    }
+
+    /// The table as messages call it: "[top]", "row 2 of top.axial_law", "guide 1".
+    pub fn title(&self) -> String {
+        title_of(&self.name)
+    }
+
+    /// Whether `field` says true, or its default (then noted).
+    pub fn flag(&self, field: &Field, log: &mut Log) -> Option<bool> {
+        match self.answer(field) {
+            Some(answer) => match answer.content {
+                Some(Content::Flag(flag)) => Some(flag),
+                _ => None,
+            },
+            None => match default_of(field, log, &self.name)? {
+                Content::Flag(flag) => Some(flag),
+                _ => None,
+            },
         }
     }
 
@@ -119,7 +151,22 @@ fn default_of(field: &Field, log: &mut Log, table: &str) -> Option<Content> {
     log.defaulted.push(dotted(table, field.key));
     match field.kind {
         Kind::Number(_) => text.parse().ok().map(Content::Number),
+        Kind::Flag => text.parse().ok().map(Content::Flag),
         _ => content_of_text(field, text).ok(),
+    }
+}
+
+/// What messages call the table of that dotted name; not for the file itself.
+pub(super) fn title_of(name: &str) -> String {
+    match name.rsplit_once('.') {
+        Some((list, number)) if number.bytes().all(|b| b.is_ascii_digit()) => {
+            if list.contains('.') {
+                format!("row {number} of {list}")
+            } else {
+                format!("{list} {number}")
+            }
+        }
+        _ => format!("[{name}]"),
     }
 }
 

@@ -1,7 +1,7 @@
 //! The whole case file as a form.
 
 use super::field::{Absent, Field, Form, Kind};
-use super::{duty, imperfections, material, spring, support};
+use super::{duty, guide, imperfections, material, spring, support};
 
 pub(super) static TITLE: Field = Field::new(
     "title",
@@ -13,8 +13,19 @@ pub(super) static TITLE: Field = Field::new(
 
 pub(super) static SPRING: Field = table("spring", &spring::FORM);
 pub(super) static MATERIAL: Field = table("material", &material::FORM);
-pub(super) static BOTTOM: Field = table("bottom", &support::FORM);
-pub(super) static TOP: Field = table("top", &support::FORM);
+pub(super) static BOTTOM: Field = table("bottom", &support::BOTTOM);
+pub(super) static TOP: Field = table("top", &support::TOP);
+pub(super) static GUIDE: Field = Field::new(
+    "guide",
+    Kind::Rows {
+        form: &guide::FORM,
+        least: 0,
+        most: guide::MOST,
+    },
+    "",
+    guide::FORM.doc,
+)
+.or(Absent::Rule("no guides"));
 pub(super) static IMPERFECTIONS: Field =
     table("imperfections", &imperfections::FORM).or(Absent::Rule(imperfections::LEFT_OUT));
 pub(super) static DUTY: Field = table("duty", &duty::FORM);
@@ -30,6 +41,7 @@ pub(super) static CASE: Form = Form {
         &MATERIAL,
         &BOTTOM,
         &TOP,
+        &GUIDE,
         &IMPERFECTIONS,
         &DUTY,
     ],

@@ -13,6 +13,7 @@ mod field;
 mod file;
 mod filled;
 mod form;
+mod guide;
 mod imperfections;
 mod look_alike;
 mod material;

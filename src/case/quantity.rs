@@ -81,13 +81,23 @@ pub(super) fn checked(
         Range::ProperShare if value <= 0.0 || value >= 1.0 => {
             return fault("must lie between 0 and 1, both excluded");
         }
+        Range::BelowOne if !(0.0..1.0).contains(&value) => {
+            return fault("must be 0 or more, and below 1");
+        }
+        Range::MoreThanHalf if value <= 0.5 || value > 1.0 => {
+            return fault("must be more than 0.5 and at most 1");
+        }
         _ => {}
     }
     let reach = Reach::of(dimension);
     let least = match range {
         _ if dimension == Dimension::TEMPERATURE => reach.least,
         Range::Positive => reach.least,
-        Range::NotNegative | Range::Size | Range::ProperShare => 0.0,
+        Range::NotNegative
+        | Range::Size
+        | Range::ProperShare
+        | Range::BelowOne
+        | Range::MoreThanHalf => 0.0,
         Range::Any => -reach.most,
     };
     // What is written exactly at an end may miss it by round-off of its unit.
@@ -96,7 +106,11 @@ pub(super) fn checked(
         let words = match range {
             _ if dimension == Dimension::TEMPERATURE => reach.words(),
             Range::Positive => reach.words(),
-            Range::NotNegative | Range::Size | Range::ProperShare => {
+            Range::NotNegative
+            | Range::Size
+            | Range::ProperShare
+            | Range::BelowOne
+            | Range::MoreThanHalf => {
                 format!("0 to {}", reach.most_words)
             }
             Range::Any => format!("-{0} to {0}", reach.most_words),
@@ -126,6 +140,7 @@ impl Reach {
             Dimension::TEMPERATURE => (-273.15, 2000.0, "-273.15 degC", "2000 degC"),
             Dimension::STIFFNESS => (1e-9, 1e15, "1e-9 N/m", "1e15 N/m"),
             Dimension::ROTATIONAL_STIFFNESS => (1e-9, 1e15, "1e-9 N m/rad", "1e15 N m/rad"),
+            Dimension::MOMENT => (1e-9, 1e12, "1e-9 N m", "1e12 N m"),
             Dimension::DENSITY => (1e-3, 1e6, "0.001 kg/m^3", "1e6 kg/m^3"),
             Dimension::PER_KELVIN => (0.0, 0.01, "0 1/K", "0.01 1/K"),
             _ => (1e-3, 1e5, "0.001", "100000"),

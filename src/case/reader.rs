@@ -4,10 +4,10 @@
 use super::diagnostics::{Mistake, Place};
 use super::fault::Fault;
 use super::field::{Absent, Field, Form, Kind};
-use super::filled::{Answer, Content, Filled, Log, dotted};
+use super::filled::{Answer, Content, Filled, Log, dotted, title_of};
 use super::nearest::{excerpt, nearest};
 use super::value;
-use toml::de::{DeTable, DeValue};
+use toml::de::{DeArray, DeTable, DeValue};
 
 /// Reads `table` by `form`. `place` is where it begins.
 pub(super) fn read(
@@ -81,14 +81,48 @@ fn content(
             Ok(Content::Table(read(inner, form, &name, key.clone(), log)))
         }
         (Kind::Table(_), _) => Err(Some(value::not_a_table(field, table, value))),
+        (Kind::Rows { form, least, most }, DeValue::Array(rows)) => {
+            if !(least..=most).contains(&rows.len()) {
+                return Err(Some(value::wrong_count(field, rows.len(), least, most)));
+            }
+            list(rows, field, form, &dotted(table, field.key), log)
+        }
+        (Kind::Rows { .. }, _) => Err(Some(value::not_a_list(field, table, value))),
         _ => value::content(field, value).map_err(Some),
+    }
+}
+
+/// The tables of a list.
+fn list(
+    rows: &DeArray<'_>,
+    field: &'static Field,
+    form: &'static Form,
+    name: &str,
+    log: &mut Log,
+) -> Result<Content, Option<Fault>> {
+    let mut read_rows = Vec::new();
+    for (index, row) in rows.iter().enumerate() {
+        let name = dotted(name, &(index + 1).to_string());
+        match row.get_ref() {
+            DeValue::Table(inner) => read_rows.push(read(inner, form, &name, row.span(), log)),
+            other => {
+                let fault = value::not_a_row(field, &name, other);
+                log.mistakes
+                    .push(Mistake::at(row.span(), fault.message, fault.cure));
+            }
+        }
+    }
+    if read_rows.len() == rows.len() {
+        Ok(Content::Rows(read_rows))
+    } else {
+        Err(None)
     }
 }
 
 fn unknown(form: &Form, table: &str, word: &str, near: Option<&str>, place: Place) -> Mistake {
     let whose = match table {
         "" => "a case file".to_string(),
-        table => format!("[{table}]"),
+        table => title_of(table),
     };
     let keys = form.fields.iter().map(|f| f.key);
     let cure = match (near, super::form::home_of(word)) {
@@ -109,16 +143,16 @@ fn unknown(form: &Form, table: &str, word: &str, near: Option<&str>, place: Plac
 
 fn missing(filled: &Filled, field: &Field) -> Mistake {
     let table = matches!(field.kind, Kind::Table(_));
-    let (message, cure) = match (table, filled.name.as_str()) {
-        (true, _) => (
+    let (message, cure) = match table {
+        true => (
             format!("the table [{}] is missing", field.key),
             format!(
                 "add [{}] and its fields; `coilstay starter` prints a case to begin from",
                 field.key
             ),
         ),
-        (false, name) => (
-            format!("[{name}] lacks `{}`", field.key),
+        false => (
+            format!("{} lacks `{}`", filled.title(), field.key),
             format!("add it, for example {}", field.example_line()),
         ),
     };

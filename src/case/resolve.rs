@@ -2,7 +2,7 @@
 
 use super::filled::{Filled, Log};
 use super::material::{self, MaterialNotes};
-use super::{duty, form, imperfections, spring, support};
+use super::{duty, form, guide, imperfections, spring, support};
 use crate::setup::{Imperfections, Setup, Support, hold};
 use crate::spring::Spring;
 use crate::units::Metre;
@@ -34,7 +34,8 @@ pub(super) fn resolve(
         .table(&form::SPRING)
         .and_then(|table| spring::free_length(table, log))
         .map(|length| length * factor);
-    let (bottom, top) = supports(file, free_length, log);
+    let (bottom, top) = supports(file, free_length, spring.as_ref(), log);
+    let guides = guide::guides(file, spring.as_ref(), [bottom.as_ref(), top.as_ref()], log);
     let imperfections = imperfections(file, factor, spring.as_ref(), log);
     let duty = file
         .table(&form::DUTY)
@@ -47,7 +48,7 @@ pub(super) fn resolve(
         spring: spring?,
         bottom: bottom?,
         top: top?,
-        guides: Vec::new(),
+        guides: guides?,
         imperfections: imperfections?,
         duty: duty?,
         defaulted: Vec::new(),
@@ -62,20 +63,31 @@ pub(super) fn resolve(
 fn supports(
     file: &Filled,
     free_length: Option<Metre>,
+    spring: Option<&Spring>,
     log: &mut Log,
 ) -> (Option<Support>, Option<Support>) {
     let mut read = |field| {
         let table = file.table(field)?;
-        let support = support::support(table, log)?;
+        let support = support::support(table, spring, log)?;
         let sound = free_length
             .is_none_or(|free_length| support::check_arm(table, &support, free_length, log));
         Some((table, support, sound))
     };
-    let (bottom, top) = (read(&form::BOTTOM), read(&form::TOP));
+    let (mut bottom, mut top) = (read(&form::BOTTOM), read(&form::TOP));
+    let lined_up = match (&mut bottom, &mut top) {
+        (Some((bottom_table, bottom, _)), Some((top_table, top, _))) => {
+            support::line_up((bottom_table, bottom), (top_table, top), log)
+        }
+        _ => false,
+    };
+    if let (Some((_, bottom, _)), Some((table, top, _)), Some(spring)) = (&bottom, &top, spring) {
+        support::check_reach(table, top, bottom, spring, log);
+    }
     // An arm that is too long is the cause of what it makes impossible.
-    let sound = [&bottom, &top]
-        .iter()
-        .all(|read| read.as_ref().is_some_and(|(_, _, sound)| *sound));
+    let sound = lined_up
+        && [&bottom, &top]
+            .iter()
+            .all(|read| read.as_ref().is_some_and(|(_, _, sound)| *sound));
     if sound
         && let (Some((bottom_table, bottom, _)), Some((top_table, top, _))) = (&bottom, &top)
         && !hold(bottom, top, free_length.unwrap_or(f64::INFINITY))

@@ -21,24 +21,42 @@ pub(super) fn check(rule: &Rule, filled: &Filled, log: &mut Log) {
         Rule::NotBeside(field, others) => not_beside(field, others, filled, log),
         Rule::OnlyWith {
             field,
-            word,
+            words,
             fields,
         } => match said(filled, field) {
-            Some(said) if said == word => {
-                for needed in fields.iter().filter(|f| !filled.is_given(f)) {
-                    demand(field, word, needed, filled, log);
-                }
+            Some(said) if !words.contains(&said) => {
+                only_with(field, words, said, fields, filled, log);
             }
-            Some(said) => only_with(field, word, said, fields, filled, log),
-            None => {}
+            _ => {}
         },
+        Rule::OneOfWith {
+            field,
+            word,
+            fields,
+        } => {
+            if said(filled, field) == Some(word) {
+                if given(fields, filled).is_empty() {
+                    demand(field, word, fields, filled, log);
+                }
+                several_of(fields, filled, log);
+            }
+        }
+        Rule::Needs {
+            field,
+            needed,
+            with,
+        } => {
+            if with.is_none_or(|(field, word)| said(filled, field) == Some(word)) {
+                needs(field, needed, filled, log);
+            }
+        }
         Rule::Demands {
             field,
             word,
             needed,
         } => {
             if said(filled, field) == Some(word) && !filled.is_given(needed) {
-                demand(field, word, needed, filled, log);
+                demand(field, word, &[needed], filled, log);
             }
         }
     }
@@ -65,7 +83,7 @@ fn none_of(fields: &'static [&'static Field], filled: &Filled, log: &mut Log) {
     }
     let mistake = Mistake::at(
         filled.place.clone(),
-        format!("[{}] needs {}", filled.name, listed(fields, "or")),
+        format!("{} needs {}", filled.title(), listed(fields, "or")),
         format!(
             "add one of them, for example {}",
             fields.first().map(|f| f.example_line()).unwrap_or_default()
@@ -90,8 +108,8 @@ fn several_of(fields: &[&Field], filled: &Filled, log: &mut Log) {
         Mistake::at(
             second.key.clone(),
             format!(
-                "[{}] is given {}: they say the same thing twice",
-                filled.name,
+                "{} is given {}: they say the same thing twice",
+                filled.title(),
                 listed(&all, "and")
             ),
             format!("keep one of {}", listed(&all, "and")),
@@ -106,17 +124,24 @@ fn together(fields: &[&'static Field], filled: &Filled, log: &mut Log) {
     let Some(first) = given.first() else {
         return;
     };
-    for lacking in fields.iter().filter(|f| !filled.is_given(f)) {
-        let mistake = Mistake::at(
-            first.key.clone(),
-            format!("`{}` needs `{}` beside it", first.field.key, lacking.key),
-            format!("add it, for example {}", lacking.example_line()),
-        );
-        log.mistakes.push(Mistake {
-            absent: vec![lacking.key],
-            ..mistake
-        });
+    for lacking in fields {
+        needs(first.field, lacking, filled, log);
     }
+}
+
+fn needs(field: &Field, needed: &'static Field, filled: &Filled, log: &mut Log) {
+    let Some(answer) = filled.answer(field).filter(|_| !filled.is_given(needed)) else {
+        return;
+    };
+    let mistake = Mistake::at(
+        answer.key.clone(),
+        format!("`{}` needs `{}` beside it", field.key, needed.key),
+        format!("add it, for example {}", needed.example_line()),
+    );
+    log.mistakes.push(Mistake {
+        absent: vec![needed.key],
+        ..mistake
+    });
 }
 
 fn not_beside(field: &Field, others: &[&Field], filled: &Filled, log: &mut Log) {
@@ -141,7 +166,7 @@ fn not_beside(field: &Field, others: &[&Field], filled: &Filled, log: &mut Log) 
 
 fn only_with(
     field: &Field,
-    word: &str,
+    words: &[&str],
     said: &str,
     fields: &[&Field],
     filled: &Filled,
@@ -155,24 +180,35 @@ fn only_with(
                     "`{}` contradicts {} = \"{said}\"",
                     answer.field.key, field.key
                 ),
-                format!(
-                    "set {} = \"{word}\", or remove `{}`",
-                    field.key, answer.field.key
-                ),
+                match words {
+                    [word] => format!(
+                        "set {} = \"{word}\", or remove `{}`",
+                        field.key, answer.field.key
+                    ),
+                    _ => format!(
+                        "remove `{}`: it goes with {} = {}",
+                        answer.field.key,
+                        field.key,
+                        words.join(", ")
+                    ),
+                },
             )
             .also(filled.at(field), format!("the {} is set here", field.key)),
         );
     }
 }
 
-fn demand(field: &Field, word: &str, needed: &'static Field, filled: &Filled, log: &mut Log) {
+fn demand(field: &Field, word: &str, needed: &[&'static Field], filled: &Filled, log: &mut Log) {
     let mistake = Mistake::at(
         filled.at(field),
-        format!("{} = \"{word}\" needs `{}`", field.key, needed.key),
-        format!("add it, for example {}", needed.example_line()),
+        format!("{} = \"{word}\" needs {}", field.key, listed(needed, "or")),
+        format!(
+            "add it, for example {}",
+            needed.first().map(|f| f.example_line()).unwrap_or_default()
+        ),
     );
     log.mistakes.push(Mistake {
-        absent: vec![needed.key],
+        absent: needed.iter().map(|f| f.key).collect(),
         ..mistake
     });
 }

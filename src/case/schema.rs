@@ -33,12 +33,7 @@ fn form(form: &Form) -> Value {
         .iter()
         .map(|field| (field.key.to_string(), property(field)))
         .collect();
-    let required: Vec<&str> = form
-        .fields
-        .iter()
-        .filter(|f| f.absent == Absent::Mistake)
-        .map(|f| f.key)
-        .collect();
+    let required: Vec<&str> = form.required().map(|f| f.key).collect();
     let mut object = json!({
         "description": form.doc,
         "type": "object",
@@ -61,6 +56,7 @@ fn property(field: &Field) -> Value {
         Kind::Choice(words) => json!({ "type": "string", "enum": words() }),
         Kind::Number(range) => number(range),
         Kind::Share(range) => json!({ "anyOf": [number(range), text(PERCENTAGE)] }),
+        Kind::Flag => json!({ "type": "boolean" }),
         Kind::Quantity(..) => text(QUANTITY),
         Kind::QuantityOrShare(_) => {
             json!({ "anyOf": [number(Range::ProperShare), text(QUANTITY)] })
@@ -74,11 +70,31 @@ fn property(field: &Field) -> Value {
             json!({ "anyOf": [{ "type": "string", "enum": words }, text(QUANTITY)] })
         }
         Kind::Table(inner) => form(inner),
+        Kind::Rows {
+            form: of,
+            least,
+            most,
+        } => json!({
+            "type": "array",
+            "items": form(of),
+            "minItems": least,
+            "maxItems": most,
+        }),
         Kind::LengthOrTable(inner) => json!({ "anyOf": [text(QUANTITY), form(inner)] }),
     };
     value["description"] = json!(description(field));
     if !field.example.is_empty() {
         value["examples"] = json!([literal(field, field.example)]);
+    }
+    if let Kind::Rows {
+        form: of, least, ..
+    } = field.kind
+    {
+        let row: Map<String, Value> = of
+            .required()
+            .map(|f| (f.key.to_string(), literal(f, f.example)))
+            .collect();
+        value["examples"] = json!([vec![row; least.max(1)]]);
     }
     if let Absent::Value(default) = field.absent {
         value["default"] = literal(field, default);
@@ -97,6 +113,10 @@ fn number(range: Range) -> Value {
         Range::Any => json!({ "type": "number" }),
         Range::ProperShare => {
             json!({ "type": "number", "exclusiveMinimum": 0, "exclusiveMaximum": 1 })
+        }
+        Range::BelowOne => json!({ "type": "number", "minimum": 0, "exclusiveMaximum": 1 }),
+        Range::MoreThanHalf => {
+            json!({ "type": "number", "exclusiveMinimum": 0.5, "maximum": 1 })
         }
     }
 }
@@ -126,6 +146,7 @@ fn description(field: &Field) -> String {
 fn literal(field: &Field, text: &str) -> Value {
     match (field.kind, text.parse::<f64>()) {
         (Kind::Number(_) | Kind::Share(_), Ok(number)) => json!(number),
+        (Kind::Flag, _) => json!(text == "true"),
         _ => json!(text),
     }
 }
@@ -159,24 +180,44 @@ fn rule(rule: &Rule) -> Value {
         }),
         Rule::OnlyWith {
             field,
+            words,
+            fields,
+        } => json!({
+            "if": says(field, words),
+            "else": { "not": { "anyOf": each(fields) } },
+        }),
+        Rule::OneOfWith {
+            field,
             word,
             fields,
         } => json!({
-            "if": says(field, word),
-            "then": { "allOf": each(fields) },
-            "else": { "not": { "anyOf": each(fields) } },
+            "if": says(field, &[word]),
+            "then": { "oneOf": each(fields) },
+        }),
+        Rule::Needs {
+            field,
+            needed,
+            with: None,
+        } => json!({ "dependencies": { field.key: [needed.key] } }),
+        Rule::Needs {
+            field,
+            needed,
+            with: Some((decides, word)),
+        } => json!({
+            "if": { "allOf": [{ "required": [field.key] }, says(decides, &[word])] },
+            "then": { "required": [needed.key] },
         }),
         Rule::Demands {
             field,
             word,
             needed,
         } => json!({
-            "if": says(field, word),
+            "if": says(field, &[word]),
             "then": { "required": [needed.key] },
         }),
     }
 }
 
-fn says(field: &Field, word: &str) -> Value {
-    json!({ "required": [field.key], "properties": { field.key: { "const": word } } })
+fn says(field: &Field, words: &[&str]) -> Value {
+    json!({ "required": [field.key], "properties": { field.key: { "enum": words } } })
 }

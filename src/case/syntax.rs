@@ -46,7 +46,9 @@ fn swallows(lines: &Lines<'_>, error: &Error) -> bool {
 fn is_header_in_value(lines: &Lines<'_>, error: &Error) -> bool {
     let start = error.span().map_or(0, |place| place.start);
     let line = lines.text(lines.index(start));
-    error.message().starts_with(UNQUOTED) && line.trim_start().starts_with('[')
+    let parser = error.message();
+    let value = parser.starts_with("invalid") && !parser.contains("key");
+    (parser.starts_with(UNQUOTED) || value) && line.trim_start().starts_with('[')
 }
 
 fn is_too_deep(parser: &str) -> bool {
@@ -116,6 +118,11 @@ fn mistake(text: &str, lines: &Lines<'_>, place: Place, error: &Error) -> Mistak
         (
             "a table header is not closed".to_string(),
             "end it with a bracket, as in [spring]".to_string(),
+        )
+    } else if parser.starts_with("unclosed array table") {
+        (
+            "the header of a list is not closed".to_string(),
+            "end it with two brackets, as in [[guide]]".to_string(),
         )
     } else if is_too_deep(parser) {
         (
@@ -220,6 +227,13 @@ pub(super) fn unexplained(
                 && broken.contains(&lines.index(place.end))
         })
     };
+    // What follows a header that is taken for a value is taken for values too.
+    let swallowed_from = errors
+        .iter()
+        .filter(|error| is_header_in_value(&lines, error))
+        .map(|error| lines.index(error.span().map_or(0, |place| place.start)))
+        .min()
+        .unwrap_or(usize::MAX);
     let all_absent = text.contains("\"\"\"")
         || text.contains("'''")
         || errors.iter().any(|error| swallows(&lines, error))
@@ -229,6 +243,7 @@ pub(super) fn unexplained(
     let has = |key: &&str| broken.iter().any(|line| lines.text(*line).contains(*key));
     others
         .into_iter()
+        .filter(|mistake| line_of(mistake) < swallowed_from)
         .filter(|mistake| {
             if mistake.absent.is_empty() {
                 !broken.contains(&line_of(mistake)) && !is_astray(mistake) && !runs_on(mistake)

@@ -2,7 +2,7 @@
 
 use super::fault::Fault;
 use super::field::{Field, Kind, Range};
-use super::filled::{Content, dotted};
+use super::filled::{Content, dotted, title_of};
 use super::nearest::{excerpt, nearest};
 use super::quantity::{checked, quantity};
 use crate::units::Dimension;
@@ -19,6 +19,16 @@ pub(super) fn content(field: &Field, value: &DeValue<'_>) -> Result<Content, Fau
             let number = bare_number(value);
             checked(field, number, Dimension::NUMBER, Range::ProperShare).map(Content::Share)
         }
+        (Kind::Flag, DeValue::Boolean(flag)) => Ok(Content::Flag(*flag)),
+        (Kind::Flag, _) => Err(Fault {
+            message: format!(
+                "`{}` is true or false, not {}",
+                field.key,
+                kind_of_toml(value)
+            ),
+            label: String::new(),
+            cure: format!("without quotes, for example {}", field.example_line()),
+        }),
         (Kind::Number(_), DeValue::String(text)) => Err(Fault {
             message: format!("`{}` is a bare number, not text", field.key),
             label: "in quotes".to_string(),
@@ -60,7 +70,7 @@ pub(super) fn content_of_text(field: &Field, text: &str) -> Result<Content, Faul
             dimension,
             may_be_free,
         } => stiffness(field, text, dimension, may_be_free),
-        Kind::Number(_) | Kind::Table(_) => Err(Fault {
+        Kind::Number(_) | Kind::Flag | Kind::Table(_) | Kind::Rows { .. } => Err(Fault {
             message: format!("`{}` cannot be text", field.key),
             label: String::new(),
             cure: format!("for example {}", field.example_line()),
@@ -191,6 +201,61 @@ pub(super) fn not_a_table(field: &Field, table: &str, value: &DeValue<'_>) -> Fa
             DeValue::Array(_) => format!("write its header once, with single brackets: [{name}]"),
             _ => format!("begin it with a header line [{name}] and put its fields below"),
         },
+    }
+}
+
+/// What stands where a list of tables is wanted.
+pub(super) fn not_a_list(field: &Field, table: &str, value: &DeValue<'_>) -> Fault {
+    let name = dotted(table, field.key);
+    Fault {
+        message: format!("`{name}` is a list of tables, not {}", kind_of_toml(value)),
+        label: String::new(),
+        cure: match value {
+            DeValue::Table(_) => format!(
+                "write its header with double brackets, [[{name}]], once for each; or a list, {}",
+                field.example_line()
+            ),
+            _ => format!("for example {}", field.example_line()),
+        },
+    }
+}
+
+/// What stands in a list where a table is wanted.
+pub(super) fn not_a_row(field: &Field, name: &str, value: &DeValue<'_>) -> Fault {
+    Fault {
+        message: format!(
+            "{} is a table in braces, not {}",
+            title_of(name),
+            kind_of_toml(value)
+        ),
+        label: String::new(),
+        cure: format!("for example {}", field.example_line()),
+    }
+}
+
+/// A list that is too short or too long.
+pub(super) fn wrong_count(field: &Field, count: usize, least: usize, most: usize) -> Fault {
+    let (message, cure) = if count < least {
+        let rows = |count: usize| if count == 1 { "row" } else { "rows" };
+        (
+            format!(
+                "`{}` has {count} {}: it needs at least {least} {}",
+                field.key,
+                rows(count),
+                rows(least)
+            ),
+            format!("for example {}", field.example_line()),
+        )
+    } else {
+        (
+            format!("`{}` has {count} rows: at most {most} are read", field.key),
+            format!("leave out what matters least until there are {most}"),
+        )
+    };
+    Fault {
+        message,
+        label: String::new(),
+        cure,
     }
 }
 

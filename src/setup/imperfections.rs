@@ -88,13 +88,13 @@ impl Imperfections {
     }
 
     /// Every way in which the deviations can lie to one another between these seats; the mirror
-    /// image of one already listed is left out where the seats are true. 16 at most, or 32 between
-    /// seats that are not.
+    /// image of one already listed is left out where the seats are true and move straight. 16 at
+    /// most, or 32 between seats that do not.
     pub fn orientations(&self, bottom: &Support, top: &Support) -> Vec<Orientation> {
         let acts_at = |support: &Support| support.rotation != Restraint::Free || support.arm != 0.0;
-        let true_seats = [bottom, top]
-            .iter()
-            .all(|support| support.tilt == 0.0 && support.offset == 0.0);
+        let true_seats = [bottom, top].iter().all(|support| {
+            support.tilt == 0.0 && support.offset == 0.0 && support.motion.is_none()
+        });
         let mut ends: Vec<bool> = Vec::new();
         if self.parallelism != 0.0 {
             ends.extend(acts_at(top).then_some(true));
@@ -149,6 +149,7 @@ impl Imperfections {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::setup::{FlatSeat, LeverArc, Motion};
 
     fn sizes(squareness: f64, parallelism: f64, bow: f64, eccentricity: f64) -> Imperfections {
         Imperfections {
@@ -186,5 +187,18 @@ mod tests {
             ..clamped
         };
         assert_eq!(count(sizes(1.0, 1.0, 1.0, 1.0), &tilted, &soft), 32);
+        // A seat on a lever is not mirrored; a flat one holds rotation as a clamped one does.
+        let across = 0.1;
+        let on_lever = Support {
+            motion: Some(Motion::Lever(LeverArc { along: 0.0, across })),
+            ..clamped
+        };
+        assert_eq!(count(sizes(1.0, 0.0, 0.0, 0.0), &clamped, &on_lever), 2);
+        let flat = Support::flat(FlatSeat {
+            radius: 0.02,
+            ground_share: 1.0,
+            friction: None,
+        });
+        assert_eq!(count(sizes(1.0, 1.0, 1.0, 1.0), &clamped, &flat), 8);
     }
 }

@@ -94,12 +94,19 @@ impl Setup {
     }
 }
 
-/// Whether two supports together hold a rigid spring of this free length, m: its stiffness against
-/// (shift of the bottom, turn) must be definite.
+/// Whether two supports together hold a rigid spring of this free length, m, in both lateral planes:
+/// its stiffness against (shift of the bottom, turn) must be definite.
 pub fn hold(bottom: &Support, top: &Support, length: Metre) -> bool {
+    hold_in_plane(&bottom.in_first_plane(), &top.in_first_plane(), length)
+        && hold_in_plane(&bottom.in_other_plane(), &top.in_other_plane(), length)
+}
+
+/// The same in the first plane of both. A flat seat holds rotation. A link holds nothing sideways as
+/// long as it is not loaded: its transverse rate goes with its force.
+fn hold_in_plane(bottom: &Support, top: &Support, length: Metre) -> bool {
     let resists = |restraint: Restraint| !matches!(restraint, Restraint::Free);
     let reach = length + bottom.arm + top.arm;
-    let sideways = [resists(bottom.sideways), resists(top.sideways)];
+    let sideways = [bottom, top].map(|end| end.link.is_none() && resists(end.sideways));
     let turning = resists(bottom.rotation) || resists(top.rotation);
     match sideways {
         [true, true] => reach > 0.0 || turning,

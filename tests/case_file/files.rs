@@ -115,11 +115,24 @@ fn the_cases_and_the_starter_are_read() {
     assert_eq!(starter.text, case::starter());
 }
 
-/// What the starter shows commented out must work once it is uncommented.
+/// What the starter shows commented out must work once it is uncommented: a table as a whole, the
+/// other lines one by one.
 #[test]
 fn the_starters_examples_can_be_used() {
+    let block: String = case::starter()
+        .lines()
+        .skip_while(|line| !line.starts_with("# ["))
+        .take_while(|line| !line.is_empty())
+        .map(|line| format!("{line}\n"))
+        .collect();
+    let uncommented = format!("\n{block}").replace("\n# ", "\n");
+    let guided = case::starter().replace(&block, &uncommented);
+    assert_eq!(
+        case::parse("starter", &guided).map(|case| case.setup.guides.len()),
+        Ok(1)
+    );
     let mut tried = 0;
-    for line in case::starter().lines() {
+    for line in case::starter().replace(&block, "").lines() {
         let Some(example) = line.strip_prefix("# ").filter(|l| l.contains(" = ")) else {
             continue;
         };

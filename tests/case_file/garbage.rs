@@ -5,7 +5,7 @@ use coilstay::case;
 use proptest::prelude::*;
 
 /// Fragments that a mutation may put in.
-const FRAGMENTS: [&str; 24] = [
+const FRAGMENTS: [&str; 29] = [
     "\"",
     "'",
     "[",
@@ -30,6 +30,19 @@ const FRAGMENTS: [&str; 24] = [
     "[spring]\n",
     "wire = 3\n",
     "\"8 mm\"",
+    "[[guide]]\n",
+    "[top.lever]\n",
+    "axial_law = [{ motion = \"1 mm\" }]\n",
+    "piloted = true\n",
+    "kind = \"flat\"\n",
+];
+
+/// The starter, and cases with lists and tables of tables.
+const TEXTS: [&str; 4] = [
+    BASE,
+    include_str!("../../cases/rubber-buffer.toml"),
+    include_str!("../../cases/lever-latch.toml"),
+    include_str!("../../src/case/starter.toml"),
 ];
 
 fn must_be_sound(text: &str) {
@@ -79,9 +92,9 @@ proptest! {
             (any::<prop::sample::Index>(), 0usize..12, 0usize..FRAGMENTS.len()),
             1..6,
         ),
-        starter in any::<bool>(),
+        which in 0usize..TEXTS.len(),
     ) {
-        let mut text: Vec<char> = if starter { case::starter() } else { BASE }.chars().collect();
+        let mut text: Vec<char> = TEXTS[which].chars().collect();
         for (at, remove, fragment) in edits {
             let start = at.index(text.len().max(1)).min(text.len());
             let end = (start + remove).min(text.len());

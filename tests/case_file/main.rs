@@ -1,7 +1,11 @@
 //! The case file: what is read, what is refused and how.
 
+mod end_mistakes;
+mod ends;
 mod files;
 mod garbage;
+mod guides;
+mod law_mistakes;
 mod meaning;
 mod mistakes;
 mod schema;
@@ -72,5 +76,15 @@ fn check(table: &[Expected]) {
         assert_eq!((item.line, item.column), (*line, *column), "{to}: {item:?}");
         assert!(item.message.contains(message), "{to}: {}", item.message);
         assert!(item.cure.contains(cure), "{to}: {}", item.cure);
+    }
+}
+
+/// Whole texts, and the single mistake of each: (text, (line, column), part of the message, part of the cure)
+fn check_text(table: &[(String, (usize, usize), &str, &str)]) {
+    for (text, place, message, cure) in table {
+        let item = only_mistake(text);
+        assert_eq!((item.line, item.column), *place, "{text}: {item:?}");
+        assert!(item.message.contains(message), "{text}: {}", item.message);
+        assert!(item.cure.contains(cure), "{text}: {}", item.cure);
     }
 }

@@ -424,7 +424,7 @@ fn what_is_swallowed_is_not_missing() {
         ),
         ("\"8 mm\"", "\"\"\"8 mm", "not closed"),
         ("[material]", "material]", "neither `key = value`"),
-        ("[material]", "[[material", "unclosed"),
+        ("[material]", "[[material", "not closed"),
     ] {
         let mistakes = refused(&with(from, to));
         let mut messages = mistakes.items().iter().map(|item| &item.message);

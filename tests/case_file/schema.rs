@@ -14,8 +14,19 @@ fn meets(value: &Value, schema: &Value) -> bool {
             Some("object") => value.is_object(),
             Some("string") => value.is_string(),
             Some("number") => value.is_number(),
+            Some("boolean") => value.is_boolean(),
+            Some("array") => value.is_array(),
             other => panic!("type {other:?}"),
         },
+        "items" => value
+            .as_array()
+            .is_none_or(|list| list.iter().all(|item| meets(item, rule))),
+        "minItems" => value
+            .as_array()
+            .is_none_or(|list| list.len() as u64 >= rule.as_u64().unwrap()),
+        "maxItems" => value
+            .as_array()
+            .is_none_or(|list| list.len() as u64 <= rule.as_u64().unwrap()),
         "properties" => value.as_object().is_none_or(|object| {
             object
                 .iter()
@@ -36,8 +47,8 @@ fn meets(value: &Value, schema: &Value) -> bool {
             })
         }),
         "enum" => rule.as_array().unwrap().contains(value),
-        "const" => rule == value,
         "minimum" => value.as_f64().is_none_or(|v| v >= rule.as_f64().unwrap()),
+        "maximum" => value.as_f64().is_none_or(|v| v <= rule.as_f64().unwrap()),
         "exclusiveMinimum" => value.as_f64().is_none_or(|v| v > rule.as_f64().unwrap()),
         "exclusiveMaximum" => value.as_f64().is_none_or(|v| v < rule.as_f64().unwrap()),
         "minLength" => value
@@ -107,6 +118,35 @@ fn what_the_reader_takes_meets_the_schema() {
             "loading = \"force\"\nworking_force = \"900 N\"\nrequired_margin = \"15 %\"",
         ),
         with("total_coils = 10.5\n", ""),
+        with(
+            "kind = \"hinged\"",
+            "kind = \"flat\"\nground_share = 0.75\npiloted = true",
+        ),
+        with("kind = \"hinged\"", "kind = \"flat\"\nfriction = 0.1"),
+        with(
+            "kind = \"hinged\"",
+            "kind = \"ball\"\narm = \"9 mm\"\nfriction = 0.1\nball_radius = \"8 mm\"",
+        ),
+        with(
+            "kind = \"hinged\"",
+            "kind = \"link\"\nlink_length = \"80 mm\"\nlink_acts = \"hanger\"",
+        ),
+        with(
+            "kind = \"hinged\"",
+            "kind = \"elastic\"\nsideways_stiffness = \"rigid\"\nrotational_law = [{ motion = \"1 deg\", moment = \"1 N m\" }]",
+        ),
+        with(
+            "kind = \"hinged\"",
+            "kind = \"hinged\"\nplane = \"30 deg\"\nother_plane = { kind = \"clamped\", tilt = \"1 deg\" }\nlever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
+        ),
+        with(
+            "kind = \"hinged\"",
+            "kind = \"hinged\"\nmotion = [{ travel = \"0 mm\", offset = \"0 mm\", tilt = \"0 deg\" }, { travel = \"9 mm\", offset = \"1 mm\", tilt = \"1 deg\" }]",
+        ),
+        with(
+            "[duty]",
+            "[[guide]]\nkind = \"rod\"\ndiameter = \"50 mm\"\nfriction = 0\n[[guide]]\nkind = \"bore\"\ndiameter = \"76 mm\"\n[duty]",
+        ),
     ] {
         assert!(case::parse("t", &text).is_ok(), "{text}");
         assert!(meets(&as_json(&text), &schema), "{text}");
@@ -169,6 +209,57 @@ fn what_the_schema_can_see_is_refused_by_both() {
         with("[duty]", "[duty]\nrate_loss_share = 1.5"),
         with("[duty]", "[duty]\nmargins = { solidd = 0 }"),
         with("[duty]", "[duty]\nrequired_margin = -0.1"),
+        with("\"hinged\"", "\"flat\"\narm = \"3 mm\""),
+        with("\"hinged\"", "\"flat\"\nground_share = 0.5"),
+        with("\"hinged\"", "\"flat\"\nground_share = 1.1"),
+        with("\"hinged\"", "\"flat\"\npiloted = \"yes\""),
+        with("\"hinged\"", "\"hinged\"\nseat_radius = \"3 mm\""),
+        with("\"hinged\"", "\"hinged\"\nfriction = 0.1"),
+        with("\"hinged\"", "\"ball\"\nfriction = 0.1"),
+        with("\"hinged\"", "\"ball\"\nball_radius = \"8 mm\""),
+        with("\"hinged\"", "\"link\"\nlink_length = \"80 mm\""),
+        with("\"hinged\"", "\"link\"\nlink_acts = \"strut\""),
+        with("\"hinged\"", "\"clamped\"\nplane = \"3 deg\""),
+        with("\"hinged\"", "\"clamped\"\nother_plane = {}"),
+        with(
+            "\"hinged\"",
+            "\"clamped\"\nother_plane = { kind = \"elastic\" }",
+        ),
+        with("\"hinged\"", "\"clamped\"\naxial_law = []"),
+        with("\"hinged\"", "\"clamped\"\naxial_law = [3]"),
+        with(
+            "\"hinged\"",
+            "\"clamped\"\naxial_law = [{ motion = \"1 mm\" }]",
+        ),
+        with(
+            "\"hinged\"",
+            "\"clamped\"\naxial_stiffness = \"rigid\"\naxial_law = [{ motion = \"1 mm\", force = \"1 N\" }]",
+        ),
+        with(
+            "\"hinged\"",
+            "\"free\"\nlever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
+        ),
+        with(
+            "\"hinged\"",
+            "\"hinged\"\nlever = { pivot_across = \"90 mm\" }",
+        ),
+        with(
+            "\"clamped\"",
+            "\"clamped\"\nlever = { pivot_along = \"-90 mm\", pivot_across = \"90 mm\" }",
+        ),
+        with(
+            "[duty]",
+            "[guide]\nkind = \"rod\"\ndiameter = \"50 mm\"\n[duty]",
+        ),
+        with("[duty]", "[[guide]]\nkind = \"rod\"\n[duty]"),
+        with(
+            "[duty]",
+            &("[[guide]]\nkind = \"rod\"\ndiameter = \"50 mm\"\n".repeat(5) + "[duty]"),
+        ),
+        with(
+            "[duty]",
+            "[[guide]]\nkind = \"rod\"\ndiameter = \"50 mm\"\nfriction = 1\n[duty]",
+        ),
     ] {
         assert!(case::parse("t", &text).is_err(), "{text}");
         assert!(!meets(&as_json(&text), &schema), "{text}");

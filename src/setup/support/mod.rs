@@ -115,7 +115,9 @@ impl Support {
         }
     }
 
-    /// The support as it is in its other principal plane, alike all round.
+    /// The support as it is in its other principal plane, alike all round. A seat with two planes
+    /// moves aside in its first one only; of one without, nobody knows in which: it is taken to do so
+    /// in both.
     pub fn in_other_plane(&self) -> Self {
         let there = self.other_plane.unwrap_or_else(|| self.lateral());
         Support {
@@ -123,6 +125,7 @@ impl Support {
             sideways: there.sideways,
             tilt: there.tilt,
             offset: there.offset,
+            motion: self.motion.filter(|_| self.other_plane.is_none()),
             other_plane: None,
             ..*self
         }

@@ -37,9 +37,10 @@ pub struct SeatPose {
 }
 
 impl LeverArc {
-    /// The largest travel it allows, m: where the seat moves sideways only.
+    /// The largest travel it allows, m: ρ − a, where the seat has come level with the far side of its
+    /// circle and moves sideways only.
     pub fn largest_travel(&self) -> Metre {
-        self.along + self.along.hypot(self.across)
+        self.along.hypot(self.across) - self.along
     }
 
     /// The pose after a travel u. With the pivot at (a, b) from the seat, the seat turned by ψ about
@@ -96,6 +97,11 @@ mod tests {
     fn a_lever_keeps_its_distance_and_its_slopes_are_the_differences() {
         for (along, across) in [(0.0, 0.1), (0.02, -0.12), (-0.01, 0.08)] {
             let arc = LeverArc { along, across };
+            // At the largest travel it moves sideways only; a little before, it still turns on.
+            let largest = arc.largest_travel();
+            let pose = arc.pose(largest * (1.0 - 1e-9));
+            assert!((pose.offset.value - across).abs() < 1e-4 * across.abs());
+            assert!(pose.tilt.slope.abs() > 1e3 * arc.pose(0.0).tilt.slope.abs());
             for travel in [0.0, 0.01, 0.03] {
                 let pose = arc.pose(travel);
                 // The seat, at (−travel, offset) from where it was, is as far from the pivot.
