@@ -8,7 +8,7 @@
 //! at the bottom, e φ ≤ 0 at the top. The seat's force across and along its normal is
 //! N = P cos(angle) − H sin(angle), T = P sin(angle) + H cos(angle). No edge slides.
 //!
-//! The path is followed in travel; each way of standing is a boundary value problem of its own, and
+//! The path is followed in any parameter; each way of standing is a boundary value problem of its own, and
 //! where it stops being possible is found by bisection.
 
 use super::axis::Rod;
@@ -27,6 +27,9 @@ pub struct FlatSeat {
     /// From the end of the flexible part to the ring's plane, outward positive.
     pub arm: f64,
 }
+
+/// What rounding may leave of a moment beyond N R (in kL²) or of an angle into the seat.
+const NEAR: f64 = 1e-11;
 
 /// How a ring is on its seat.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -91,7 +94,7 @@ impl FlatColumn {
                     continue;
                 };
                 let state = self.look(state);
-                if self.wrong(&state).iter().all(|wrong| *wrong <= 0.0) {
+                if self.wrong(&state).iter().all(|wrong| *wrong <= NEAR) {
                     found.push(state);
                 }
             }
@@ -101,45 +104,72 @@ impl FlatColumn {
         found.is_empty().then_some(state)
     }
 
-    /// The state at the travel `target`, followed from `from` through every lift-off and return.
-    pub fn follow(&mut self, target: f64, from: &FlatState) -> Result<FlatState, Failure> {
+    /// The state where `parameter` (`Travel`: of the seats' centres) is `target`, followed from
+    /// `from` through every lift-off and return.
+    pub fn follow(
+        &mut self,
+        parameter: Parameter,
+        target: f64,
+        from: &FlatState,
+    ) -> Result<FlatState, Failure> {
         let mut at = *from;
         for _ in 0..20 {
             self.stand(at.standing);
-            let reached = self.at(target, &at)?;
-            if self.wrong(&reached).iter().all(|wrong| *wrong <= 0.0) {
+            let reached = self.on(parameter, target, &at.column)?;
+            if self.wrong(&reached).iter().all(|wrong| *wrong <= NEAR) {
                 return Ok(reached);
             }
-            // The last travel at which this way of standing is possible.
-            let (mut low, mut high) = (at, reached);
-            let (mut least, mut most) = (low.travel, target);
-            for _ in 0..45 {
-                let travel = 0.5 * (least + most);
-                let middle = self.at(travel, &low)?;
-                if self.wrong(&middle).iter().all(|wrong| *wrong <= 0.0) {
-                    (low, least) = (middle, travel);
-                } else {
-                    (high, most) = (middle, travel);
-                }
-            }
-            let wrong = self.wrong(&high);
-            let next: [Standing; 2] = std::array::from_fn(|end| match high.standing[end] {
-                _ if wrong[end] <= 0.0 => high.standing[end],
-                Standing::Flat => Standing::Edge(high.moment[end].signum()),
-                Standing::Edge(_) => Standing::Flat,
-            });
-            self.stand(next);
-            let adopted = self.problem.adopt(&high.column);
-            at = FlatState {
-                standing: next,
-                ..self.on(high.travel, &adopted)?
-            };
+            at = self.change(parameter, target, at, reached)?;
         }
         Err(Failure {
-            parameter: Parameter::Travel,
+            parameter,
             value: target,
             correction: f64::INFINITY,
         })
+    }
+
+    /// y of the column's middle.
+    pub fn height(&mut self, state: &FlatState) -> f64 {
+        self.stand(state.standing);
+        self.problem.profile(&state.column, &[0.5])[0].y
+    }
+
+    /// The state between `from` and the travel `target` in which a ring can no longer lie or stand
+    /// as it does, in its next way of standing. A column that lifts off because it bows does so at a
+    /// limit of travel: from there it is followed in `BottomTurn`.
+    pub fn next_change(&mut self, target: f64, from: &FlatState) -> Result<FlatState, Failure> {
+        self.stand(from.standing);
+        let reached = self.on(Parameter::Travel, target, &from.column)?;
+        self.change(Parameter::Travel, target, *from, reached)
+    }
+
+    /// The same between `low`, which is possible, and `high` at `target`, which is not.
+    fn change(
+        &mut self,
+        parameter: Parameter,
+        target: f64,
+        mut low: FlatState,
+        mut high: FlatState,
+    ) -> Result<FlatState, Failure> {
+        let (mut least, mut most) = (self.value(parameter, &low), target);
+        for _ in 0..45 {
+            let value = 0.5 * (least + most);
+            let middle = self.on(parameter, value, &low.column)?;
+            if self.wrong(&middle).iter().all(|wrong| *wrong <= NEAR) {
+                (low, least) = (middle, value);
+            } else {
+                (high, most) = (middle, value);
+            }
+        }
+        let wrong = self.wrong(&high);
+        let next: [Standing; 2] = std::array::from_fn(|end| match high.standing[end] {
+            _ if wrong[end] <= 0.0 => high.standing[end],
+            Standing::Flat => Standing::Edge(high.moment[end].signum()),
+            Standing::Edge(_) => Standing::Flat,
+        });
+        self.stand(next);
+        let adopted = self.problem.adopt(&high.column);
+        self.on(parameter, most, &adopted)
     }
 
     /// Energy of the column, by Simpson's rule over `2 cells` parts.
@@ -203,17 +233,23 @@ impl FlatColumn {
         along(1) - along(0)
     }
 
-    fn at(&self, travel: f64, from: &FlatState) -> Result<FlatState, Failure> {
-        self.on(travel, &from.column)
+    fn value(&self, parameter: Parameter, state: &FlatState) -> f64 {
+        match parameter {
+            Parameter::Travel => state.travel,
+            other => self.problem.value(other, &state.column),
+        }
     }
 
-    fn on(&self, travel: f64, from: &State) -> Result<FlatState, Failure> {
-        let value = travel + self.lead();
-        let states = self.problem.follow(Parameter::Travel, &[value], from)?;
-        // A guess that already has this travel is not a state yet.
+    fn on(&self, parameter: Parameter, target: f64, from: &State) -> Result<FlatState, Failure> {
+        let value = match parameter {
+            Parameter::Travel => target + self.lead(),
+            _ => target,
+        };
+        let states = self.problem.follow(parameter, &[value], from)?;
+        // A guess that already has this value is not a state yet.
         let state = self
             .problem
-            .solve(Parameter::Travel, value, states.last().unwrap_or(from))?;
+            .solve(parameter, value, states.last().unwrap_or(from))?;
         Ok(self.look(state))
     }
 
