@@ -338,7 +338,7 @@ fn linked_columns_branch_off_where_the_straight_one_goes() {
         let limit = (4.0 * near.load - far.load) / 3.0;
 
         assert!((limit / critical - 1.0).abs() < 1e-7, "{limit} {critical}");
-        // What the far hinge's travel puts in is stored: the load's work is its own.
+        // A strut's far hinge comes nearer as it leans, a hanger's goes away.
         let sink = |state: &State| state.travel - state.shortening;
         let sign = if hanging { -1.0 } else { 1.0 };
         assert!(sign * sink(&near) > 0.0);
