@@ -14,9 +14,13 @@
 //! Any consistent units. Inside, lengths are in L, forces in EI/L², moments in EI/L.
 
 mod axis;
+mod flat;
 mod problem;
 mod seat;
+mod swivel;
 
 pub use axis::{Rod, Station};
+pub use flat::{FlatColumn, FlatSeat, FlatState, Standing};
 pub use problem::{Failure, Parameter, Problem, State};
 pub use seat::Seat;
+pub use swivel::{SwivelColumn, SwivelState};

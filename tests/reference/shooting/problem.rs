@@ -21,7 +21,8 @@ pub enum Parameter {
     Load,
     /// Shortening of the flexible part: L − (x of its top − x of its bottom).
     Shortening,
-    /// Approach of the pivots: L + both arms − (x of the top pivot − x of the bottom pivot).
+    /// Approach of the pivots: L + both arms − (x of the top pivot − x of the bottom pivot); with
+    /// links, of their far hinges.
     Travel,
     /// Rotation of the bottom, rad.
     BottomTurn,
@@ -40,7 +41,7 @@ pub struct State {
     pub side_force: f64,
     /// L − (x of the flexible part's top − x of its bottom).
     pub shortening: f64,
-    /// L + both arms − (x of the top pivot − x of the bottom pivot).
+    /// L + both arms − (x of the top pivot − x of the bottom pivot), and what leaning links add.
     pub travel: f64,
     /// Section at the bottom of the flexible part.
     pub bottom: Station,
@@ -256,6 +257,18 @@ impl Problem {
         }
     }
 
+    /// The section that `state` has at its bottom, as a guess for this problem, whose seats may be
+    /// others than those of `state`.
+    pub fn adopt(&self, state: &State) -> State {
+        let length = self.rod.length;
+        let (along, across) = self.bottom.piece(state.bottom.theta, -1.0);
+        let mut adopted = *state;
+        let u = &mut adopted.unknowns;
+        u[0] = (state.bottom.y + across) / length;
+        u[3] = state.bottom.moment / self.unit_moment() - (along * u[2] + across * u[4]) / length;
+        adopted
+    }
+
     fn newton(
         &self,
         parameter: Parameter,
@@ -336,11 +349,12 @@ impl Problem {
             }
         };
         // Force on the column: −H at the bottom, H at the top; moments alike.
+        let on = |action: f64| (state.load, action);
         Some(Unknowns::new(
-            bottom.sideways_rest(-state.side_force, state.pivots[0], force, length),
-            bottom.turning_rest(-state.pivot_moments[0], state.bottom.theta, moment),
-            top.sideways_rest(state.side_force, state.pivots[1], force, length),
-            top.turning_rest(state.pivot_moments[1], state.top.theta, moment),
+            bottom.sideways_rest(on(-state.side_force), state.pivots[0], force, length),
+            bottom.turning_rest(on(-state.pivot_moments[0]), state.bottom.theta, moment),
+            top.sideways_rest(on(state.side_force), state.pivots[1], force, length),
+            top.turning_rest(on(state.pivot_moments[1]), state.top.theta, moment),
             set,
         ))
     }
@@ -355,14 +369,16 @@ impl Problem {
         let (along, across) = (along / length, across / length);
         let top_moment = last[3] - (along * axis.side + across * axis.load);
         let arms = (self.bottom.arm + self.top.arm) / length;
+        let pivots = [u[0] * length, (last[1] + across) * length];
+        let links = self.bottom.link_sinks(pivots[0]) + self.top.link_sinks(pivots[1]);
         Some(State {
             load: axis.load * force,
             side_force: axis.side * force,
             shortening: (1.0 - (last[0] - first[0])) * length,
-            travel: (1.0 + arms - (last[0] + along)) * length,
+            travel: (1.0 + arms - (last[0] + along)) * length + links,
             bottom: self.station(0.0, &first),
             top: self.station(1.0, &last),
-            pivots: [u[0] * length, (last[1] + across) * length],
+            pivots,
             pivot_moments: [u[3] * moment, top_moment * moment],
             unknowns: *u,
         })

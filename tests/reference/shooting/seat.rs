@@ -1,5 +1,7 @@
 //! What holds an end of the column.
 
+use crate::reference::elastic_ends::Link;
+
 /// What holds an end. Its laws act at the pivot, which the rigid piece joins to the end plane.
 #[derive(Clone, Copy, Debug)]
 pub struct Seat {
@@ -20,6 +22,10 @@ pub struct Seat {
     pub force: f64,
     /// Dead moment on the end.
     pub moment: f64,
+    /// Moment on the end per load P, as of a seat that turns against its friction.
+    pub drag: f64,
+    /// A link at the pivot; its far hinge is held at `offset`.
+    pub link: Option<Link>,
 }
 
 impl Seat {
@@ -43,8 +49,19 @@ impl Seat {
             eccentricity: 0.0,
             force: 0.0,
             moment: 0.0,
+            drag: 0.0,
+            link: None,
         }
     }
+
+    /// Hinged to a link, held by nothing else.
+    pub const fn linked(link: Link) -> Seat {
+        Seat {
+            link: Some(link),
+            ..Seat::FREE
+        }
+    }
+
     /// From the end plane's centre to the pivot when the end has turned by `theta`; `outward` is
     /// +1 at the top and −1 at the bottom.
     pub(super) fn piece(&self, theta: f64, outward: f64) -> (f64, f64) {
@@ -56,17 +73,38 @@ impl Seat {
         )
     }
 
-    /// What is left of the sideways law where the column is pushed by `on` and stands at `y`, in
-    /// the given units.
-    pub(super) fn sideways_rest(&self, on: f64, y: f64, force: f64, length: f64) -> f64 {
+    /// What is left of the sideways law where the column, under `load`, is pushed by `on` and
+    /// stands at `y`, in the given units.
+    pub(super) fn sideways_rest(
+        &self,
+        (load, on): (f64, f64),
+        y: f64,
+        force: f64,
+        length: f64,
+    ) -> f64 {
         let (of_force, of_motion) = weights(self.sideways * length / force);
-        of_force * (on - self.force) / force + of_motion * (y - self.offset) / length
+        let aside = y - self.offset;
+        // P tan ψ with sin ψ = aside/ℓ: a strut pushes on, a hanger pulls back.
+        let link = self.link.map_or(0.0, |link| {
+            -link.rate(load) * aside / (1.0 - (aside / link.length).powi(2)).sqrt()
+        });
+        of_force * (on - self.force - link) / force + of_motion * aside / length
     }
 
-    /// What is left of the law of rotation where the column is turned by `on` and stands at `theta`.
-    pub(super) fn turning_rest(&self, on: f64, theta: f64, moment: f64) -> f64 {
+    /// What is left of the law of rotation where the column, under `load`, is turned by `on` and
+    /// stands at `theta`.
+    pub(super) fn turning_rest(&self, (load, on): (f64, f64), theta: f64, moment: f64) -> f64 {
         let (of_moment, of_turn) = weights(self.rotation / moment);
-        of_moment * (on - self.moment) / moment + of_turn * (theta - self.angle)
+        of_moment * (on - self.moment - self.drag * load) / moment + of_turn * (theta - self.angle)
+    }
+
+    /// How much nearer to the column a link that leans has its far hinge.
+    pub(super) fn link_sinks(&self, y: f64) -> f64 {
+        self.link.map_or(0.0, |link| {
+            let lean = ((y - self.offset) / link.length).asin();
+            let sinks = 2.0 * link.length * (0.5 * lean).sin().powi(2);
+            if link.hanging { -sinks } else { sinks }
+        })
     }
 }
 
