@@ -284,28 +284,38 @@ fn walls_keep_the_axis_out_and_forces_balance() {
     }
 }
 
-/// The error of a guided path falls at least with the square of the mesh.
+/// The error of a guided path falls with the square of the mesh. Where the ends of the contact lie
+/// within their pads differs from mesh to mesh and from point to point, so it is a mean over a
+/// stretch of the path.
 #[test]
 fn guided_paths_converge() {
-    let load = |elements: usize| {
+    let places: Vec<f64> = (0..24).map(|i| 0.2 + 0.007 * f64::from(i)).collect();
+    let loads = |elements: usize| -> Vec<f64> {
         let case = Case {
             elements,
             ..spring(6.0, R, [false, false], 0.01, 0.02)
         };
-        let path = case.to(0.4, 0.03);
-        path.points[path.points.len() - 1].load
+        let mut path = case.to(0.4, 0.03);
+        places.iter().map(|place| path.at(*place).load).collect()
     };
-    let exact = load(256);
+    let exact = loads(256);
     let errors: Vec<f64> = [8, 16, 32, 64]
-        .map(|n| (load(n) / exact - 1.0).abs())
-        .to_vec();
-    println!("{errors:?}");
-    // Where the ends of the contact lie within their pads differs from mesh to mesh: order over two
-    // doublings.
-    for pair in errors.windows(3) {
-        assert!(pair[2] < pair[0] / 12.0, "{errors:?}");
+        .iter()
+        .map(|n| {
+            let found = loads(*n);
+            let squares: f64 = found
+                .iter()
+                .zip(&exact)
+                .map(|(f, e)| (f / e - 1.0).powi(2))
+                .sum();
+            (squares / exact.len() as f64).sqrt()
+        })
+        .collect();
+    for pair in errors.windows(2) {
+        let order = (pair[0] / pair[1]).log2();
+        assert!(order > 1.8, "{errors:?}");
     }
-    assert!(errors[3] < 1e-6);
+    assert!(errors[3] < 1e-6, "{errors:?}");
 }
 
 /// As EA and GA go to infinity and the clearance to nought: point contact up to 4 P1 with the forces
@@ -333,7 +343,7 @@ fn a_column_that_only_bends_meets_the_published_phases() {
                 let guess = column.first_guess();
                 let start = start(&mut column, &mut newton, &guess, 0.0).expect("starts");
                 let mut points = vec![start];
-                let most = ends.flat_buckles() * 1.02;
+                let most = ends.flat_buckles() * 1.05;
                 let settings = PathSettings {
                     largest_step: 0.02,
                     ..PathSettings::default()
@@ -365,22 +375,19 @@ fn a_column_that_only_bends_meets_the_published_phases() {
                         expected.flat
                     );
                 }
-                // Where the flat part could buckle.
-                let mut loose = column.loosened().expect("no friction");
-                let index = points
-                    .iter()
-                    .position(|p| {
-                        column.contacts(&p.state, &mut contacts);
-                        !contacts.is_empty()
-                            && newton.evaluate(&mut loose, &p.state, p.load) > p.negatives
-                    })
-                    .expect("buckles");
-                let (below, above) = (points[index - 1].load, points[index].load);
-                let expected = ends.flat_buckles();
-                assert!(
-                    below < 1.01 * expected && above > 0.99 * expected,
-                    "{below} {above} {expected}"
-                );
+                // Where what lies flat buckles away by itself.
+                let flat = |point: &Point| {
+                    let mut contacts = Vec::new();
+                    column.contacts(&point.state, &mut contacts);
+                    let length = match (contacts.first(), contacts.last()) {
+                        (Some(first), Some(last)) => last.place - first.place + first.width,
+                        _ => 0.0,
+                    };
+                    column.wave_number(point.load) * length / (2.0 * PI)
+                };
+                let index = points.iter().position(|p| flat(p) > 1.0).expect("buckles");
+                let found = points[index].load / ends.flat_buckles();
+                assert!((found - 1.0).abs() < 0.02, "{found}");
                 worst
             })
             .collect();
@@ -454,7 +461,7 @@ fn friction_takes_what_the_loop_encloses() {
 fn a_corner_pushes_square_on_the_axis() {
     let mut case = spring(5.0, R, [false, true], 0.03, 0.02);
     case.walls[0] = Wall {
-        to: 0.3,
+        to: 0.15,
         corner: 0.02,
         ..case.walls[0]
     };
@@ -501,8 +508,14 @@ fn a_guide_out_of_reach_changes_nothing() {
         &near.points[near.points.len() - 1],
         &bare.points[bare.points.len() - 1],
     );
-    assert_eq!(one.load, two.load);
-    assert_eq!(one.state.nodes, two.state.nodes);
+    assert!((one.load / two.load - 1.0).abs() < 1e-12);
+    let apart = one
+        .state
+        .nodes
+        .iter()
+        .zip(&two.state.nodes)
+        .map(|(a, b)| (a - b).amax());
+    assert!(apart.fold(0.0, f64::max) < 1e-12);
     let mut straight = Case {
         bow: 0.0,
         ..spring(6.0, R, [false, false], 0.0, 0.01)

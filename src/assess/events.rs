@@ -6,7 +6,6 @@ use crate::column::Column;
 use crate::result::{Leaning, PathPoint};
 use crate::setup::{LimitKind, Loading, Setup};
 use crate::solve::{Newton, locate};
-use std::cell::RefCell;
 
 /// An event on a path.
 #[derive(Clone, Debug)]
@@ -225,6 +224,7 @@ impl Track<'_> {
                 s.point.guide_room_m.unwrap_or(f64::INFINITY)
             }),
             Watch::state(EventKind::LineContact, |s| pitch - s.point.guide_longest_m),
+            Watch::state(EventKind::LooseFlat, |s| 1.0 - s.flat),
             Watch::state(EventKind::SecondPlace, |s| {
                 1.5 - f64::from(s.point.guide_places)
             }),
@@ -232,29 +232,6 @@ impl Track<'_> {
         for watch in &watches {
             events.extend(self.first(watch, 0));
         }
-        events.extend(self.loose_flat());
-    }
-
-    /// Where a stretch that lies flat on a guide first could buckle away from it.
-    fn loose_flat(&mut self) -> Option<Event> {
-        let loose = RefCell::new((self.column.loosened()?, self.newton.clone()));
-        let unstable = |point: &Solved| {
-            let (column, newton) = &mut *loose.borrow_mut();
-            newton.evaluate(column, &point.state, point.load) > point.negatives
-        };
-        let leaning = self.seen.iter().position(|s| s.point.guide_places > 0)?;
-        let index = (leaning..self.points.len()).find(|i| unstable(&self.points[*i]))?;
-        let after = index.checked_sub(1)?;
-        let found = locate(
-            self.column,
-            self.newton,
-            self.points,
-            after,
-            BRACKET,
-            |point| if unstable(point) { -1.0 } else { 1.0 },
-        )?;
-        let place = after as f64 + found.distance / self.points[after].distance;
-        Some(self.event(EventKind::LooseFlat, &found.point, found.bracket, place))
     }
 
     /// The first point from index `from` on at which the watch turns from positive to not.

@@ -16,6 +16,8 @@ pub(super) struct Leaned {
     pub places: u32,
     /// Length of the longest of them.
     pub longest: f64,
+    /// Length of the longest over that at which a part lying flat buckles away by itself.
+    pub flat: f64,
     /// On corners at the ends of guides.
     pub at_corners: f64,
     /// Friction on the column along x, added up.
@@ -38,6 +40,11 @@ impl Leaned {
             longest: spans
                 .iter()
                 .fold(0.0, |longest, span| longest.max(span.1 - span.0)),
+            flat: column.wave_number(-state.inner[0][3])
+                * spans
+                    .iter()
+                    .fold(0.0, |longest: f64, span| longest.max(span.1 - span.0))
+                / (2.0 * std::f64::consts::PI),
             at_corners: contacts
                 .iter()
                 .filter(|c| c.at_corner)

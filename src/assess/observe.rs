@@ -29,6 +29,8 @@ pub(super) struct Seen {
     pub seated: Option<f64>,
     /// Least of friction less thrust where an end could slide, N.
     pub slides: Option<f64>,
+    /// How long what lies flat on a guide is, over the length at which it buckles away by itself.
+    pub flat: f64,
     /// Smallest room to a guide that may not be touched, in the column's length.
     pub forbidden_room: Option<f64>,
     /// Direction of the path: change of the force, N, and of the travel, m.
@@ -145,6 +147,7 @@ impl Observer {
                     - u32::from(falling && solved.negatives > 0),
                 unstable_dead_load: solved.negatives,
             },
+            flat: guide.flat,
             clearance: clearance(setup, column, &stations),
             seated: flat_ends(setup, &seats_pressed),
             slides: sliding_ends(setup, &seats_pressed, scale.force),

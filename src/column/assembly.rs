@@ -44,6 +44,12 @@ impl System<3, INNER> for Column {
                 .any(|seat| matches!(seat.touch, Touch::Flat { .. } | Touch::Swivel { .. }))
     }
 
+    fn ease(&mut self, eased: bool) {
+        if let Some(leaning) = &mut self.leaning {
+            leaning.eased = eased;
+        }
+    }
+
     fn depart(&mut self, state: &ColumnState) {
         let last = self.elements.len();
         self.end_was = [state.nodes[0][2], state.nodes[last][2]];
@@ -108,7 +114,7 @@ impl System<3, INNER> for Column {
                     inner,
                     jumps: Leaning::jumps(&state.side, e),
                 };
-                if leaning.assemble(&self.tables, e, &top, held, &state.side, out) {
+                if leaning.assemble(&self.tables, e, &top, held, out) {
                     if symmetric {
                         out.inner_negatives += ALWAYS_NEGATIVE;
                     }

@@ -22,7 +22,7 @@ pub struct Leaning {
     pub(super) laws: Vec<[PointLaw; 2 * PADS]>,
     pub(super) symmetric: bool,
     search: f64,
-    loosened: bool,
+    pub(super) eased: bool,
     /// Where each pad was along x when the step began.
     was: Vec<f64>,
     /// Of the last assembly.
@@ -64,7 +64,7 @@ impl Leaning {
             walls,
             symmetric,
             search: SEARCH,
-            loosened: false,
+            eased: false,
             was: vec![0.0; elements.len() * PADS],
             pads: vec![[Pad::Away; PADS]; elements.len()],
             condensed: vec![None; elements.len()],
@@ -104,25 +104,15 @@ impl Leaning {
         e: usize,
         top: &TopSeat,
         mut held: Held<'_>,
-        side: &[f64],
         out: &mut Assembled<3>,
     ) -> bool {
         self.condensed[e] = None;
         self.pads[e] = [Pad::Away; PADS];
-        if !self.is_near(top, &held) {
+        if self.eased || !self.is_near(top, &held) {
             return false;
         }
         let means = held.means(&self.tables);
-        let mut pads = self.decide(top, &held, &means, e);
-        if self.loosened {
-            let leans = |pad: usize| side.get(2 * pad + 1).is_some_and(|push| *push != 0.0);
-            for (k, pad) in pads.iter_mut().enumerate() {
-                let here = e * PADS + k;
-                if here > 0 && leans(here - 1) && leans(here) && leans(here + 1) {
-                    *pad = Pad::Pushed;
-                }
-            }
-        }
+        let pads = self.decide(top, &held, &means, e);
         let was = &self.was[e * PADS..(e + 1) * PADS];
         if pads == [Pad::Away; PADS] && held.jumps == [[0.0; 2]; PADS] {
             return false;
@@ -134,7 +124,7 @@ impl Leaning {
                 Pad::Leans { side, facing, .. } if self.symmetric => {
                     jump[0] = -(facing.axis_slope + side * facing.widening) * jump[1];
                 }
-                Pad::Pushed | Pad::Leans { .. } => {}
+                Pad::Leans { .. } => {}
             }
         }
         for k in 0..PADS {
@@ -142,7 +132,7 @@ impl Leaning {
                 self.mended[e][k][axis] = held.jumps[k][axis] - given[k][axis];
             }
         }
-        let marked = pads.map(|pad| matches!(pad, Pad::Leans { .. }));
+        let marked = pads.map(|pad| pad != Pad::Away);
         let forms = held.forms(plain, &self.tables, marked);
         let forces = [[held.inner[3], held.inner[4]], held.end_force()];
         let condensed = forms.condense(&pads, &held.jumps, was, forces, self.symmetric);
@@ -383,14 +373,12 @@ impl Column {
                     .is_some_and(|leaning| leaning.walls.iter().any(|wall| wall.friction > 0.0)))
     }
 
-    /// The same column with what it leans on loosened inside: where it leans over a stretch, only
-    /// the ends of that stretch still hold it, while all that pushes goes on pushing. Where its
-    /// tangent then has negative eigenvalues, a stretch that lies flat could buckle away from the
-    /// wall by itself. `None` with friction, where the tangent cannot be counted.
-    pub fn loosened(&self) -> Option<Column> {
-        let mut column = self.clone();
-        let leaning = column.leaning.as_mut()?;
-        leaning.loosened = true;
-        leaning.symmetric.then_some(column)
+    /// Wave number q, in 1/L, of the waves into which the straight column bends freely under an axial
+    /// force: `q² = P (a + b)/EI`, a = 1 − P/EA, b = P/GA. A part of length ℓ that lies flat on a wall,
+    /// its ends held in place and slope, buckles away from it at `q ℓ = 2π`.
+    pub fn wave_number(&self, force: f64) -> f64 {
+        let law = &self.elements[0].points[0];
+        let open = 1.0 + force * (law.shear_compliance - law.axial_compliance);
+        (force * open / law.bending).max(0.0).sqrt()
     }
 }

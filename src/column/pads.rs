@@ -19,8 +19,6 @@ const HOLDS: f64 = 1.0 + 1e-9;
 pub(super) enum Pad {
     /// It leans on nothing.
     Away,
-    /// It is pushed with what the state says, and not held.
-    Pushed,
     /// It leans on the wall at this side (+1: at +y).
     Leans {
         side: f64,
@@ -78,7 +76,7 @@ impl PadForms {
         for (k, pad) in pads.iter().enumerate() {
             let (first, second) = (2 * k, 2 * k + 1);
             match *pad {
-                Pad::Away | Pad::Pushed => {
+                Pad::Away => {
                     let sign = if symmetric { -1.0 } else { 1.0 };
                     own[(first, first)] = sign;
                     own[(second, second)] = sign;

@@ -232,6 +232,12 @@ pub fn start<const B: usize, const I: usize>(
     load: f64,
 ) -> Result<PathPoint<B, I>, NotConverged> {
     let mut state = guess.clone();
+    if system.has_kinks() {
+        system.ease(true);
+        let near = newton.solve_at_load(system, &mut state, load);
+        system.ease(false);
+        near?;
+    }
     newton.solve_at_load(system, &mut state, load)?;
     let row = vec![SVector::zeros(); system.links() + 1];
     let d = 1.0 / system.load_scale();

@@ -72,6 +72,10 @@ pub trait System<const B: usize, const I: usize> {
     /// (friction sticks to where it was). Does not allocate.
     fn depart(&mut self, _state: &Unknowns<B, I>) {}
 
+    /// Leaves contacts that come and go out of account, to find a state near which to begin, or takes
+    /// them back in.
+    fn ease(&mut self, _eased: bool) {}
+
     /// Evaluates residual and tangent at `state` under the load `load`, and remembers what
     /// [`System::recover`] needs. Does not allocate.
     fn assemble(&mut self, state: &Unknowns<B, I>, load: f64, out: &mut Assembled<B>);
