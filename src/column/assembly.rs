@@ -1,12 +1,13 @@
 //! The column as a system to be solved: elements condensed and chained, ends held.
 
 use super::element::INNER;
-use super::ends::Turning;
+use super::ends::{End, Turning};
 use super::guided::Leaning;
 use super::layout::{Column, ColumnState, Hold};
 use super::lean::Held;
 use super::pads::PAD_UNKNOWNS;
 use super::seat::{Seat, Touch};
+use super::wall::TopSeat;
 use crate::solve::{Assembled, SymmetricFactor, System};
 use nalgebra::{Matrix3, SVector, Vector3};
 use nalgebra_sparse::{CooMatrix, CscMatrix};
@@ -14,6 +15,9 @@ use nalgebra_sparse::{CooMatrix, CscMatrix};
 /// Negative eigenvalues of an element's inner matrix in every stable state: its two forces,
 /// multipliers of the geometry.
 const ALWAYS_NEGATIVE: i64 = 2;
+
+/// Iterations in which all pads may change what they do at once.
+const ALL_AT_ONCE: usize = 8;
 
 impl System<3, INNER> for Column {
     fn links(&self) -> usize {
@@ -44,6 +48,32 @@ impl System<3, INNER> for Column {
                 .any(|seat| matches!(seat.touch, Touch::Flat { .. } | Touch::Swivel { .. }))
     }
 
+    fn iterating(&mut self, iteration: usize) {
+        if let Some(leaning) = &mut self.leaning {
+            leaning.one_at_a_time = leaning.is_forced() || iteration > ALL_AT_ONCE;
+        }
+    }
+
+    fn changed(&self) -> bool {
+        self.leaning.as_ref().is_some_and(|leaning| leaning.changed)
+    }
+
+    fn pass_kink(&mut self, state: &mut ColumnState, beyond: &ColumnState) -> bool {
+        if (0..2).any(|which| self.pass_seat_kink(which, state, beyond)) {
+            return true;
+        }
+        let ends = [self.end(beyond, 0), self.end(beyond, 1)];
+        let top = self.top_seat(beyond);
+        let Some(mut leaning) = self.leaning.take() else {
+            return false;
+        };
+        leaning.begin();
+        self.choose(&mut leaning, beyond, &ends, &top);
+        let passed = leaning.force_turn();
+        self.leaning = Some(leaning);
+        passed
+    }
+
     fn ease(&mut self, eased: bool) {
         if let Some(leaning) = &mut self.leaning {
             leaning.eased = eased;
@@ -53,13 +83,7 @@ impl System<3, INNER> for Column {
     fn depart(&mut self, state: &ColumnState) {
         let last = self.elements.len();
         self.end_was = [state.nodes[0][2], state.nodes[last][2]];
-        for which in 0..2 {
-            let turned = self.turned(state, which);
-            self.standing[which] = match self.seats[which].touch {
-                Touch::Flat { .. } if turned != 0.0 => Some(self.seats[which].edge_side(turned)),
-                _ => None,
-            };
-        }
+        self.standing = [None; 2];
         let Some(mut leaning) = self.leaning.take_if(|leaning| !leaning.symmetric) else {
             return;
         };
@@ -92,17 +116,14 @@ impl System<3, INNER> for Column {
         let ends = [self.end(state, 0), self.end(state, 1)];
         let top = self.top_seat(state);
         let mut leaning = self.leaning.take();
+        if let Some(leaning) = &mut leaning {
+            leaning.begin();
+            if leaning.one_at_a_time && !leaning.is_forced() {
+                self.choose(leaning, state, &ends, &top);
+            }
+        }
         for (e, element) in self.elements.iter().enumerate() {
-            let a = if e == 0 {
-                &ends[0].pose.at
-            } else {
-                &state.nodes[e]
-            };
-            let b = if e + 1 == last {
-                &ends[1].pose.at
-            } else {
-                &state.nodes[e + 1]
-            };
+            let (a, b) = self.element_poses(state, &ends, e);
             let inner = &state.inner[e];
             if let Some(leaning) = &mut leaning {
                 let laws = leaning.laws[e];
@@ -149,6 +170,9 @@ impl System<3, INNER> for Column {
                 *left = out.tangent.right[e].transpose();
             }
             self.inner_answers[e] = answers;
+        }
+        if let Some(leaning) = &mut leaning {
+            leaning.end();
         }
         self.leaning = leaning;
         for (which, end) in ends.iter().enumerate() {
@@ -199,6 +223,41 @@ impl System<3, INNER> for Column {
 
     fn load_scale(&self) -> f64 {
         self.load_scale
+    }
+}
+
+impl Column {
+    /// Poses of the ends of an element.
+    fn element_poses<'a>(
+        &self,
+        state: &'a ColumnState,
+        ends: &'a [End; 2],
+        e: usize,
+    ) -> (&'a Vector3<f64>, &'a Vector3<f64>) {
+        let last = self.elements.len();
+        let at = |node: usize| match node {
+            0 => &ends[0].pose.at,
+            n if n == last => &ends[1].pose.at,
+            n => &state.nodes[n],
+        };
+        (at(e), at(e + 1))
+    }
+
+    /// Lets the guides choose the pad that is farthest from right at a state.
+    fn choose(&self, leaning: &mut Leaning, state: &ColumnState, ends: &[End; 2], top: &TopSeat) {
+        for (e, element) in self.elements.iter().enumerate() {
+            let (a, b) = self.element_poses(state, ends, e);
+            let laws = leaning.laws[e];
+            let held = Held {
+                element,
+                laws: &laws,
+                a,
+                b,
+                inner: &state.inner[e],
+                jumps: Leaning::jumps(&state.side, e),
+            };
+            leaning.choose(e, top, &held);
+        }
     }
 }
 

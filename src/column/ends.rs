@@ -10,6 +10,8 @@ use super::wall::TopSeat;
 use crate::solve::Assembled;
 use nalgebra::{Matrix3, Vector3};
 
+/// Rotation, rad, below which a flat end is flush: round-off.
+const FLUSH: f64 = 1e-13;
 /// Weight of a rotation against a moment in the search for which way a swivel turns, EI/L.
 const SWIVEL_SEARCH: f64 = 1e2;
 
@@ -69,8 +71,48 @@ impl Column {
         let node = which * self.elements.len();
         let laws = if which == 0 { &self.bottom } else { &self.top };
         match laws.0[2] {
-            Hold::Held(rest) => state.nodes[node][2] - rest,
+            Hold::Held(rest) => {
+                let turned = state.nodes[node][2] - rest;
+                if turned.abs() < FLUSH { 0.0 } else { turned }
+            }
             _ => 0.0,
+        }
+    }
+
+    /// The edge on which a flat end stands: the one it stood on, else the one it is turned to.
+    fn side_of(&self, which: usize, turned: f64) -> Option<f64> {
+        match self.seats[which].touch {
+            Touch::Flat { .. } => self.standing[which]
+                .or_else(|| (turned != 0.0).then(|| self.seats[which].edge_side(turned))),
+            _ => None,
+        }
+    }
+
+    /// Whether a flat end, flush at `state` or standing, does the other at `beyond`: then it is made to
+    /// do so at `state`.
+    pub(super) fn pass_seat_kink(
+        &mut self,
+        which: usize,
+        state: &mut ColumnState,
+        beyond: &ColumnState,
+    ) -> bool {
+        if !matches!(self.seats[which].touch, Touch::Flat { .. }) {
+            return false;
+        }
+        let node = which * self.elements.len();
+        let (before, stood) = (self.turned(state, which), self.standing[which]);
+        let end = self.end(beyond, which);
+        match (end.turning, stood) {
+            (Turning::Stands, None) => {
+                self.standing[which] = end.standing;
+                true
+            }
+            (Turning::HeldAt(_), Some(_)) => {
+                state.nodes[node][2] -= before;
+                self.standing[which] = None;
+                true
+            }
+            _ => false,
         }
     }
 
@@ -96,7 +138,8 @@ impl Column {
             return end;
         }
         let turned = self.turned(state, which);
-        if let Some(side) = self.standing[which] {
+        let side = self.side_of(which, turned);
+        if let Some(side) = side {
             end.pose = seat.pose(q, Some((turned, side)));
         }
         end.actions = self.actions_on(state, which, &end.pose.at);
@@ -124,8 +167,8 @@ impl Column {
     fn flat(&self, state: &ColumnState, which: usize, turned: f64, end: &mut End) {
         let seat = &self.seats[which];
         let q = &state.nodes[which * self.elements.len()];
-        if let Some(side) = self.standing[which] {
-            if seat.edge_side(turned) == side {
+        if let Some(side) = self.side_of(which, turned) {
+            if turned == 0.0 || seat.edge_side(turned) == side {
                 end.turning = Turning::Stands;
                 end.standing = Some(side);
             } else {

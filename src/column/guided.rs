@@ -14,6 +14,9 @@ use nalgebra::{SVector, Vector3};
 /// the size of forces over motions that occur. The answer does not depend on it.
 const SEARCH: f64 = 1e3;
 
+/// Force, EI/L², by which a pad's condition must be missed to count as missed.
+const ROUND_OFF: f64 = 1e-10;
+
 /// Guides and the contact of a column with them.
 #[derive(Clone, Debug)]
 pub struct Leaning {
@@ -23,6 +26,15 @@ pub struct Leaning {
     pub(super) symmetric: bool,
     search: f64,
     pub(super) eased: bool,
+    /// Whether one pad changes at a time, the one that is farthest from right: late in an iteration,
+    /// where the pads at the ends of a contact take turns.
+    pub(super) one_at_a_time: bool,
+    turn: Option<(usize, Pad)>,
+    farthest: f64,
+    /// Whether the turn is set from outside, for one assembly.
+    forced: bool,
+    /// Whether the last assembly changed what any pad does.
+    pub(super) changed: bool,
     /// Where each pad was along x when the step began.
     was: Vec<f64>,
     /// Of the last assembly.
@@ -65,6 +77,11 @@ impl Leaning {
             symmetric,
             search: SEARCH,
             eased: false,
+            one_at_a_time: false,
+            turn: None,
+            farthest: 0.0,
+            forced: false,
+            changed: false,
             was: vec![0.0; elements.len() * PADS],
             pads: vec![[Pad::Away; PADS]; elements.len()],
             condensed: vec![None; elements.len()],
@@ -107,12 +124,24 @@ impl Leaning {
         out: &mut Assembled<3>,
     ) -> bool {
         self.condensed[e] = None;
-        self.pads[e] = [Pad::Away; PADS];
+        let before = std::mem::replace(&mut self.pads[e], [Pad::Away; PADS]);
         if self.eased || !self.is_near(top, &held) {
+            self.changed |= before != [Pad::Away; PADS];
             return false;
         }
         let means = held.means(&self.tables);
-        let pads = self.decide(top, &held, &means, e);
+        let pads = if self.one_at_a_time {
+            std::array::from_fn(|k| match self.turn {
+                Some((at, pad)) if at == e * PADS + k => pad,
+                _ => before[k].kept(&self.walls, top, &held, means[k]),
+            })
+        } else {
+            self.decide(top, &held, &means, e).map(|decided| decided.0)
+        };
+        self.changed |= pads
+            .iter()
+            .zip(&before)
+            .any(|(pad, before)| pad.differs(before));
         let was = &self.was[e * PADS..(e + 1) * PADS];
         if pads == [Pad::Away; PADS] && held.jumps == [[0.0; 2]; PADS] {
             return false;
@@ -177,13 +206,54 @@ impl Leaning {
         true
     }
 
+    /// Chooses, of the pads of an element that should do something else than they did, the one that is
+    /// farthest from right, if it is farther than those chosen before.
+    pub(super) fn choose(&mut self, e: usize, top: &TopSeat, held: &Held<'_>) {
+        if !self.is_near(top, held) {
+            return;
+        }
+        let means = held.means(&self.tables);
+        let decided = self.decide(top, held, &means, e);
+        for (k, (pad, by)) in decided.into_iter().enumerate() {
+            if pad.differs(&self.pads[e][k]) && by > self.farthest {
+                self.farthest = by;
+                self.turn = Some((e * PADS + k, pad));
+            }
+        }
+    }
+
+    /// Begins an assembly.
+    pub(super) fn begin(&mut self) {
+        self.changed = false;
+        if !self.forced {
+            self.farthest = ROUND_OFF;
+            self.turn = None;
+        }
+    }
+
+    /// Makes the chosen pad do what it should in the next assembly, all others what they do.
+    pub(super) fn force_turn(&mut self) -> bool {
+        self.forced = self.turn.is_some();
+        self.one_at_a_time = self.forced;
+        self.forced
+    }
+
+    /// Ends an assembly.
+    pub(super) fn end(&mut self) {
+        self.forced = false;
+    }
+
+    pub(super) fn is_forced(&self) -> bool {
+        self.forced
+    }
+
     fn decide(
         &self,
         top: &TopSeat,
         held: &Held<'_>,
         means: &[[f64; 2]; PADS],
         e: usize,
-    ) -> [Pad; PADS] {
+    ) -> [(Pad, f64); PADS] {
         let was = &self.was[e * PADS..(e + 1) * PADS];
         decide(
             &self.walls,
@@ -247,10 +317,13 @@ impl Column {
             };
             let means = held.means(&leaning.tables);
             let pads = leaning.decide(&top, &held, &means, e);
-            for (k, pad) in pads.iter().enumerate() {
+            for (k, (pad, _)) in pads.iter().enumerate() {
                 let Pad::Leans { side, facing, .. } = pad else {
                     continue;
                 };
+                if jumps[k][1] == 0.0 {
+                    continue;
+                }
                 let slope = facing.axis_slope + side * facing.widening;
                 out.push(Contact {
                     place: ((e * PADS + k) as f64 + 0.5) * width,
@@ -340,7 +413,7 @@ impl Column {
                 (means, pads)
             });
             for k in 0..PADS {
-                let drag = |i: usize| match &both[i].1[k] {
+                let drag = |i: usize| match &both[i].1[k].0 {
                     Pad::Leans { side, facing, .. } => {
                         let slope = facing.axis_slope + side * facing.widening;
                         let rides = if facing.from_top { tops[i].x } else { 0.0 };

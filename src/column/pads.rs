@@ -281,7 +281,8 @@ impl Condensed {
     }
 }
 
-/// What the pads of an element do at their mean positions, from what they did and where.
+/// What the pads of an element do at their mean positions, from what they did and where; and by how
+/// much the condition that decides it is met, as a force.
 pub(super) fn decide(
     walls: &[Wall],
     top: &TopSeat,
@@ -290,19 +291,11 @@ pub(super) fn decide(
     was: &[f64],
     search: f64,
     symmetric: bool,
-) -> [Pad; PADS] {
-    let compliance = held.element.points[0].axial_compliance;
+) -> [(Pad, f64); PADS] {
     std::array::from_fn(|k| {
         let ([x, y], [jx, jy]) = (means[k], held.jumps[k]);
-        let facings = walls
-            .iter()
-            .filter_map(|wall| wall.face(x, held.inner[3], compliance, top));
-        let nearest = facings.min_by(|a, b| {
-            let room = |f: &Facing| f.clearance - (y - f.axis).abs();
-            room(a).total_cmp(&room(b))
-        });
-        let Some(facing) = nearest else {
-            return Pad::Away;
+        let Some(facing) = nearest(walls, top, held, means[k]) else {
+            return (Pad::Away, f64::INFINITY);
         };
         let aside = y - facing.axis;
         let side = if jy != 0.0 {
@@ -312,25 +305,71 @@ pub(super) fn decide(
         };
         let gap = facing.clearance - side * aside;
         let push = side * jy;
-        if push - search * gap <= 0.0 {
-            return Pad::Away;
+        let held_on = push - search * gap;
+        if held_on <= 0.0 {
+            return (Pad::Away, -held_on);
         }
         let slope = facing.axis_slope + side * facing.widening;
-        let motion = if symmetric || facing.friction == 0.0 {
-            Motion::Slips(0.0)
+        let (motion, by) = if symmetric || facing.friction == 0.0 {
+            (Motion::Slips(0.0), held_on)
         } else {
             let drag = jx + slope * jy;
             let trial = drag + search * (x - was[k]);
-            if trial.abs() <= facing.friction * push * HOLDS {
-                Motion::Sticks
+            let most = facing.friction * push * HOLDS;
+            if trial.abs() <= most {
+                (Motion::Sticks, most - trial.abs())
             } else {
-                Motion::Slips(trial.signum() * facing.friction)
+                let way = Motion::Slips(trial.signum() * facing.friction);
+                (way, trial.abs() - most)
             }
         };
-        Pad::Leans {
+        let pad = Pad::Leans {
             side,
             facing,
             motion,
-        }
+        };
+        (pad, by)
     })
+}
+
+/// The wall nearest to a place of the axis.
+fn nearest(walls: &[Wall], top: &TopSeat, held: &Held<'_>, [x, y]: [f64; 2]) -> Option<Facing> {
+    let compliance = held.element.points[0].axial_compliance;
+    walls
+        .iter()
+        .filter_map(|wall| wall.face(x, held.inner[3], compliance, top))
+        .min_by(|a, b| {
+            let room = |f: &Facing| f.clearance - (y - f.axis).abs();
+            room(a).total_cmp(&room(b))
+        })
+}
+
+impl Pad {
+    /// Whether it does something else than `other`.
+    pub fn differs(&self, other: &Pad) -> bool {
+        match (self, other) {
+            (Pad::Away, Pad::Away) => false,
+            (
+                Pad::Leans { side, motion, .. },
+                Pad::Leans {
+                    side: other_side,
+                    motion: other_motion,
+                    ..
+                },
+            ) => side != other_side || motion != other_motion,
+            _ => true,
+        }
+    }
+
+    /// The same doing where the axis is now.
+    pub fn kept(&self, walls: &[Wall], top: &TopSeat, held: &Held<'_>, mean: [f64; 2]) -> Pad {
+        match (self, nearest(walls, top, held, mean)) {
+            (Pad::Leans { side, motion, .. }, Some(facing)) => Pad::Leans {
+                side: *side,
+                facing,
+                motion: *motion,
+            },
+            _ => Pad::Away,
+        }
+    }
 }

@@ -5,6 +5,8 @@ use nalgebra::SVector;
 
 /// Iterations before giving up.
 const MOST_ITERATIONS: usize = 14;
+/// The same where one-sided laws may have to change one at a time.
+const MOST_WITH_KINKS: usize = 40;
 /// A step below this is at round-off after it is taken, as convergence is quadratic.
 const SMALL_STEP: f64 = 1e-9;
 /// Where the next step, as quadratic convergence predicts it, is below this, it is not taken.
@@ -68,6 +70,7 @@ impl<const B: usize, const I: usize> Newton<B, I> {
         state: &Unknowns<B, I>,
         load: f64,
     ) -> u32 {
+        system.iterating(1);
         system.assemble(state, load, &mut self.assembled);
         self.factor.factor(&self.assembled.tangent);
         self.negatives()
@@ -111,8 +114,14 @@ impl<const B: usize, const I: usize> Newton<B, I> {
         constraint: Option<&Constraint<'_, B, I>>,
     ) -> Result<f64, NotConverged> {
         let mut last = f64::INFINITY;
-        for iteration in 1..=MOST_ITERATIONS {
+        let most = if system.has_kinks() {
+            MOST_WITH_KINKS
+        } else {
+            MOST_ITERATIONS
+        };
+        for iteration in 1..=most {
             self.iterations = iteration;
+            system.iterating(iteration);
             system.assemble(state, load, &mut self.assembled);
             self.factor.factor(&self.assembled.tangent);
             for (step, residual) in self.step.nodes.iter_mut().zip(&self.assembled.residual) {
@@ -139,16 +148,16 @@ impl<const B: usize, const I: usize> Newton<B, I> {
             load += load_step;
             // Steps e, C e², C² e⁴ …: the next is size³/last².
             let next = size * (size / last).powi(2);
-            if size < SMALL_STEP
+            let small = size < SMALL_STEP
                 || (size < ROUND_OFF_STEP && size > 0.25 * last)
-                || (size < ROUND_OFF_STEP && iteration > 1 && next < NO_STEP)
-            {
+                || (size < ROUND_OFF_STEP && iteration > 1 && next < NO_STEP);
+            if small && !system.changed() {
                 return Ok(load);
             }
             last = size;
         }
         Err(NotConverged {
-            iterations: MOST_ITERATIONS,
+            iterations: most,
             last_step: last,
         })
     }

@@ -16,6 +16,14 @@ use super::{
 };
 use nalgebra::SVector;
 
+/// Step at which a kink is looked for where Newton fails.
+const AT_A_KINK: f64 = 1e-9;
+/// How far ahead the kink may lie.
+const BEYOND_A_KINK: f64 = 1e-6;
+/// First step behind a kink.
+const BEHIND_A_KINK: f64 = 1e-4;
+/// Kinks turned at before a path is given up.
+const MOST_CORNERS: usize = 40;
 /// Cosine of the angle between successive tangents from which the bend is extrapolated.
 const LEAST_COMMON: f64 = 0.9;
 
@@ -82,7 +90,7 @@ pub enum Outcome {
 }
 
 /// What was done on the way: a silent slow-down shows here.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+#[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub struct Walk {
     /// Steps taken.
     pub steps: usize,
@@ -90,6 +98,9 @@ pub struct Walk {
     pub refused: usize,
     /// Newton iterations altogether.
     pub iterations: usize,
+    /// Points at which the path turned round a kink: they stand where the one before stands, with the
+    /// direction behind the kink.
+    pub corners: Vec<usize>,
 }
 
 /// Follows the path from the last of `points` (with its tangent) and appends to it, until `stop`
@@ -124,6 +135,15 @@ pub fn follow<const B: usize, const I: usize>(
                 walk.iterations += failed.iterations;
                 walk.refused += 1;
                 step *= 0.5;
+                let kinks = system.has_kinks() && walk.corners.len() < MOST_CORNERS;
+                if kinks && step < AT_A_KINK && walk.corners.last() != Some(&(points.len() - 1)) {
+                    if let Some(behind) = behind_kink(system, newton, &points[points.len() - 1]) {
+                        walk.corners.push(points.len());
+                        points.push(behind);
+                        step = BEHIND_A_KINK;
+                        continue;
+                    }
+                }
                 if step < settings.smallest_step {
                     return (Outcome::Lost(trouble), walk);
                 }
@@ -150,6 +170,36 @@ pub fn follow<const B: usize, const I: usize>(
         step = (step * by_iterations.min(by_turn).clamp(0.5, 1.6)).min(settings.largest_step);
         points.push(next);
     }
+}
+
+/// The same point with the direction of the path behind the kink just ahead. A one-sided law that lets
+/// go can turn the path sharply round, so that no next point lies on the plane ahead.
+///
+/// Along a path of such a system the sign of dλ times that of the determinant stays the same over a
+/// kink: both pieces solve the same equations on their own side, and the degree is kept.
+fn behind_kink<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    base: &PathPoint<B, I>,
+) -> Option<PathPoint<B, I>> {
+    let mut state = base.state.clone();
+    let mut beyond = base.state.clone();
+    beyond.add(BEYOND_A_KINK, &base.direction);
+    newton.evaluate(system, &state, base.load);
+    if !system.pass_kink(&mut state, &beyond) {
+        return None;
+    }
+    let weight = 1.0 / base.state.nodes.len() as f64;
+    let row: Vec<SVector<f64, B>> = base.direction.nodes.iter().map(|t| t * weight).collect();
+    let d = base.load_direction / system.load_scale().powi(2);
+    let mut behind = complete(system, newton, state, base.load, &row, d);
+    let odd = (behind.negatives + base.negatives) % 2 == 1;
+    let same_way = (behind.load_direction >= 0.0) == (base.load_direction >= 0.0);
+    if odd == same_way {
+        behind.direction.scale(-1.0);
+        behind.load_direction = -behind.load_direction;
+    }
+    Some(behind)
 }
 
 /// The point on the plane at `distance` along the tangent of `base`, with its own tangent. The

@@ -72,6 +72,22 @@ pub trait System<const B: usize, const I: usize> {
     /// (friction sticks to where it was). Does not allocate.
     fn depart(&mut self, _state: &Unknowns<B, I>) {}
 
+    /// Told before each assembly of an iteration, counted from 1.
+    fn iterating(&mut self, _iteration: usize) {}
+
+    /// Whether the last assembly took other one-sided laws for valid than the one before: the
+    /// iteration is then not at its end, however small the step.
+    fn changed(&self) -> bool {
+        false
+    }
+
+    /// Takes the kink for passed that lies between `state`, last assembled, and `beyond`, a state
+    /// extrapolated from it: the next assembly, at `state`, is that of the path behind the kink. False
+    /// where there is none.
+    fn pass_kink(&mut self, _state: &mut Unknowns<B, I>, _beyond: &Unknowns<B, I>) -> bool {
+        false
+    }
+
     /// Leaves contacts that come and go out of account, to find a state near which to begin, or takes
     /// them back in.
     fn ease(&mut self, _eased: bool) {}
