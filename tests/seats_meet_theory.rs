@@ -16,6 +16,7 @@ fn flat(radius: f64, angle: f64) -> FlatSeat {
         angle,
         offset: 0.0,
         arm: 0.0,
+        lean: 0.0,
     }
 }
 
@@ -32,7 +33,9 @@ fn path(column: &mut FlatColumn, last: f64, after: Option<f64>) -> Vec<FlatState
         states.push(state);
     }
     if let Some(beyond) = after {
-        let state = column.next_change(beyond, &states[100]).expect("lifts off");
+        let state = column
+            .next_change(Parameter::Travel, beyond, &states[100])
+            .expect("lifts off");
         states.push(state);
         for i in 1..=100 {
             let turn = 0.002 * f64::from(i);

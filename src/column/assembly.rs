@@ -16,6 +16,9 @@ use nalgebra_sparse::{CooMatrix, CscMatrix};
 /// multipliers of the geometry.
 const ALWAYS_NEGATIVE: i64 = 2;
 
+/// How far along a path it is looked whether its seats stay as they are.
+const LOOK_AHEAD: f64 = 1e-6;
+
 /// Iterations in which all pads may change what they do at once.
 const ALL_AT_ONCE: usize = 8;
 
@@ -55,11 +58,11 @@ impl System<3, INNER> for Column {
     }
 
     fn changed(&self) -> bool {
-        self.leaning.as_ref().is_some_and(|leaning| leaning.changed)
+        self.seats_changed || self.leaning.as_ref().is_some_and(|leaning| leaning.changed)
     }
 
     fn pass_kink(&mut self, state: &mut ColumnState, beyond: &ColumnState) -> bool {
-        if (0..2).any(|which| self.pass_seat_kink(which, state, beyond)) {
+        if self.pass_seat_kinks(state, beyond) {
             return true;
         }
         let ends = [self.end(beyond, 0), self.end(beyond, 1)];
@@ -72,6 +75,19 @@ impl System<3, INNER> for Column {
         let passed = leaning.force_turn();
         self.leaning = Some(leaning);
         passed
+    }
+
+    fn leads_on(&self, state: &ColumnState, direction: &ColumnState) -> Option<bool> {
+        let ahead = |way: f64| {
+            let mut state = state.clone();
+            state.add(way * LOOK_AHEAD, direction);
+            self.seats_stay(&state)
+        };
+        match [ahead(1.0)?, ahead(-1.0)?] {
+            [true, false] => Some(true),
+            [false, true] => Some(false),
+            _ => None,
+        }
     }
 
     fn ease(&mut self, eased: bool) {
@@ -175,9 +191,12 @@ impl System<3, INNER> for Column {
             leaning.end();
         }
         self.leaning = leaning;
+        self.seats_changed = false;
+        self.sits = [false; 2];
         for (which, end) in ends.iter().enumerate() {
             end.seat_on(which * last, out);
             self.end_turns[which] = end.pose.by;
+            self.seats_changed |= end.standing != self.standing[which];
             self.standing[which] = end.standing;
         }
         for (residual, pattern) in out.residual.iter_mut().zip(&self.pattern) {

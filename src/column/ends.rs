@@ -12,6 +12,8 @@ use nalgebra::{Matrix3, Vector3};
 
 /// Rotation, rad, below which a flat end is flush: round-off.
 const FLUSH: f64 = 1e-13;
+/// Flat ends whose kinks lie as close together, as a share of the way looked ahead, pass at once.
+const AT_ONCE: f64 = 2e-3;
 /// Weight of a rotation against a moment in the search for which way a swivel turns, EI/L.
 const SWIVEL_SEARCH: f64 = 1e2;
 
@@ -88,31 +90,80 @@ impl Column {
         }
     }
 
-    /// Whether a flat end, flush at `state` or standing, does the other at `beyond`: then it is made to
-    /// do so at `state`.
-    pub(super) fn pass_seat_kink(
+    /// Which flat ends, flush at `state` or standing, do the other before `beyond`; they are made to do
+    /// so at `state`. Both only where both are there at once, as in a column that is its own mirror
+    /// image: the path may turn, and what lies farther on along its old direction is not met then.
+    pub(super) fn pass_seat_kinks(
         &mut self,
-        which: usize,
         state: &mut ColumnState,
         beyond: &ColumnState,
     ) -> bool {
-        if !matches!(self.seats[which].touch, Touch::Flat { .. }) {
-            return false;
+        self.standing = [None; 2];
+        self.standing = [0, 1].map(|which| self.side_of(which, self.turned(state, which)));
+        let kinks = [0, 1].map(|which| self.seat_kink(which, state, beyond));
+        let first = kinks
+            .iter()
+            .flatten()
+            .map(|kink| kink.0)
+            .fold(f64::INFINITY, f64::min);
+        self.passed = [false; 2];
+        self.sits = [false; 2];
+        for (which, kink) in kinks.iter().enumerate() {
+            if let Some((share, side)) = kink
+                && *share <= first + AT_ONCE
+            {
+                if side.is_none() {
+                    let turned = self.turned(state, which);
+                    state.nodes[which * self.elements.len()][2] -= turned;
+                    self.sits[which] = true;
+                }
+                self.standing[which] = *side;
+                self.passed[which] = true;
+            }
         }
-        let node = which * self.elements.len();
-        let (before, stood) = (self.turned(state, which), self.standing[which]);
+        first.is_finite()
+    }
+
+    /// Whether the flat ends that have just passed a kink are at `state` as they were left behind it;
+    /// `None` where none has.
+    pub(super) fn seats_stay(&self, state: &ColumnState) -> Option<bool> {
+        let stays = |which: usize| {
+            let end = self.end(state, which);
+            end.standing == self.standing[which] && !matches!(end.turning, Turning::HeldAt(_))
+        };
+        let mut passed = (0..2).filter(|which| self.passed[*which]).peekable();
+        passed.peek()?;
+        Some(passed.all(stays))
+    }
+
+    /// At which share of the way from `state` to `beyond` a flat end stands up on an edge, or sits down.
+    fn seat_kink(
+        &self,
+        which: usize,
+        state: &ColumnState,
+        beyond: &ColumnState,
+    ) -> Option<(f64, Option<f64>)> {
+        if !matches!(self.seats[which].touch, Touch::Flat { .. }) {
+            return None;
+        }
+        let crossing = |from: f64, to: f64| (from / (from - to)).clamp(0.0, 1.0);
         let end = self.end(beyond, which);
-        match (end.turning, stood) {
+        match (end.turning, self.standing[which]) {
             (Turning::Stands, None) => {
-                self.standing[which] = end.standing;
-                true
+                let side = end.standing?;
+                let excess = |state: &ColumnState| {
+                    let pose = self.pose_at(state, which * self.elements.len());
+                    let actions = self.actions_on(state, which, &pose);
+                    self.overturning(state, which, self.turned(state, which), side, &actions)
+                        .1
+                };
+                Some((crossing(excess(state), excess(beyond)), Some(side)))
             }
             (Turning::HeldAt(_), Some(_)) => {
-                state.nodes[node][2] -= before;
-                self.standing[which] = None;
-                true
+                let share = crossing(self.turned(state, which), self.turned(beyond, which));
+                Some((share, None))
             }
-            _ => false,
+            _ => None,
         }
     }
 
@@ -177,17 +228,35 @@ impl Column {
             }
             return;
         }
+        if self.sits[which] {
+            return;
+        }
         for side in [1.0, -1.0] {
-            let pose = seat.pose(q, Some((turned, side)));
-            // Moment that the seat can oppose on this edge, and which way it would turn the end.
-            let most = -(pose.by[(0, 2)] * end.actions[0] + pose.by[(1, 2)] * end.actions[1]);
-            let way = if which == 0 { -side } else { side };
-            if end.actions[2] * way > (most * way).max(0.0) * (1.0 + 1e-12) {
+            let (pose, excess, most) = self.overturning(state, which, turned, side, &end.actions);
+            if excess > 1e-12 * most {
                 end.pose = pose;
                 end.turning = Turning::Stands;
                 end.standing = Some(side);
             }
         }
+    }
+
+    /// Of a flat end on an edge: its pose, by how much its moment exceeds what the seat can oppose there,
+    /// and that.
+    fn overturning(
+        &self,
+        state: &ColumnState,
+        which: usize,
+        turned: f64,
+        side: f64,
+        actions: &Vector3<f64>,
+    ) -> (Pose, f64, f64) {
+        let q = &state.nodes[which * self.elements.len()];
+        let pose = self.seats[which].pose(q, Some((turned, side)));
+        let way = if which == 0 { -side } else { side };
+        let opposed = -way * (pose.by[(0, 2)] * actions[0] + pose.by[(1, 2)] * actions[1]);
+        let most = opposed.max(0.0);
+        (pose, actions[2] * way - most, most)
     }
 
     /// What the column does to an end that is at `pose`: F_x, F_y and M of the residual.

@@ -157,6 +157,12 @@ pub struct Column {
     pub(super) end_was: [f64; 2],
     /// Edge on which a flat end stands, in the iteration under way.
     pub(super) standing: [Option<f64>; 2],
+    /// Flat ends that passed the kink last passed.
+    pub(super) passed: [bool; 2],
+    /// Flat ends that sit down in the next assembly whatever their moment, which round-off decides there.
+    pub(super) sits: [bool; 2],
+    /// Whether a flat end stood otherwise in the assembly before the last.
+    pub(super) seats_changed: bool,
 }
 
 /// Force at which a load along a path counts as of order one: about (2π)² EI/L².
@@ -219,6 +225,9 @@ impl Column {
             end_turns: [Matrix3::identity(); 2],
             end_was: [0.0; 2],
             standing: [None; 2],
+            passed: [false; 2],
+            sits: [false; 2],
+            seats_changed: false,
         }
     }
 

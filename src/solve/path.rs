@@ -22,6 +22,9 @@ const AT_A_KINK: f64 = 1e-9;
 const BEYOND_A_KINK: f64 = 1e-6;
 /// First step behind a kink.
 const BEHIND_A_KINK: f64 = 1e-4;
+/// Steps at most between a point and the next, in a system whose paths have kinks: a point farther off
+/// on the plane ahead is one of another path.
+const FARTHEST: f64 = 10.0;
 /// Kinks turned at before a path is given up.
 const MOST_CORNERS: usize = 40;
 /// Cosine of the angle between successive tangents from which the bend is extrapolated.
@@ -128,7 +131,17 @@ pub fn follow<const B: usize, const I: usize>(
         let Some((base, earlier)) = points.split_last_mut() else {
             return (Outcome::Lost(trouble), walk);
         };
-        let next = match at_distance(system, newton, earlier.last(), base, step) {
+        let found = at_distance(system, newton, earlier.last(), base, step).and_then(|next| {
+            let apart = apart(system, base, &next);
+            if system.has_kinks() && apart > FARTHEST * step {
+                return Err(NotConverged {
+                    iterations: newton.iterations,
+                    last_step: apart,
+                });
+            }
+            Ok(next)
+        });
+        let next = match found {
             Ok(next) => next,
             Err(failed) => {
                 trouble = failed;
@@ -176,7 +189,8 @@ pub fn follow<const B: usize, const I: usize>(
 /// go can turn the path sharply round, so that no next point lies on the plane ahead.
 ///
 /// Along a path of such a system the sign of dλ times that of the determinant stays the same over a
-/// kink: both pieces solve the same equations on their own side, and the degree is kept.
+/// kink: both pieces solve the same equations on their own side, and the degree is kept. Where several
+/// kinks fall together that tells nothing, and the system is asked first.
 fn behind_kink<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,
@@ -195,7 +209,11 @@ fn behind_kink<const B: usize, const I: usize>(
     let mut behind = complete(system, newton, state, base.load, &row, d);
     let odd = (behind.negatives + base.negatives) % 2 == 1;
     let same_way = (behind.load_direction >= 0.0) == (base.load_direction >= 0.0);
-    if odd == same_way {
+    let turn = match system.leads_on(&behind.state, &behind.direction) {
+        Some(leads_on) => !leads_on,
+        None => odd == same_way,
+    };
+    if turn {
         behind.direction.scale(-1.0);
         behind.load_direction = -behind.load_direction;
     }
@@ -306,6 +324,18 @@ pub fn turn_back<const B: usize, const I: usize>(
     let row: Vec<SVector<f64, B>> = point.direction.nodes.iter().map(|t| t * weight).collect();
     let d = -point.load_direction / system.load_scale().powi(2);
     complete(system, newton, point.state.clone(), point.load, &row, d)
+}
+
+/// Distance between two points, in the norm of the path.
+fn apart<const B: usize, const I: usize>(
+    system: &impl System<B, I>,
+    a: &PathPoint<B, I>,
+    b: &PathPoint<B, I>,
+) -> f64 {
+    let nodes = a.state.nodes.iter().zip(&b.state.nodes);
+    let squares: f64 = nodes.map(|(a, b)| (a - b).norm_squared()).sum();
+    let load = (a.load - b.load) / system.load_scale();
+    (squares / a.state.nodes.len() as f64 + load * load).sqrt()
 }
 
 fn inner_product<const B: usize, const I: usize>(

@@ -88,6 +88,12 @@ pub trait System<const B: usize, const I: usize> {
         false
     }
 
+    /// Whether the path behind the kinks just passed at `state` can go in `direction`; `None` where that
+    /// is not known, or neither way.
+    fn leads_on(&self, _state: &Unknowns<B, I>, _direction: &Unknowns<B, I>) -> Option<bool> {
+        None
+    }
+
     /// Leaves contacts that come and go out of account, to find a state near which to begin, or takes
     /// them back in.
     fn ease(&mut self, _eased: bool) {}

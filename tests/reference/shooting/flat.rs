@@ -3,8 +3,8 @@
 //! A ring lies flat, or stands on one of its two edges. Lying, its centre is that of its seat and its
 //! angle the seat's; |M| ≤ N R about its centre. Standing on the edge e = ±R, that edge is where it
 //! was in the seat, at e along the seat plane from the seat's centre, and is a hinge: the
-//! centre rises by R |sin φ| and moves aside by R(1 − cos φ), φ = θ − angle. Then
-//! M = e(P cos θ − H sin θ) about the ring's centre, and the other edge must be off the seat: e φ ≥ 0
+//! centre rises by R |sin φ| and moves aside by R(1 − cos φ), φ = θ − β − angle. Then
+//! M = e(P cos(θ − β) − H sin(θ − β)) about the ring's centre, and the other edge must be off the seat: e φ ≥ 0
 //! at the bottom, e φ ≤ 0 at the top. The seat's force across and along its normal is
 //! N = P cos(angle) − H sin(angle), T = P sin(angle) + H cos(angle). No edge slides.
 //!
@@ -24,8 +24,11 @@ pub struct FlatSeat {
     pub angle: f64,
     /// Sideways position of the seat's centre.
     pub offset: f64,
-    /// From the end of the flexible part to the ring's plane, outward positive.
+    /// From the end of the flexible part to the ring's centre, outward positive.
     pub arm: f64,
+    /// Angle β by which the ring's plane falls short of the section's: lying, the section stands at
+    /// angle + β.
+    pub lean: f64,
 }
 
 /// What rounding may leave of a moment beyond N R (in kL²) or of an angle into the seat.
@@ -134,13 +137,18 @@ impl FlatColumn {
         self.problem.profile(&state.column, &[0.5])[0].y
     }
 
-    /// The state between `from` and the travel `target` in which a ring can no longer lie or stand
+    /// The state between `from` and `target` in which a ring can no longer lie or stand
     /// as it does, in its next way of standing. A column that lifts off because it bows does so at a
     /// limit of travel: from there it is followed in `BottomTurn`.
-    pub fn next_change(&mut self, target: f64, from: &FlatState) -> Result<FlatState, Failure> {
+    pub fn next_change(
+        &mut self,
+        parameter: Parameter,
+        target: f64,
+        from: &FlatState,
+    ) -> Result<FlatState, Failure> {
         self.stand(from.standing);
-        let reached = self.on(Parameter::Travel, target, &from.column)?;
-        self.change(Parameter::Travel, target, *from, reached)
+        let reached = self.on(parameter, target, &from.column)?;
+        self.change(parameter, target, *from, reached)
     }
 
     /// The same between `low`, which is possible, and `high` at `target`, which is not.
@@ -169,7 +177,17 @@ impl FlatColumn {
         });
         self.stand(next);
         let adopted = self.problem.adopt(&high.column);
-        self.on(parameter, most, &adopted)
+        // A ring that lies does not turn.
+        let lies = match parameter {
+            Parameter::BottomTurn => next[0] == Standing::Flat,
+            Parameter::TopTurn => next[1] == Standing::Flat,
+            _ => false,
+        };
+        if lies {
+            self.on(Parameter::Travel, high.travel, &adopted)
+        } else {
+            self.on(parameter, most, &adopted)
+        }
     }
 
     /// Energy of the column, by Simpson's rule over `2 cells` parts.
@@ -205,30 +223,34 @@ impl FlatColumn {
 
     /// The column's problem for rings that stand so.
     fn stand(&mut self, standing: [Standing; 2]) {
-        let seat = |flat: &FlatSeat, standing: Standing| match standing {
+        let seat = |flat: &FlatSeat, outward: f64, standing: Standing| match standing {
             Standing::Flat => Seat {
-                angle: flat.angle,
+                angle: flat.angle + flat.lean,
                 offset: flat.offset,
                 arm: flat.arm,
                 ..Seat::CLAMPED
             },
             Standing::Edge(sign) => Seat {
                 offset: flat.offset + sign * flat.radius * flat.angle.cos(),
-                arm: flat.arm,
-                eccentricity: sign * flat.radius,
+                arm: flat.arm + outward * sign * flat.radius * flat.lean.sin(),
+                eccentricity: sign * flat.radius * flat.lean.cos(),
                 ..Seat::HINGED
             },
         };
         self.standing = standing;
-        self.problem.bottom = seat(&self.seats[0], standing[0]);
-        self.problem.top = seat(&self.seats[1], standing[1]);
+        self.problem.bottom = seat(&self.seats[0], -1.0, standing[0]);
+        self.problem.top = seat(&self.seats[1], 1.0, standing[1]);
     }
 
     /// Approach of the pivots less that of the seats' centres.
     fn lead(&self) -> f64 {
         let along = |end: usize| match self.standing[end] {
             Standing::Flat => 0.0,
-            Standing::Edge(sign) => sign * self.seats[end].radius * self.seats[end].angle.sin(),
+            Standing::Edge(sign) => {
+                let seat = &self.seats[end];
+                // The pivots' own arms count from the unloaded column too.
+                sign * seat.radius * (seat.angle.sin() + seat.lean.sin())
+            }
         };
         along(1) - along(0)
     }
@@ -269,11 +291,13 @@ impl FlatColumn {
             moment: std::array::from_fn(|end| match self.standing[end] {
                 Standing::Flat => column.pivot_moments[end],
                 Standing::Edge(sign) => {
-                    let (sin, cos) = turns[end].sin_cos();
+                    let (sin, cos) = (turns[end] - self.seats[end].lean).sin_cos();
                     sign * self.seats[end].radius * (load * cos - side * sin)
                 }
             }),
-            opening: std::array::from_fn(|end| turns[end] - self.seats[end].angle),
+            opening: std::array::from_fn(|end| {
+                turns[end] - self.seats[end].lean - self.seats[end].angle
+            }),
         }
     }
 
