@@ -61,20 +61,19 @@ impl System<3, INNER> for Column {
         self.seats_changed || self.leaning.as_ref().is_some_and(|leaning| leaning.changed)
     }
 
-    fn pass_kink(&mut self, state: &mut ColumnState, beyond: &ColumnState) -> bool {
-        if self.pass_seat_kinks(state, beyond) {
-            return true;
+    fn pass_kink(&mut self, state: &ColumnState, beyond: &ColumnState) -> Option<f64> {
+        if let Some(share) = self.pass_seat_kinks(state, beyond) {
+            return Some(share);
         }
         let ends = [self.end(beyond, 0), self.end(beyond, 1)];
         let top = self.top_seat(beyond);
-        let Some(mut leaning) = self.leaning.take() else {
-            return false;
-        };
+        let mut leaning = self.leaning.take()?;
         leaning.begin();
         self.choose(&mut leaning, beyond, &ends, &top);
         let passed = leaning.force_turn();
         self.leaning = Some(leaning);
-        passed
+        // Pads are turned where the path has come to: the kink is nearer than what it is followed by.
+        passed.then_some(0.0)
     }
 
     fn leads_on(&self, state: &ColumnState, direction: &ColumnState) -> Option<bool> {

@@ -75,7 +75,11 @@ impl Column {
         match laws.0[2] {
             Hold::Held(rest) => {
                 let turned = state.nodes[node][2] - rest;
-                if turned.abs() < FLUSH { 0.0 } else { turned }
+                if turned.abs() < FLUSH || self.sits[which] {
+                    0.0
+                } else {
+                    turned
+                }
             }
             _ => 0.0,
         }
@@ -90,38 +94,35 @@ impl Column {
         }
     }
 
-    /// Which flat ends, flush at `state` or standing, do the other before `beyond`; they are made to do
-    /// so at `state`. Both only where both are there at once, as in a column that is its own mirror
-    /// image: the path may turn, and what lies farther on along its old direction is not met then.
+    /// Which flat ends, flush at `state` or standing, do the other before `beyond`: from the next assembly
+    /// on they do, at the share of the way that is given. Both only where both are there at once, as in a
+    /// column that is its own mirror image: the path may turn, and what lies farther on along its old
+    /// direction is not met then.
     pub(super) fn pass_seat_kinks(
         &mut self,
-        state: &mut ColumnState,
+        state: &ColumnState,
         beyond: &ColumnState,
-    ) -> bool {
+    ) -> Option<f64> {
         self.standing = [None; 2];
         self.standing = [0, 1].map(|which| self.side_of(which, self.turned(state, which)));
         let kinks = [0, 1].map(|which| self.seat_kink(which, state, beyond));
+        self.passed = [false; 2];
+        self.sits = [false; 2];
         let first = kinks
             .iter()
             .flatten()
             .map(|kink| kink.0)
-            .fold(f64::INFINITY, f64::min);
-        self.passed = [false; 2];
-        self.sits = [false; 2];
+            .min_by(f64::total_cmp)?;
         for (which, kink) in kinks.iter().enumerate() {
             if let Some((share, side)) = kink
                 && *share <= first + AT_ONCE
             {
-                if side.is_none() {
-                    let turned = self.turned(state, which);
-                    state.nodes[which * self.elements.len()][2] -= turned;
-                    self.sits[which] = true;
-                }
                 self.standing[which] = *side;
                 self.passed[which] = true;
+                self.sits[which] = side.is_none();
             }
         }
-        first.is_finite()
+        Some(first)
     }
 
     /// Whether the flat ends that have just passed a kink are at `state` as they were left behind it;

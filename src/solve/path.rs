@@ -25,6 +25,8 @@ const BEHIND_A_KINK: f64 = 1e-4;
 /// Steps at most between a point and the next, in a system whose paths have kinks: a point farther off
 /// on the plane ahead is one of another path.
 const FARTHEST: f64 = 10.0;
+/// Times Newton begins anew where its last step went over a kink.
+const MOST_AGAIN: usize = 4;
 /// Kinks turned at before a path is given up.
 const MOST_CORNERS: usize = 40;
 /// Cosine of the angle between successive tangents from which the bend is extrapolated.
@@ -101,8 +103,8 @@ pub struct Walk {
     pub refused: usize,
     /// Newton iterations altogether.
     pub iterations: usize,
-    /// Points at which the path turned round a kink: they stand where the one before stands, with the
-    /// direction behind the kink.
+    /// Points at which the path turned round a kink: they stand at it, less than 1e-6 from the one before,
+    /// with the direction behind it.
     pub corners: Vec<usize>,
 }
 
@@ -149,8 +151,8 @@ pub fn follow<const B: usize, const I: usize>(
                 walk.refused += 1;
                 step *= 0.5;
                 let kinks = system.has_kinks() && walk.corners.len() < MOST_CORNERS;
-                if kinks && step < AT_A_KINK && walk.corners.last() != Some(&(points.len() - 1)) {
-                    if let Some(behind) = behind_kink(system, newton, &points[points.len() - 1]) {
+                if kinks && step < AT_A_KINK && walk.corners.last() != Some(&earlier.len()) {
+                    if let Some(behind) = behind_kink(system, newton, base) {
                         walk.corners.push(points.len());
                         points.push(behind);
                         step = BEHIND_A_KINK;
@@ -185,7 +187,7 @@ pub fn follow<const B: usize, const I: usize>(
     }
 }
 
-/// The same point with the direction of the path behind the kink just ahead. A one-sided law that lets
+/// The point at the kink just ahead, with the direction of the path behind it. A one-sided law that lets
 /// go can turn the path sharply round, so that no next point lies on the plane ahead.
 ///
 /// Along a path of such a system the sign of dλ times that of the determinant stays the same over a
@@ -194,19 +196,19 @@ pub fn follow<const B: usize, const I: usize>(
 fn behind_kink<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,
-    base: &PathPoint<B, I>,
+    base: &mut PathPoint<B, I>,
 ) -> Option<PathPoint<B, I>> {
     let mut state = base.state.clone();
     let mut beyond = base.state.clone();
     beyond.add(BEYOND_A_KINK, &base.direction);
     newton.evaluate(system, &state, base.load);
-    if !system.pass_kink(&mut state, &beyond) {
-        return None;
-    }
+    let distance = BEYOND_A_KINK * system.pass_kink(&state, &beyond)?;
+    state.add(distance, &base.direction);
+    let load = base.load + distance * base.load_direction;
     let weight = 1.0 / base.state.nodes.len() as f64;
     let row: Vec<SVector<f64, B>> = base.direction.nodes.iter().map(|t| t * weight).collect();
     let d = base.load_direction / system.load_scale().powi(2);
-    let mut behind = complete(system, newton, state, base.load, &row, d);
+    let mut behind = complete(system, newton, state, load, &row, d);
     let odd = (behind.negatives + base.negatives) % 2 == 1;
     let same_way = (behind.load_direction >= 0.0) == (base.load_direction >= 0.0);
     let turn = match system.leads_on(&behind.state, &behind.direction) {
@@ -217,6 +219,7 @@ fn behind_kink<const B: usize, const I: usize>(
         behind.direction.scale(-1.0);
         behind.load_direction = -behind.load_direction;
     }
+    base.distance = distance;
     Some(behind)
 }
 
@@ -256,8 +259,22 @@ pub(super) fn at_distance<const B: usize, const I: usize>(
         from_load: base.load,
         distance,
     };
-    newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
-    Ok(complete(system, newton, state, load, &row, d))
+    let mut iterations = 0;
+    // The last step may go over a kink.
+    for _ in 0..MOST_AGAIN {
+        newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
+        iterations += newton.iterations;
+        let point = complete(system, newton, state, load, &row, d);
+        if !system.changed() {
+            newton.iterations = iterations;
+            return Ok(point);
+        }
+        PathPoint { state, load, .. } = point;
+    }
+    Err(NotConverged {
+        iterations,
+        last_step: 0.0,
+    })
 }
 
 /// Makes a path point of a solution: pivot count, and the unit tangent that points along the

@@ -82,10 +82,10 @@ pub trait System<const B: usize, const I: usize> {
     }
 
     /// Takes the kink for passed that lies between `state`, last assembled, and `beyond`, a state
-    /// extrapolated from it: the next assembly, at `state`, is that of the path behind the kink. False
-    /// where there is none.
-    fn pass_kink(&mut self, _state: &mut Unknowns<B, I>, _beyond: &Unknowns<B, I>) -> bool {
-        false
+    /// extrapolated from it: the next assembly is that of the path behind the kink. Gives the share of the
+    /// way at which it lies; `None` where there is none.
+    fn pass_kink(&mut self, _state: &Unknowns<B, I>, _beyond: &Unknowns<B, I>) -> Option<f64> {
+        None
     }
 
     /// Whether the path behind the kinks just passed at `state` can go in `direction`; `None` where that

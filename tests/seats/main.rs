@@ -8,4 +8,5 @@ mod fixture;
 mod reference;
 
 mod flat;
+mod ring;
 mod walk;
