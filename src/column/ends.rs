@@ -14,6 +14,8 @@ use nalgebra::{Matrix3, Vector3};
 const FLUSH: f64 = 1e-13;
 /// Flat ends whose kinks lie as close together, as a share of the way looked ahead, pass at once.
 const AT_ONCE: f64 = 2e-3;
+/// Moment, EI/L, that is none: without a load a ball that is at rest sticks.
+const AT_REST: f64 = 1e-12;
 /// Weight of a rotation against a moment in the search for which way a swivel turns, EI/L.
 const SWIVEL_SEARCH: f64 = 1e2;
 
@@ -202,7 +204,7 @@ impl Column {
                 let holds = reach * force.abs();
                 let moved = q[2] - self.end_was[which];
                 let trial = SWIVEL_SEARCH * moved - moment;
-                end.turning = if trial.abs() <= holds * (1.0 + 1e-9) && holds > 0.0 {
+                end.turning = if trial.abs() <= holds * (1.0 + 1e-9) + AT_REST {
                     Turning::HeldAt(self.end_was[which])
                 } else {
                     Turning::Drags {

@@ -22,9 +22,11 @@ const AT_A_KINK: f64 = 1e-9;
 const BEYOND_A_KINK: f64 = 1e-6;
 /// First step behind a kink.
 const BEHIND_A_KINK: f64 = 1e-4;
-/// Steps at most between a point and the next, in a system whose paths have kinks: a point farther off
-/// on the plane ahead is one of another path.
+/// A point on the plane ahead that is as many steps away, and at least [`FAR`], is one of another path:
+/// where a path has kinks, it may end at that plane.
 const FARTHEST: f64 = 10.0;
+/// Distance that behind the sharpest kink a path of short steps does not come to in one.
+const FAR: f64 = 1e-3;
 /// Times Newton begins anew where its last step went over a kink.
 const MOST_AGAIN: usize = 4;
 /// Kinks turned at before a path is given up.
@@ -135,7 +137,7 @@ pub fn follow<const B: usize, const I: usize>(
         };
         let found = at_distance(system, newton, earlier.last(), base, step).and_then(|next| {
             let apart = apart(system, base, &next);
-            if system.has_kinks() && apart > FARTHEST * step {
+            if system.has_kinks() && apart > (FARTHEST * step).max(FAR) {
                 return Err(NotConverged {
                     iterations: newton.iterations,
                     last_step: apart,
@@ -324,6 +326,7 @@ pub fn start<const B: usize, const I: usize>(
         near?;
     }
     newton.solve_at_load(system, &mut state, load)?;
+    system.depart(&state);
     let row = vec![SVector::zeros(); system.links() + 1];
     let d = 1.0 / system.load_scale();
     Ok(complete(system, newton, state, load, &row, d))

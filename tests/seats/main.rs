@@ -8,5 +8,8 @@ mod fixture;
 mod reference;
 
 mod flat;
+mod lever;
+mod limits;
 mod ring;
+mod swivel;
 mod walk;

@@ -111,7 +111,7 @@ proptest! {
     fn the_force_line_stays_inside_the_ring(case in case()) {
         let (column, points, outcome) = path(&case);
         prop_assert_eq!(outcome, Outcome::Stopped);
-        for (i, point) in points.iter().enumerate().filter(|(_, point)| point.load.abs() > 1e-6) {
+        for point in points.iter().filter(|point| point.load.abs() > 1e-6) {
             for (end, support) in [&case.bottom, &case.top].into_iter().enumerate() {
                 let Contact::Flat(ring) = support.contact else { continue };
                 let press = column.seat_press(&point.state, end);

@@ -9,7 +9,6 @@ pub type Point = PathPoint<3, 5>;
 /// The path, with what turns its numbers into those of L = 1 and k = 1.
 pub struct Walk {
     pub column: Column,
-    newton: Newton<3, 5>,
     /// Points followed since the last turn.
     pub points: Vec<Point>,
     /// Forces in kL for one of the column's units.
@@ -37,7 +36,6 @@ impl Walk {
             force: column.scale.force / (setup.spring.rate() * length),
             start: 1.0 + arms / length,
             column,
-            newton,
             points: vec![first],
         }
     }
@@ -96,7 +94,7 @@ impl Walk {
         let mut column = self.column.clone();
         let (outcome, _) = follow(
             &mut column,
-            &mut self.newton_of(),
+            &mut Newton::new(&self.column),
             &mut points,
             &settings,
             |points| stop(self, &points[points.len() - 1]),
@@ -121,11 +119,12 @@ impl Walk {
     /// Turns round.
     pub fn turn(&mut self) {
         let last = self.points[self.points.len() - 1].clone();
-        self.points = vec![turn_back(&mut self.column, &mut self.newton, &last)];
+        let mut newton = Newton::new(&self.column);
+        self.points = vec![turn_back(&mut self.column, &mut newton, &last)];
     }
 
     /// The point at a travel, where the path first comes to it.
-    pub fn at(&mut self, travel: f64) -> Point {
+    pub fn at(&self, travel: f64) -> Point {
         let after = self
             .points
             .windows(2)
@@ -135,11 +134,11 @@ impl Walk {
             .0
     }
 
-    fn located(&mut self, after: usize, function: impl Fn(&Walk, &Point) -> f64) -> (Point, f64) {
+    fn located(&self, after: usize, function: impl Fn(&Walk, &Point) -> f64) -> (Point, f64) {
         let mut column = self.column.clone();
         let found = locate(
             &mut column,
-            &mut self.newton_of(),
+            &mut Newton::new(&self.column),
             &self.points,
             after,
             1e-14,
@@ -147,10 +146,6 @@ impl Walk {
         )
         .expect("there");
         (found.point, found.distance)
-    }
-
-    fn newton_of(&self) -> Newton<3, 5> {
-        Newton::new(&self.column)
     }
 
     /// ∫ P ds along the points, kL², by trapezoids with the slopes at their ends (an error of the
