@@ -10,6 +10,7 @@ mod reference;
 mod flat;
 mod lever;
 mod limits;
+mod link;
 mod ring;
 mod swivel;
 mod walk;

@@ -187,3 +187,43 @@ fn friction_goes_from_hinged_to_clamped() {
         assert!((stuck.load(&one) - clamped.load(&two)).abs() < 1e-11);
     }
 }
+
+/// Turned over, with the ball at the bottom, the spring carries the same.
+#[test]
+fn a_ball_below_is_a_ball_above() {
+    let above = case(0.002);
+    let below = Setup {
+        bottom: above.top,
+        top: above.bottom,
+        ..above.clone()
+    };
+    let [mut one, mut two] = [above, below].map(|case| Walk::new(&case, ELEMENTS));
+    for target in [0.4, 0.1, 0.3] {
+        one.go_on(target, 0.01);
+        two.go_on(target, 0.01);
+        let [from, to] = [&one.points[0], one.last()].map(|point| one.travel(point));
+        for i in 1..10 {
+            let travel = from + (to - from) * f64::from(i) / 10.0;
+            let (above, below) = (one.at(travel), two.at(travel));
+            assert_same(
+                &format!("{i} on the way to {target}"),
+                1e-10,
+                &[
+                    ("load", one.load(&above), two.load(&below)),
+                    (
+                        "turn",
+                        one.turns(&above.state)[1],
+                        -two.turns(&below.state)[0],
+                    ),
+                    (
+                        "moment",
+                        one.moments(&above.state)[1],
+                        two.moments(&below.state)[0],
+                    ),
+                ],
+            );
+        }
+        one.turn();
+        two.turn();
+    }
+}

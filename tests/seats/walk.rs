@@ -128,7 +128,10 @@ impl Walk {
         let after = self
             .points
             .windows(2)
-            .position(|pair| self.travel(&pair[0]) < travel && self.travel(&pair[1]) >= travel)
+            .position(|pair| {
+                let [from, to] = [0, 1].map(|i| self.travel(&pair[i]) - travel);
+                from * to <= 0.0 && from != 0.0
+            })
             .expect("on the way");
         self.located(after, |walk, point| travel - walk.travel(point))
             .0
