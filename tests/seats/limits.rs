@@ -72,7 +72,6 @@ fn a_flat_end_goes_to_clamped_as_its_ring_grows() {
             }
         }
         let reached = walk.travel(flush[flush.len() - 1]);
-        eprintln!("{radius} {reached}");
         assert!(
             reached > before || reached > 0.49,
             "{radius}: {reached} {before}"
@@ -90,7 +89,6 @@ fn a_flat_end_goes_to_hinged_as_its_ring_shrinks() {
     for radius in [1e-3, 1e-4, 1e-5, 1e-6] {
         let case = bowed(5.0, flat(radius, 0.0), flat(radius, 0.0));
         let apart = apart(&case, &hinged, 0.4);
-        eprintln!("{radius} {apart:e}");
         assert!(apart < 0.15 * before, "{radius}: {apart} {before}");
         before = apart;
     }
@@ -168,7 +166,6 @@ fn a_long_link_leaves_its_end_free() {
                 linked(length, hanging, slenderness),
             );
             let apart = apart(&case, &free, 0.3);
-            eprintln!("{hanging} {length} {apart:e}");
             assert!(apart < 0.12 * before, "{length}: {apart} {before}");
             before = apart;
             let [linked, free] = [&case, &free].map(|case| critical(case).expect("goes"));

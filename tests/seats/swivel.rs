@@ -66,7 +66,7 @@ fn strokes_meet_shooting() {
                 state = column.step(walk.travel(point), &state).expect("follows");
                 assert_same(
                     &format!("s = {}", walk.travel(point)),
-                    1e-8,
+                    1e-10,
                     &[
                         ("load", walk.load(point), state.column.load),
                         (
@@ -84,7 +84,7 @@ fn strokes_meet_shooting() {
                 );
             }
             taken += lost(&walk, drag);
-            assert_same("the end", 1e-8, &[("lost", taken, state.lost)]);
+            assert_same("the end", 1e-10, &[("lost", taken, state.lost)]);
             walk.turn();
         }
         assert!(taken > 1e-5, "{taken}");
@@ -151,7 +151,6 @@ fn the_loop_closes_over_what_friction_takes() {
         );
         assert!((area - taken).abs() < 2e-8, "{area} {taken}");
         assert_eq!(taken > 1e-5, drag > 0.0);
-        eprintln!("{drag} {area:e} {taken:e} {:e}", area - taken);
     }
 }
 
@@ -176,7 +175,6 @@ fn friction_goes_from_hinged_to_clamped() {
     for drag in [1e-3, 1e-4, 1e-5, 0.0] {
         let walk = Walk::to(&case(drag), ELEMENTS, 0.45);
         let apart = (walk.load(&walk.at(0.3)) - hinged.load(&hinged.at(0.3))).abs();
-        eprintln!("{drag} {apart:e}");
         assert!(apart < 0.12 * before, "{drag}: {apart} {before}");
         before = apart;
     }
@@ -207,7 +205,7 @@ fn a_ball_below_is_a_ball_above() {
             let (above, below) = (one.at(travel), two.at(travel));
             assert_same(
                 &format!("{i} on the way to {target}"),
-                1e-10,
+                1e-12,
                 &[
                     ("load", one.load(&above), two.load(&below)),
                     (
