@@ -149,7 +149,7 @@ impl Observer {
             },
             flat: guide.flat,
             clearance: clearance(setup, column, &stations),
-            seated: flat_ends(setup, &seats_pressed),
+            seated: flat_ends(setup, &seats_pressed, scale.length),
             slides: sliding_ends(setup, &seats_pressed, scale.force),
             forbidden_room: column
                 .tightest(&solved.state, &stations, true)
@@ -163,7 +163,7 @@ impl Observer {
 const NO_FORCE: f64 = 1e-9;
 
 /// What keeps flat ends flush; `None` without a flat end.
-fn flat_ends(setup: &Setup, pressed: &[SeatPress; 2]) -> Option<f64> {
+fn flat_ends(setup: &Setup, pressed: &[SeatPress; 2], length: f64) -> Option<f64> {
     let kept = [&setup.bottom, &setup.top]
         .into_iter()
         .zip(pressed)
@@ -174,7 +174,7 @@ fn flat_ends(setup: &Setup, pressed: &[SeatPress; 2]) -> Option<f64> {
                 if press.press.abs() < NO_FORCE {
                     return Some(1.0);
                 }
-                Some(1.0 - (press.line / flat.edge()).abs())
+                Some(1.0 - (press.line * length / flat.edge()).abs())
             }
             _ => None,
         });

@@ -153,13 +153,15 @@ pub fn follow<const B: usize, const I: usize>(
                 walk.refused += 1;
                 step *= 0.5;
                 let kinks = system.has_kinks() && walk.corners.len() < MOST_CORNERS;
-                if kinks && step < AT_A_KINK && walk.corners.last() != Some(&earlier.len()) {
-                    if let Some(behind) = behind_kink(system, newton, base) {
-                        walk.corners.push(points.len());
-                        points.push(behind);
-                        step = BEHIND_A_KINK;
-                        continue;
-                    }
+                if kinks
+                    && step < AT_A_KINK
+                    && walk.corners.last() != Some(&earlier.len())
+                    && let Some(behind) = behind_kink(system, newton, base)
+                {
+                    walk.corners.push(points.len());
+                    points.push(behind);
+                    step = BEHIND_A_KINK;
+                    continue;
                 }
                 if step < settings.smallest_step {
                     return (Outcome::Lost(trouble), walk);

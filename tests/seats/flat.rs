@@ -3,7 +3,7 @@
 use crate::fixture::setup;
 use crate::reference::shooting::{FlatColumn, FlatSeat, FlatState, Parameter, Rod, Standing};
 use crate::walk::{Point, Walk, assert_same};
-use coilstay::setup::{FlatSeat as Ring, Setup, Support};
+use coilstay::setup::{FlatSeat as Ring, LimitKind, Setup, Support};
 
 const ELEMENTS: usize = 32;
 /// Points compared in each way of standing.
@@ -224,5 +224,52 @@ fn lift_off_where_the_path_turns_back() {
         let ways = compare(&case, 0.55, 3e-9);
         let lifts = ways.iter().position(|way| *way == flush).expect("flush");
         assert_eq!(ways[lifts + 1], last, "{ways:?}");
+    }
+}
+
+/// An assessment finds the lift-off where it is, also where the path turns back sharply there.
+#[test]
+fn lift_off_is_a_limit_where_it_is() {
+    for (slenderness, radii, bow) in [
+        (6.0, [0.3, 0.3], 0.005),
+        (6.0, [0.3, 0.5], 0.005),
+        (5.0, [0.2, 0.5], 0.01),
+        (7.0, [0.3, 0.3], 0.002),
+    ] {
+        let mut case = setup(slenderness, 2.6, flat(radii[0], 0.0), flat(radii[1], 0.0));
+        let length = case.spring.free_length;
+        case.imperfections.bow = bow * length;
+        let answer = coilstay::assess::assess(&case, "");
+        let limit = answer
+            .limits
+            .iter()
+            .find(|limit| limit.name == LimitKind::LiftOff)
+            .expect("is a limit");
+        let mut column = shot(&case);
+        let start = column.start(1e-9).expect("starts");
+        let flush = column
+            .follow(Parameter::Travel, 0.1, &start)
+            .expect("follows");
+        assert_eq!(flush.standing, [Standing::Flat; 2]);
+        let mut target = 0.1;
+        let lifted = loop {
+            target += 0.005;
+            if let Ok(state) = column.next_change(Parameter::Travel, target, &flush)
+                && state.standing != flush.standing
+            {
+                break state;
+            }
+        };
+        let deflection = limit.deflection_m.expect("is reached") / length;
+        let force = limit.force_n.expect("is reached") / (case.spring.rate() * length);
+        // The load with which shooting starts has moved its seats by a little.
+        assert_same(
+            &format!("{slenderness}, {radii:?}"),
+            1e-8,
+            &[
+                ("travel", deflection, lifted.travel - start.travel),
+                ("force", force, lifted.column.load),
+            ],
+        );
     }
 }

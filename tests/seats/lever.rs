@@ -212,7 +212,6 @@ fn a_long_lever_moves_its_seat_straight() {
     for across in [1e2, 1e3, 1e4, 1e5] {
         let walk = Walk::to(&case([0.0, across], 0.0, 0.0), ELEMENTS, 0.4);
         let point = walk.at(0.35);
-        let apart = (walk.load(&point) - straight.load(&want)).abs();
         let aside = (walk.moments(&point.state)[1] - straight.moments(&want.state)[1]).abs();
         assert!(aside < 0.11 * before, "{across}: {aside} {before}");
         before = aside;
