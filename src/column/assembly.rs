@@ -87,18 +87,20 @@ impl System<3, INNER> for Column {
         let Some(mut leaning) = self.leaning.take_if(|leaning| !leaning.symmetric) else {
             return;
         };
+        let top = self.top_seat(state);
         for (e, element) in self.elements.iter().enumerate() {
             let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
             let laws = leaning.laws[e];
-            let held = Held {
+            let mut held = Held {
                 element,
                 laws: &laws,
                 a: &a,
                 b: &b,
                 inner: &state.inner[e],
                 jumps: Leaning::jumps(&state.side, e),
+                corner: None,
             };
-            leaning.depart(e, &held);
+            leaning.depart(e, &top, &state.side, &mut held);
         }
         self.leaning = Some(leaning);
     }
@@ -134,8 +136,9 @@ impl System<3, INNER> for Column {
                     b,
                     inner,
                     jumps: Leaning::jumps(&state.side, e),
+                    corner: None,
                 };
-                if leaning.assemble(&self.tables, e, &top, held, out) {
+                if leaning.assemble(&self.tables, e, &top, held, &state.side, out) {
                     if symmetric {
                         out.inner_negatives += ALWAYS_NEGATIVE;
                     }
@@ -248,15 +251,16 @@ impl Column {
         for (e, element) in self.elements.iter().enumerate() {
             let (a, b) = self.element_poses(state, ends, e);
             let laws = leaning.laws[e];
-            let held = Held {
+            let mut held = Held {
                 element,
                 laws: &laws,
                 a,
                 b,
                 inner: &state.inner[e],
                 jumps: Leaning::jumps(&state.side, e),
+                corner: None,
             };
-            leaning.choose(e, top, &held);
+            leaning.choose(e, top, &state.side, &mut held);
         }
     }
 }

@@ -4,7 +4,7 @@
 use super::element::ElementForms;
 use super::guided::Leaning;
 use super::layout::{Column, ColumnState, Hold};
-use super::lean::{Held, PADS};
+use super::lean::SLOTS;
 use super::seat::{Pose, Touch};
 use super::wall::TopSeat;
 use crate::solve::Assembled;
@@ -228,17 +228,10 @@ impl Column {
         let force = [inner[3], inner[4]];
         if let Some(leaning) = &self.leaning {
             let jumps = Leaning::jumps(&state.side, e);
-            if jumps != [[0.0; 2]; PADS] {
-                let held = Held {
-                    element,
-                    laws: &leaning.laws[e],
-                    a,
-                    b,
-                    inner,
-                    jumps,
-                };
+            if jumps != [[0.0; 2]; SLOTS] {
+                let held = leaning.held_with_corner(self, state, a, b, e);
                 let forms = held
-                    .forms(&self.tables, &leaning.tables, [false; PADS])
+                    .forms(&self.tables, &leaning.tables, [false; SLOTS])
                     .forms;
                 return (
                     [force, held.end_force()],

@@ -7,7 +7,6 @@
 use super::basis::{GAUSS_AT, Tables};
 use super::element::{Element, INNER, Lever, PointLaw};
 use super::guided::Leaning;
-use super::lean::Held;
 use super::seat::Seat;
 use crate::setup::Curve;
 use crate::solve::{System, Unknowns};
@@ -344,15 +343,9 @@ impl Column {
                 let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
                 let inner = &state.inner[e];
                 match &self.leaning {
-                    Some(leaning) => Held {
-                        element,
-                        laws: &leaning.laws[e],
-                        a: &a,
-                        b: &b,
-                        inner,
-                        jumps: Leaning::jumps(&state.side, e),
-                    }
-                    .strain_energy(&self.tables, &leaning.tables),
+                    Some(leaning) => leaning
+                        .held_with_corner(self, state, &a, &b, e)
+                        .strain_energy(&self.tables, &leaning.tables),
                     None => element.strain_energy(&self.tables, &a, &b, inner),
                 }
             })
