@@ -47,39 +47,35 @@ pub(super) struct Brink {
 }
 
 impl Held<'_> {
-    /// Where on [−1, 1] the axis passes x; `None` where it does not in this element.
-    pub fn place_of(&mut self, tables: &PadTables, x: f64) -> Option<f64> {
-        let half = 0.5 * self.element.length;
-        let corner = self.jumps[PADS];
-        let ends = |held: &mut Self| {
-            let mut at = |t: f64| {
-                held.corner = Some(t);
-                held.means(tables)[PADS][0]
-            };
-            (at(-1.0), at(1.0))
+    /// Whether x lies between the ends of the element's deformable part. The ends of neighbours are the
+    /// same, so that a corner is in one element and not in two or none.
+    pub fn passes(&self, x: f64) -> bool {
+        let along = |node: &nalgebra::Vector3<f64>, lever: &super::element::Lever| {
+            let (sin, cos) = node[2].sin_cos();
+            lever.along * cos - lever.across * sin
         };
-        let (low, high) = ends(self);
-        if !(low <= x && x < high) {
-            self.corner = None;
-            return None;
-        }
-        let mut t = -1.0 + 2.0 * (x - low) / (high - low);
+        let start = self.a[0] + along(self.a, &self.element.from_a);
+        let end = self.b[0] - along(self.b, &self.element.to_b);
+        start <= x && x < end
+    }
+
+    /// Finds where on [−1, 1] the axis passes x, which lies between the ends, and keeps it.
+    pub fn find_place(&mut self, tables: &PadTables, x: f64) -> f64 {
+        let half = 0.5 * self.element.length;
+        let mut t = 0.0;
         for _ in 0..30 {
             self.corner = Some(t);
-            let brink = self.brink(t);
-            let rate = if corner == [0.0; 2] {
-                brink.mean[0]
-            } else {
-                brink.slope[0]
-            };
+            let rate = self.brink(t).slope[0];
             let step = (x - self.means(tables)[PADS][0]) / (rate * half);
-            t = (t + step).clamp(-1.0, 1.0);
-            if step.abs() < 1e-15 {
+            let next = (t + step).clamp(-1.0, 1.0);
+            let moved = (next - t).abs();
+            t = next;
+            if moved < 1e-15 {
                 break;
             }
         }
         self.corner = Some(t);
-        Some(t)
+        t
     }
 
     /// What changes at a corner at `t`.

@@ -369,12 +369,10 @@ impl Leaning {
         for (number, wall) in self.walls.iter().enumerate() {
             for (end, corner) in wall.corners(top).into_iter().enumerate() {
                 let Some(x) = corner else { continue };
-                if x < held.a[0].min(held.b[0]) || x > held.a[0].max(held.b[0]) {
+                if !held.passes(x) {
                     continue;
                 }
-                let Some(t) = held.place_of(&self.tables, x) else {
-                    continue;
-                };
+                let t = held.find_place(&self.tables, x);
                 let place = (e as f64 + 0.5 * (1.0 + t)) * length;
                 let strayed = self.corners_were[number][end].map_or(0.0, |was| place - was);
                 let brink = held.brink(t);
@@ -542,10 +540,10 @@ impl Column {
                         let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
                         let mut held = leaning.held(self, state, &a, &b, e);
                         let x = leaning.walls[wall].corners(top)[end]?;
-                        if x < a[0] || x > b[0] {
+                        if !held.passes(x) {
                             return None;
                         }
-                        let t = held.place_of(&leaning.tables, x)?;
+                        let t = held.find_place(&leaning.tables, x);
                         let rate = held.brink(t).mean[0];
                         Some(((e as f64 + 0.5 * (1.0 + t)) * self.elements[e].length, rate))
                     })
