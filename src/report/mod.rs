@@ -4,6 +4,7 @@
 mod csv;
 mod json;
 mod layout;
+mod leaning;
 mod materials;
 mod names;
 mod numbers;
