@@ -1,9 +1,9 @@
 //! The panel of a guide along the spring: how hard each stretch leans on it, one side up, the other
 //! down.
 
-use super::figure::value_axis;
 use super::ink::{BLACK, GREEN, tenths};
 use super::panel::{Curve, Dash, Panel, Placed, Sheet, stroke};
+use super::reach::value_axis;
 use super::scale::{Axis, apart};
 use super::{PlotError, drawing_error, symbols};
 use crate::report::Units;
@@ -93,7 +93,7 @@ impl Along {
                 length.show(answer.at_working.deflection_m)
             ),
             panel: Panel {
-                name: format!("on guides, {}", per_length.symbol),
+                name: format!("force on guides, {}", per_length.symbol),
                 axis,
                 curves: vec![zero],
             },

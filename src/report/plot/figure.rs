@@ -4,9 +4,10 @@ use super::along::Along;
 use super::hysteresis::Hysteresis;
 use super::ink::{BLACK, BLUE, GREEN, GREY, VERMILION, tenths};
 use super::key::{self, Entry, Lines, WIDE};
-use super::marks::{Marked, Shape, marked};
+use super::marks::{Marked, marked};
 use super::panel::{Curve, Dash, Panel, Sheet};
 use super::parts::parted;
+use super::reach::{Point, deflection_axis, highest_force, value_axis};
 use super::scale::{Axis, apart};
 use super::{PlotError, drawing_error, symbols};
 use crate::report::Units;
@@ -28,9 +29,6 @@ const GUIDES_HEIGHT: f64 = 110.0;
 const BETWEEN: f64 = 16.0;
 /// From the last panel to the key.
 const TO_KEY: f64 = 60.0;
-
-/// A point of the path as shown: deflection, force, bow, force on the guides and on one coil.
-type Point = [f64; 5];
 
 /// A figure ready to be drawn: everything in the units shown.
 pub struct Figure {
@@ -137,7 +135,7 @@ impl Figure {
                 ..curve
             }));
             Panel {
-                name: format!("on guides, {}", force.symbol),
+                name: format!("guide force, {}", force.symbol),
                 axis: value_axis(leaning, 3),
                 curves,
             }
@@ -352,58 +350,6 @@ fn badges(places: &[i32]) -> Vec<i32> {
         .into_iter()
         .map(|x| x.round() as i32)
         .collect()
-}
-
-/// From nought past the path and its points; limits, formula and solid too where that does not
-/// squeeze the path.
-fn deflection_axis(points: &[Point], marks: &[Marked], highest: f64) -> Axis {
-    let reach = points
-        .iter()
-        .map(|point| point[0])
-        .chain(marks.iter().filter(must_show).map(|mark| mark.deflection))
-        .fold(0.0, f64::max);
-    let room = room_beyond(reach);
-    let to = marks
-        .iter()
-        .filter(|mark| mark.force <= highest)
-        .map(|mark| mark.deflection)
-        .filter(|deflection| *deflection <= room)
-        .fold(reach, f64::max);
-    Axis::over(0.0, 1.03 * to, 8)
-}
-
-/// Whether the picture reaches as far as this mark in any case.
-fn must_show(mark: &&Marked) -> bool {
-    matches!(mark.shape, Shape::OpenCircle | Shape::FilledCircle) || mark.governs
-}
-
-/// How far marks beyond the path may stretch an axis.
-fn room_beyond(reach: f64) -> f64 {
-    if reach > 0.0 {
-        1.6 * reach
-    } else {
-        f64::INFINITY
-    }
-}
-
-/// Marks above this force would squeeze the path: they are named only.
-fn highest_force(points: &[Point], marks: &[Marked]) -> f64 {
-    let reach = points
-        .iter()
-        .map(|point| point[1])
-        .chain(marks.iter().filter(must_show).map(|mark| mark.force))
-        .fold(0.0, f64::max);
-    room_beyond(reach)
-}
-
-/// From nought (or below, where values are) to a little above the largest value.
-pub fn value_axis(values: impl Iterator<Item = f64>, count: usize) -> Axis {
-    let (low, high) = values.fold((0.0f64, 0.0f64), |(low, high), value| {
-        (low.min(value), high.max(value))
-    });
-    let extent = high - low;
-    let from = if low < 0.0 { low - 0.06 * extent } else { 0.0 };
-    Axis::over(from, high + 0.08 * extent, count)
 }
 
 /// The straight path of the perfect column as built: a straight line from the origin to its

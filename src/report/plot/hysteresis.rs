@@ -1,9 +1,9 @@
 //! The loop of a stroke with friction: force on the way out and on the way back, and below it how far
 //! the two lie apart, whose area is the energy lost.
 
-use super::figure::value_axis;
 use super::ink::{BLACK, BLUE, VERMILION, tenths};
 use super::panel::{Curve, Dash, Panel, Sheet, stroke};
+use super::reach::value_axis;
 use super::scale::Axis;
 use super::{PlotError, symbols};
 use crate::report::Units;

@@ -12,6 +12,7 @@ mod marks;
 mod panel;
 mod paper;
 mod parts;
+mod reach;
 mod scale;
 mod symbols;
 

@@ -1,5 +1,6 @@
 //! What guides and seats bear, and what friction takes out of a stroke.
 
+use super::limits::of_flat_ends;
 use super::section;
 use crate::report::Units;
 use crate::report::layout::{Row, paragraph, table};
@@ -10,6 +11,9 @@ use crate::result::{Assessment, GuideAnswer, PathPoint, SeatLoad};
 const AT_PLACES: &str = "Places along the part that deforms, from its bottom, spring unloaded: each as \
      long as the stretches that lean on the same side less than a pitch apart. Forces across the \
      guide. + and - are its two sides: + is where a positive offset of a seat points.";
+
+/// Shares below this are round-off.
+const ROUND_OFF: f64 = 1e-8;
 
 /// What the guides do.
 pub fn guides(assessment: &Assessment, units: Units) -> String {
@@ -48,11 +52,15 @@ fn onset(assessment: &Assessment, answer: &GuideAnswer, units: Units) -> String 
             None => String::new(),
         };
     };
-    let mut text = format!("First touch at {}", units.show_length(touch));
-    if let Some(share) = answer.first_touch_place {
-        text += &format!(", {}", place(assessment, share, units));
-    }
-    text += ".";
+    let mut text = if touch > 0.0 {
+        let place = answer
+            .first_touch_place
+            .map(|share| format!(", {}", place(assessment, share, units)))
+            .unwrap_or_default();
+        format!("First touch at {}{place}.", units.show_length(touch))
+    } else {
+        "It touches before it is deflected.".to_string()
+    };
     let from = |at: Option<f64>, what: &str| {
         at.map(|at| format!(" {what} from {}.", units.show_length(at)))
             .unwrap_or_default()
@@ -111,14 +119,20 @@ fn at_work(assessment: &Assessment, answer: &GuideAnswer, units: Units) -> Strin
         };
         return format!("It leans on no guide {told}{before}.");
     }
-    let mut text = format!(
-        "On the guides {told}: {} in all, {} on the coil that bears most, {}",
-        force(point.guide_force_n),
-        force(point.guide_coil_force_n),
-        place(assessment, point.guide_coil_place, units)
-    );
+    let at = place(assessment, point.guide_coil_place, units);
     // Shown with four digits.
-    if answer.largest_coil_force_n > 1.0005 * point.guide_coil_force_n {
+    let share = |part: f64, whole: f64| part > (1.0 - 5e-5) * whole;
+    let on_one = if share(point.guide_coil_force_n, point.guide_force_n) {
+        format!("all of it on one coil, {at}")
+    } else {
+        let most = force(point.guide_coil_force_n);
+        format!("{most} of it on the coil that bears most, {at}")
+    };
+    let mut text = format!(
+        "On the guides {told}: {} in all, {on_one}",
+        force(point.guide_force_n)
+    );
+    if !share(point.guide_coil_force_n, answer.largest_coil_force_n) {
         text += &format!(
             " ({} on one coil on the way there)",
             force(answer.largest_coil_force_n)
@@ -126,9 +140,13 @@ fn at_work(assessment: &Assessment, answer: &GuideAnswer, units: Units) -> Strin
     }
     text += ".";
     if point.guide_corner_force_n > 0.0 {
-        text += &format!(
-            " {} of it rests on the corner at the end of a guide, where a coil can catch.",
+        let part = if share(point.guide_corner_force_n, point.guide_force_n) {
+            "All".to_string()
+        } else {
             force(point.guide_corner_force_n)
+        };
+        text += &format!(
+            " {part} of it rests on the corner at the end of a guide, where a coil can catch."
         );
     }
     if point.guide_friction_n != 0.0 {
@@ -153,7 +171,7 @@ fn places_table(places: &[Place], units: Units) -> String {
     let rows: Vec<Row> = places
         .iter()
         .map(|place| Row {
-            remark: if place.corner_force_n > 0.0 {
+            remark: if place.corner_force_n > 0.0 && !place.corner_only {
                 format!("corner {}", force.show(place.corner_force_n))
             } else {
                 String::new()
@@ -218,11 +236,21 @@ pub fn seats(assessment: &Assessment, units: Units) -> String {
         &[force.symbol, length.symbol, length.symbol, length.symbol],
         &[row("bottom", &loads[0]), row("top", &loads[1])],
     );
+    let ring = of_flat_ends(assessment, |support| {
+        Some(length.show_input(support.seat_radius_m?))
+    });
+    let ring = if ring.is_empty() {
+        String::new()
+    } else {
+        format!(" A flat end can stand flush while the line passes within its ring{ring}.")
+    };
     out += &paragraph(
         "  ",
-        "From the installed to the largest working deflection, the way out. Thrust: force of the \
-         seat on the spring along the seat. Force line: where the resultant passes the seat, from \
-         its centre; - without force.",
+        &format!(
+            "From the installed to the largest working deflection (at working), on the way out. \
+             Thrust: force of the seat on the spring along the seat, positive where a positive \
+             offset points. Force line: where the resultant passes the seat, from its centre.{ring}"
+        ),
     );
     out
 }
@@ -237,22 +265,26 @@ pub fn stroke(assessment: &Assessment, units: Units) -> String {
         units.show_length(stroke.from_deflection_m),
         units.show_length(stroke.to_deflection_m)
     );
-    let closes = percent(stroke.closes_within);
+    let closes = if stroke.closes_within < ROUND_OFF {
+        "The loop closes but for round-off.".to_string()
+    } else {
+        format!(
+            "The loop closes to {} of the largest force.",
+            percent(stroke.closes_within)
+        )
+    };
     let larger = stroke.energy_lost_j.abs().max(stroke.friction_work_j.abs());
     let text = if larger > 0.0 {
         let apart = (stroke.energy_lost_j - stroke.friction_work_j).abs() / larger;
         format!(
             "{start}the spring gives back {} less than it takes: the area of the loop of force over \
              deflection. The work of friction, counted by itself place by place, is the same to {}. \
-             The loop closes to {closes} of the largest force.",
+             {closes}",
             units.energy().show(stroke.energy_lost_j),
             percent(apart)
         )
     } else {
-        format!(
-            "{start}nothing slips and no energy is lost. The loop closes to {closes} of the largest \
-             force."
-        )
+        format!("{start}nothing slips and no energy is lost. {closes}")
     };
     section("Stroke with friction", &paragraph("  ", &text))
 }

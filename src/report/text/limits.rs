@@ -192,7 +192,7 @@ fn flat_ends(assessment: &Assessment) -> impl Iterator<Item = (&'static str, &Su
 }
 
 /// " (bottom 14 mm, top 12 mm)", from a number of each flat end; nothing where there is none.
-fn of_flat_ends(
+pub(super) fn of_flat_ends(
     assessment: &Assessment,
     number: impl Fn(&SupportEcho) -> Option<String>,
 ) -> String {
