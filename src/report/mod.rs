@@ -5,6 +5,7 @@ mod csv;
 mod json;
 mod layout;
 mod leaning;
+mod losses;
 mod materials;
 mod names;
 mod numbers;

@@ -236,6 +236,10 @@ fn guides_and_strokes_have_panels_of_their_own() {
     }
     let unguided = drawn(Shape::Rising);
     assert!(!unguided.contains("guide force") && !unguided.contains("Stroke with friction"));
+    let mut sticking = guided.clone();
+    let stroke = sticking.stroke.as_mut().unwrap();
+    (stroke.energy_lost_j, stroke.friction_work_j) = (-9e-12, 0.0);
+    assert!(!picture(&sticking, path).contains("Stroke with friction"));
 }
 
 /// Where a guide may not be touched, its first touch is that limit and is marked once.

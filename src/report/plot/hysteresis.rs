@@ -7,6 +7,7 @@ use super::reach::value_axis;
 use super::scale::Axis;
 use super::{PlotError, symbols};
 use crate::report::Units;
+use crate::report::losses::is_lossless;
 use crate::report::numbers::Unit;
 use crate::result::{Assessment, PathPoint};
 
@@ -26,9 +27,12 @@ pub struct Hysteresis {
 }
 
 impl Hysteresis {
-    /// The panels; none where there is no stroke to draw.
+    /// The panels; none where there is no stroke, or no loop in it.
     pub fn of(assessment: &Assessment, units: Units) -> Option<Self> {
-        let stroke = assessment.stroke.as_ref()?;
+        let stroke = assessment
+            .stroke
+            .as_ref()
+            .filter(|stroke| !is_lossless(stroke))?;
         let (length, force) = (units.length(), units.force());
         let out = line(&stroke.out, length, force);
         let back = line(&stroke.back, length, force);

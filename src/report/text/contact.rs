@@ -5,6 +5,7 @@ use super::section;
 use crate::report::Units;
 use crate::report::layout::{Row, paragraph, table};
 use crate::report::leaning::{Place, places};
+use crate::report::losses::is_lossless;
 use crate::report::numbers::{column_decimals, fixed, percent, rounded};
 use crate::result::{Assessment, GuideAnswer, PathPoint, SeatLoad};
 
@@ -273,8 +274,10 @@ pub fn stroke(assessment: &Assessment, units: Units) -> String {
             percent(stroke.closes_within)
         )
     };
-    let larger = stroke.energy_lost_j.abs().max(stroke.friction_work_j.abs());
-    let text = if larger > 0.0 {
+    let text = if is_lossless(stroke) {
+        format!("{start}nothing slips and no energy is lost. {closes}")
+    } else {
+        let larger = stroke.energy_lost_j.abs().max(stroke.friction_work_j.abs());
         let apart = (stroke.energy_lost_j - stroke.friction_work_j).abs() / larger;
         format!(
             "{start}the spring gives back {} less than it takes: the area of the loop of force over \
@@ -283,8 +286,6 @@ pub fn stroke(assessment: &Assessment, units: Units) -> String {
             units.energy().show(stroke.energy_lost_j),
             percent(apart)
         )
-    } else {
-        format!("{start}nothing slips and no energy is lost. {closes}")
     };
     section("Stroke with friction", &paragraph("  ", &text))
 }
