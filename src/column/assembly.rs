@@ -74,10 +74,18 @@ impl System<3, INNER> for Column {
         passed
     }
 
-    fn ease(&mut self, eased: bool) {
-        if let Some(leaning) = &mut self.leaning {
-            leaning.eased = eased;
-        }
+    fn ease(&mut self, share: f64, state: &ColumnState) {
+        let Some(mut leaning) = self.leaning.take() else {
+            return;
+        };
+        leaning.eased = share >= 1.0;
+        let deepest = if share < 1.0 && share > 0.0 {
+            leaning.deepest(state, &self.top_seat(state))
+        } else {
+            0.0
+        };
+        leaning.slack = share * deepest;
+        self.leaning = Some(leaning);
     }
 
     fn depart(&mut self, state: &ColumnState) {

@@ -26,6 +26,8 @@ pub struct Leaning {
     pub(super) symmetric: bool,
     search: f64,
     pub(super) eased: bool,
+    /// By how much all clearances are widened, at the beginning of a path.
+    pub(super) slack: f64,
     /// Whether one pad changes at a time, the one that is farthest from right: late in an iteration,
     /// where the pads at the ends of a contact take turns.
     pub(super) one_at_a_time: bool,
@@ -149,6 +151,7 @@ impl Leaning {
             symmetric,
             search: SEARCH,
             eased: false,
+            slack: 0.0,
             one_at_a_time: false,
             turn: None,
             farthest: 0.0,
@@ -338,7 +341,22 @@ impl Leaning {
             top,
             search: self.search,
             symmetric: self.symmetric,
+            slack: self.slack,
         }
+    }
+
+    /// How far the nodes at a state are inside a wall at most; 0 if none is.
+    pub(super) fn deepest(&self, state: &ColumnState, top: &TopSeat) -> f64 {
+        let walls = self.walls.iter();
+        walls
+            .flat_map(|wall| {
+                state
+                    .nodes
+                    .iter()
+                    .filter(|node| wall.covers(node[0], 0.0, top))
+                    .map(|node| -wall.room(node[0], node[1], 0.0, 0.0, top))
+            })
+            .fold(0.0, f64::max)
     }
 
     /// The corner of a guide in an element; its place is put into `held`, and the force on it where

@@ -357,6 +357,8 @@ pub(super) struct Judge<'a> {
     /// ρ of the search.
     pub search: f64,
     pub symmetric: bool,
+    /// By how much all clearances are widened.
+    pub slack: f64,
 }
 
 impl Judge<'_> {
@@ -444,7 +446,11 @@ impl Judge<'_> {
 
     fn surface(&self, wall: &Wall, held: &Held<'_>, place: [f64; 2]) -> Facing {
         let compliance = held.element.points[0].axial_compliance;
-        wall.surface(place[0], held.inner[3], compliance, self.top)
+        let facing = wall.surface(place[0], held.inner[3], compliance, self.top);
+        Facing {
+            clearance: facing.clearance + self.slack,
+            ..facing
+        }
     }
 
     /// The nearest wall that lies beside the whole pad.

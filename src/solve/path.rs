@@ -16,6 +16,8 @@ use super::{
 };
 use nalgebra::SVector;
 
+/// Smallest step in which contacts are taken in at the beginning of a path.
+const SMALLEST_EASING: f64 = 1e-3;
 /// Step at which a kink is looked for where Newton fails.
 const AT_A_KINK: f64 = 1e-9;
 /// How far ahead the kink may lie.
@@ -283,15 +285,53 @@ pub fn start<const B: usize, const I: usize>(
 ) -> Result<PathPoint<B, I>, NotConverged> {
     let mut state = guess.clone();
     if system.has_kinks() {
-        system.ease(true);
-        let near = newton.solve_at_load(system, &mut state, load);
-        system.ease(false);
-        near?;
+        begin(system, newton, &mut state, load)?;
+    } else {
+        newton.solve_at_load(system, &mut state, load)?;
     }
-    newton.solve_at_load(system, &mut state, load)?;
     let row = vec![SVector::zeros(); system.links() + 1];
     let d = 1.0 / system.load_scale();
     Ok(complete(system, newton, state, load, &row, d))
+}
+
+/// The state at `load` from a guess that may lie inside of what it must stay out of: without contacts
+/// first, then with contacts that are entered less and less.
+fn begin<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    state: &mut Unknowns<B, I>,
+    load: f64,
+) -> Result<(), NotConverged> {
+    system.depart(state);
+    system.ease(1.0, state);
+    let near = newton.solve_at_load(system, state, load);
+    if near.is_err() {
+        system.ease(0.0, state);
+        return near;
+    }
+    let free = state.clone();
+    let (mut share, mut step) = (1.0, 1.0);
+    while share > 0.0 {
+        let next: f64 = if step < share { share - step } else { 0.0 };
+        let mut trial = state.clone();
+        system.depart(state);
+        system.ease(next, &free);
+        match newton.solve_at_load(system, &mut trial, load) {
+            Ok(()) => {
+                state.copy_from(&trial);
+                share = next;
+                step *= 2.0;
+            }
+            Err(failed) => {
+                step *= 0.5;
+                if step < SMALLEST_EASING {
+                    system.ease(0.0, &free);
+                    return Err(failed);
+                }
+            }
+        }
+    }
+    Ok(())
 }
 
 /// The same point with its direction turned round, to go back from: what friction held up to now
