@@ -235,3 +235,84 @@ fn census() {
     }
     println!("{count} cases, {undecided} undecided, slowest {slowest:.2} s");
 }
+
+#[test]
+#[ignore = "one case, to be looked at"]
+fn one() {
+    use coilstay::column::{Column, Deviations, Idealisation};
+    use coilstay::setup::Orientation;
+    use coilstay::solve::{Newton, PathSettings, follow, start};
+    let number: u32 = std::env::var("CASE")
+        .ok()
+        .and_then(|v| v.parse().ok())
+        .unwrap_or(0);
+    let mut runner = proptest::test_runner::TestRunner::deterministic();
+    let mut setup = None;
+    for _ in 0..=number {
+        setup = Some(real_case().new_tree(&mut runner).expect("a case").current());
+    }
+    let setup = setup.expect("x");
+    println!("{setup:#?}");
+    let d = Deviations {
+        sizes: &setup.imperfections,
+        orientation: Orientation::plain(),
+        mode: None,
+    };
+    let n = 32;
+    let mut column =
+        Column::of_setup(&setup, Idealisation::AsBuilt, n, Some(&d)).with_load_scale(20.0);
+    let mut newton = Newton::new(&column);
+    let guess = column.first_guess();
+    let first = match start(&mut column, &mut newton, &guess, 0.0) {
+        Ok(f) => f,
+        Err(e) => {
+            println!("{e:?}");
+            return;
+        }
+    };
+    let mut points = vec![first];
+    let top = points[0].state.nodes[n][0];
+    let solid = setup.spring.solid_deflection() / column.scale.length;
+    let clock = std::time::Instant::now();
+    let (outcome, walk) = follow(
+        &mut column,
+        &mut newton,
+        &mut points,
+        &PathSettings::default(),
+        |p| top - p[p.len() - 1].state.nodes[n][0] > solid,
+    );
+    println!("{outcome:?} {walk:?} {:?} solid {solid}", clock.elapsed());
+    let mut contacts = Vec::new();
+    let step = (points.len() / 25).max(1);
+    for (i, p) in points.iter().enumerate() {
+        if i % step != 0 && i + 6 < points.len() {
+            continue;
+        }
+        column.contacts(&p.state, &mut contacts);
+        print!(
+            "{i} s {:.6} P {:.5} dP {:.3} neg {} d {:.1e} th {:.4} {:.4} pads {} ",
+            top - p.state.nodes[n][0],
+            p.load,
+            p.load_direction,
+            p.negatives,
+            p.distance,
+            p.state.nodes[0][2],
+            p.state.nodes[n][2],
+            contacts.len()
+        );
+        let mut before = -1.0;
+        for c in &contacts {
+            if c.place - before > 1.5 * c.width {
+                print!(
+                    "[{:.3}{}{}:{:.1e}",
+                    c.place,
+                    if c.side > 0.0 { '+' } else { '-' },
+                    if c.at_corner { "C" } else { "" },
+                    c.push
+                );
+            }
+            before = c.place;
+        }
+        println!();
+    }
+}

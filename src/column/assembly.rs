@@ -58,6 +58,13 @@ impl System<3, INNER> for Column {
         self.leaning.as_ref().is_some_and(|leaning| leaning.changed)
     }
 
+    fn regime(&self) -> u64 {
+        let seats = u64::from(self.turned_how[0]) * 8 + u64::from(self.turned_how[1]);
+        self.leaning
+            .as_ref()
+            .map_or(seats, |leaning| leaning.regime(seats))
+    }
+
     fn pass_kink(&mut self, state: &mut ColumnState, beyond: &ColumnState) -> bool {
         if (0..2).any(|which| self.pass_seat_kink(which, state, beyond)) {
             return true;
@@ -190,6 +197,8 @@ impl System<3, INNER> for Column {
             end.seat_on(which * last, out);
             self.end_turns[which] = end.pose.by;
             self.standing[which] = end.standing;
+            self.turns_over[which] = None;
+            self.turned_how[which] = end.turning.number(end.standing);
         }
         for (residual, pattern) in out.residual.iter_mut().zip(&self.pattern) {
             *residual -= pattern * load;

@@ -38,6 +38,18 @@ pub(super) struct End {
     pub standing: Option<f64>,
 }
 
+impl Turning {
+    /// A number for it.
+    pub fn number(self, standing: Option<f64>) -> u8 {
+        match self {
+            Turning::ByLaw => 0,
+            Turning::Stands => 1 + u8::from(standing.is_some_and(|side| side > 0.0)),
+            Turning::HeldAt(_) => 3,
+            Turning::Drags { factor } => 4 + u8::from(factor > 0.0),
+        }
+    }
+}
+
 /// What a seat makes of the rotation of an end.
 #[derive(Clone, Copy)]
 pub(super) enum Turning {
@@ -88,14 +100,24 @@ impl Column {
         }
     }
 
-    /// Whether a flat end, flush at `state` or standing, does the other at `beyond`: then it is made to
-    /// do so at `state`.
+    /// Whether a flat end, flush at `state` or standing, does the other at `beyond`, or a swivel that
+    /// sticks turns there: then it is made to do so at `state`.
     pub(super) fn pass_seat_kink(
         &mut self,
         which: usize,
         state: &mut ColumnState,
         beyond: &ColumnState,
     ) -> bool {
+        if let Touch::Swivel { .. } = self.seats[which].touch {
+            let before = self.end(state, which).turning;
+            return match (before, self.end(beyond, which).turning) {
+                (Turning::HeldAt(_), Turning::Drags { factor }) => {
+                    self.turns_over[which] = Some(factor);
+                    true
+                }
+                _ => false,
+            };
+        }
         if !matches!(self.seats[which].touch, Touch::Flat { .. }) {
             return false;
         }
@@ -150,7 +172,9 @@ impl Column {
                 let holds = reach * force.abs();
                 let moved = q[2] - self.end_was[which];
                 let trial = SWIVEL_SEARCH * moved - moment;
-                end.turning = if trial.abs() <= holds * (1.0 + 1e-9) && holds > 0.0 {
+                end.turning = if let Some(factor) = self.turns_over[which] {
+                    Turning::Drags { factor }
+                } else if trial.abs() <= holds * (1.0 + 1e-9) && holds > 0.0 {
                     Turning::HeldAt(self.end_was[which])
                 } else {
                     Turning::Drags {

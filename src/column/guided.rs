@@ -345,6 +345,19 @@ impl Leaning {
         }
     }
 
+    /// A number for what all pads did in the last assembly.
+    pub(super) fn regime(&self, seed: u64) -> u64 {
+        let mix = |sum: u64, value: u64| (sum ^ value).wrapping_mul(0x0000_0100_0000_01b3);
+        let pads = self.pads.iter().flatten().enumerate();
+        pads.fold(
+            mix(0xcbf2_9ce4_8422_2325, seed),
+            |sum, (place, pad)| match pad.number() {
+                0 => sum,
+                number => mix(mix(sum, place as u64), number),
+            },
+        )
+    }
+
     /// How far the nodes at a state are inside a wall at most; 0 if none is.
     pub(super) fn deepest(&self, state: &ColumnState, top: &TopSeat) -> f64 {
         let walls = self.walls.iter();

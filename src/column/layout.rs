@@ -154,6 +154,10 @@ pub struct Column {
     pub(super) end_turns: [Matrix3<f64>; 2],
     /// Rotations of the ends when the step began.
     pub(super) end_was: [f64; 2],
+    /// Which way a swivel turns against friction, set for one assembly from outside.
+    pub(super) turns_over: [Option<f64>; 2],
+    /// What the seats made of the rotations in the last assembly, as numbers.
+    pub(super) turned_how: [u8; 2],
     /// Edge on which a flat end stands, in the iteration under way.
     pub(super) standing: [Option<f64>; 2],
 }
@@ -217,6 +221,8 @@ impl Column {
             inner_answers: vec![SMatrix::zeros(); elements],
             end_turns: [Matrix3::identity(); 2],
             end_was: [0.0; 2],
+            turns_over: [None; 2],
+            turned_how: [0; 2],
             standing: [None; 2],
         }
     }

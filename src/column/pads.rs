@@ -486,6 +486,20 @@ pub(super) struct AtCorner {
 }
 
 impl Pad {
+    /// A number for what it does; 0: nothing.
+    pub fn number(&self) -> u64 {
+        match self {
+            Pad::Away => 0,
+            Pad::Leans { side, motion, .. } => {
+                let way = match motion {
+                    Motion::Sticks => 1,
+                    Motion::Slips(friction) => 2 + u64::from(*friction > 0.0),
+                };
+                2 * way + u64::from(*side > 0.0)
+            }
+        }
+    }
+
     /// Whether it does something else than `other`.
     pub fn differs(&self, other: &Pad) -> bool {
         match (self, other) {

@@ -18,6 +18,8 @@ use nalgebra::SVector;
 
 /// Smallest step in which contacts are taken in at the beginning of a path.
 const SMALLEST_EASING: f64 = 1e-3;
+/// Distances along the tangent beyond which a point on the plane belongs to another path.
+const FAR_AWAY: f64 = 30.0;
 /// Step at which a kink is looked for where Newton fails.
 const AT_A_KINK: f64 = 1e-9;
 /// How far ahead the kink may lie.
@@ -42,6 +44,8 @@ pub struct PathPoint<const B: usize, const I: usize> {
     pub load_direction: f64,
     /// Negative eigenvalues of the tangent matrix.
     pub negatives: u32,
+    /// Number of the one-sided laws that hold there.
+    pub regime: u64,
     /// Distance along this point's tangent at which the next point lies; 0 at the last.
     pub distance: f64,
 }
@@ -130,7 +134,7 @@ pub fn follow<const B: usize, const I: usize>(
         let Some((base, earlier)) = points.split_last_mut() else {
             return (Outcome::Lost(trouble), walk);
         };
-        let next = match at_distance(system, newton, earlier.last(), base, step) {
+        let mut next = match at_distance(system, newton, earlier.last(), base, step) {
             Ok(next) => next,
             Err(failed) => {
                 trouble = failed;
@@ -167,6 +171,15 @@ pub fn follow<const B: usize, const I: usize>(
         }
         base.distance = step;
         walk.steps += 1;
+        if base.regime != next.regime && crosses_another(base, &next) {
+            // No other path is crossed: over the kink this one turns sharply round.
+            next.direction.scale(-1.0);
+            next.load_direction = -next.load_direction;
+            walk.corners.push(points.len());
+            step = BEHIND_A_KINK;
+            points.push(next);
+            continue;
+        }
         let by_iterations = 4.0 / newton.iterations.max(1) as f64;
         let by_turn = 0.6 * settings.largest_turn / turn.max(1e-12);
         step = (step * by_iterations.min(by_turn).clamp(0.5, 1.6)).min(settings.largest_step);
@@ -241,6 +254,21 @@ pub(super) fn at_distance<const B: usize, const I: usize>(
         distance,
     };
     newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
+    let apart: f64 = state
+        .nodes
+        .iter()
+        .zip(&base.state.nodes)
+        .map(|(now, before)| (now - before).norm_squared())
+        .sum::<f64>()
+        * weight
+        + ((load - base.load) / system.load_scale()).powi(2);
+    if apart.sqrt() > FAR_AWAY * distance {
+        // On the plane, but of another path.
+        return Err(NotConverged {
+            iterations: newton.iterations,
+            last_step: apart.sqrt(),
+        });
+    }
     Ok(complete(system, newton, state, load, &row, d))
 }
 
@@ -255,6 +283,7 @@ pub(super) fn complete<const B: usize, const I: usize>(
     d: f64,
 ) -> PathPoint<B, I> {
     let negatives = newton.evaluate(system, &state, load);
+    let regime = system.regime();
     let mut direction = system.zero();
     let mut load_direction = newton.tangent(system, row, d, &mut direction);
     let weight = 1.0 / direction.nodes.len() as f64;
@@ -269,6 +298,7 @@ pub(super) fn complete<const B: usize, const I: usize>(
         direction,
         load_direction,
         negatives,
+        regime,
         distance: 0.0,
     }
 }

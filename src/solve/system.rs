@@ -81,6 +81,11 @@ pub trait System<const B: usize, const I: usize> {
         false
     }
 
+    /// A number for the one-sided laws that held in the last assembly: over a kink it changes.
+    fn regime(&self) -> u64 {
+        0
+    }
+
     /// Takes the kink for passed that lies between `state`, last assembled, and `beyond`, a state
     /// extrapolated from it: the next assembly, at `state`, is that of the path behind the kink. False
     /// where there is none.
