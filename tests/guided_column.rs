@@ -462,16 +462,17 @@ fn a_column_that_only_bends_meets_the_published_phases() {
 /// friction nowhere gives energy back; without friction there is no loop.
 #[test]
 fn friction_takes_what_the_loop_encloses() {
-    for (friction, to, corner) in [
-        (0.15, f64::INFINITY, 0.0),
-        (0.3, 0.45, 0.01),
-        (0.0, 0.45, 0.01),
+    // Along the whole spring; on the corner of a guide that stops short; without friction.
+    let whole = spring(6.0, R, [true, false], 0.01, 0.015);
+    let short = spring(5.0, R, [false, true], 0.03, 0.02);
+    for (friction, to, mut case) in [
+        (0.15, f64::INFINITY, whole),
+        (0.3, 0.15, short.clone()),
+        (0.0, 0.15, short),
     ] {
-        let mut case = spring(6.0, R, [true, false], 0.01, 0.015);
         case.walls[0] = Wall {
             friction,
             to,
-            corner,
             ..case.walls[0]
         };
         let mut path = case.to(0.45, 0.01);
@@ -508,7 +509,7 @@ fn friction_takes_what_the_loop_encloses() {
         ends.push(path.points[path.points.len() - 1].load);
         assert!((ends[2] / ends[4] - 1.0).abs() < 1e-9, "{ends:?}");
         if friction > 0.0 {
-            assert!(loop_area > 1e-3);
+            assert!(loop_area > 1e-2);
             assert!(
                 (loop_area / -friction_work - 1.0).abs() < 1e-4,
                 "{loop_area} {friction_work}"
@@ -529,7 +530,6 @@ fn a_corner_pushes_square_on_the_axis() {
     let mut case = spring(5.0, R, [false, true], 0.03, 0.02);
     case.walls[0] = Wall {
         to: 0.15,
-        corner: 0.02,
         ..case.walls[0]
     };
     let path = case.to(0.45, 0.002);
@@ -555,7 +555,6 @@ fn a_corner_pushes_square_on_the_axis() {
     let mut long = spring(5.0, R, [false, true], 0.03, 0.02);
     long.walls[0] = Wall {
         to: 1.5,
-        corner: 0.02,
         ..long.walls[0]
     };
     let long = long.to(0.45, 0.03);

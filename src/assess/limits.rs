@@ -60,6 +60,7 @@ fn limit(
         margin: reached.map(|(d, force, _)| setup.duty.margin(d, force)),
         required_margin: setup.duty.margins.of(name),
         error_m: reached.and_then(|r| r.2),
+        for_information: !setup.has(name),
         governs: false,
         beyond_solid: reached.is_some_and(|(d, force, _)| is_beyond_solid(setup, d, force)),
         looked_up_to_m: None,
@@ -72,6 +73,10 @@ fn critical_limit(setup: &Setup, critical: Option<&Critical>) -> Limit {
         None => "never: the perfect column as built stays straight at any deflection",
         Some(c) if is_beyond_solid(setup, c.deflection, c.force) => {
             "none before solid; perfect column as built, dead coils and arms included"
+        }
+        Some(_) if setup.may_lean() => {
+            "perfect column as built, its guides left away; for information, as the spring may lean \
+             on them"
         }
         Some(_) => "perfect column as built, dead coils and arms included",
     };

@@ -27,7 +27,7 @@ pub(super) fn decide(setup: &Setup, limits: &[Limit], imperfect: &Imperfect) -> 
     let duty = &setup.duty;
     // What a limit reaches over what is needed of it; a limit beyond solid is never met.
     let reached = |limit: &Limit| match (limit.deflection_m, limit.force_n) {
-        (Some(deflection), Some(force)) if !limit.beyond_solid => {
+        (Some(deflection), Some(force)) if !limit.beyond_solid && !limit.for_information => {
             Some(duty.reached(deflection, force))
         }
         _ => None,

@@ -5,7 +5,7 @@ use super::observe::Solved;
 use crate::column::{Column, ColumnState};
 use crate::result::Failure;
 use crate::setup::Setup;
-use crate::solve::{Newton, Outcome, PathSettings, branch_point, crosses_another, follow};
+use crate::solve::{Newton, Outcome, PathSettings, System, branch_point, crosses_another, follow};
 
 /// How far a path is followed.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -31,6 +31,12 @@ impl Reach {
 
 /// Width of an event's last bracket along the path, of order-one unknowns.
 pub(super) const BRACKET: f64 = 1e-11;
+/// Share of the load scale by which a path may go back into tension before it is left.
+const PULLED: f64 = 0.02;
+/// Force, in those of the straight spring pressed solid, at which a path with contacts is left.
+const JAMMED: f64 = 4.0;
+/// Points after the largest travel without regaining it before a path with contacts is left.
+const MOST_AFTER_LOSS: usize = 250;
 /// First step on a branch: so short that the slope there is that at the branch point but for its
 /// square, and so long that the slope is far above round-off.
 const FIRST_ON_BRANCH: f64 = 2e-3;
@@ -68,14 +74,22 @@ pub(super) fn walk(
     let last = column.elements();
     let top = points[0].state.nodes[last][0];
     let solid = reach.solid * setup.spring.solid_deflection() / column.scale.length;
+    let column_scale = column.load_scale();
+    let column_force = column.scale.force;
+    let solid_force = setup.spring.rate() * setup.spring.solid_deflection();
     let bowed_over = |point: &Solved| {
         let nodes = &point.state.nodes;
+        // Or pulled, past the loss of its load: a spring is not.
         nodes.iter().any(|node| node[2].abs() > reach.rotation)
+            || point.load < -PULLED * column_scale
     };
     let mut settings = PathSettings::default();
+    let has_kinks = column.has_kinks();
     let mut branches: Vec<(usize, Solved)> = Vec::new();
     let end = loop {
         let mut crossed = false;
+        let mut strayed = false;
+        let mut jammed = false;
         let from = points.len();
         let (outcome, _) = follow(column, newton, points, &settings, |points| {
             let n = points.len();
@@ -83,7 +97,18 @@ pub(super) fn walk(
                 crossed = crosses_another(&points[n - 2], &points[n - 1])
                     && points[n - 1].negatives > points[n - 2].negatives;
             }
-            crossed || top - height(&points[n - 1], last) >= solid || bowed_over(&points[n - 1])
+            let lowest = points
+                .iter()
+                .enumerate()
+                .min_by(|a, b| height(a.1, last).total_cmp(&height(b.1, last)));
+            strayed = has_kinks && lowest.is_some_and(|(at, _)| at + MOST_AFTER_LOSS < n);
+            let force = points[n - 1].load * column_force;
+            jammed = has_kinks && force > JAMMED * solid_force;
+            crossed
+                || jammed
+                || strayed
+                || top - height(&points[n - 1], last) >= solid
+                || bowed_over(&points[n - 1])
         });
         let lost = |cause: String| PathEnd::Lost(failure(cause));
         match outcome {
@@ -100,6 +125,17 @@ pub(super) fn walk(
                 branches.push((points.len(), found.located.point.clone()));
                 points.push(found.turned(branch * sideways(&found.mode).signum()));
                 settings.first_step = FIRST_ON_BRANCH;
+            }
+            Outcome::Stopped if jammed => {
+                break lost(format!(
+                    "it jams: the force has risen to {JAMMED} times that of the spring pressed solid"
+                ));
+            }
+            Outcome::Stopped if strayed => {
+                break lost(format!(
+                    "after its largest travel the path went on for {MOST_AFTER_LOSS} points without \
+                     regaining it"
+                ));
             }
             Outcome::Stopped => {
                 let bowed = points.last().is_some_and(&bowed_over);

@@ -61,6 +61,13 @@ impl System<3, INNER> for Column {
         self.seats_changed || self.leaning.as_ref().is_some_and(|leaning| leaning.changed)
     }
 
+    fn regime(&self) -> u64 {
+        let seats = u64::from(self.turned_how[0]) * 8 + u64::from(self.turned_how[1]);
+        self.leaning
+            .as_ref()
+            .map_or(seats, |leaning| leaning.regime(seats))
+    }
+
     fn pass_kink(&mut self, state: &ColumnState, beyond: &ColumnState) -> Option<f64> {
         if let Some(share) = self.pass_seat_kinks(state, beyond) {
             return Some(share);
@@ -89,10 +96,18 @@ impl System<3, INNER> for Column {
         }
     }
 
-    fn ease(&mut self, eased: bool) {
-        if let Some(leaning) = &mut self.leaning {
-            leaning.eased = eased;
-        }
+    fn ease(&mut self, share: f64, state: &ColumnState) {
+        let Some(mut leaning) = self.leaning.take() else {
+            return;
+        };
+        leaning.eased = share >= 1.0;
+        let deepest = if share < 1.0 && share > 0.0 {
+            leaning.deepest(state, &self.top_seat(state))
+        } else {
+            0.0
+        };
+        leaning.slack = share * deepest;
+        self.leaning = Some(leaning);
     }
 
     fn depart(&mut self, state: &ColumnState) {
@@ -102,18 +117,20 @@ impl System<3, INNER> for Column {
         let Some(mut leaning) = self.leaning.take_if(|leaning| !leaning.symmetric) else {
             return;
         };
+        let top = self.top_seat(state);
         for (e, element) in self.elements.iter().enumerate() {
             let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
             let laws = leaning.laws[e];
-            let held = Held {
+            let mut held = Held {
                 element,
                 laws: &laws,
                 a: &a,
                 b: &b,
                 inner: &state.inner[e],
                 jumps: Leaning::jumps(&state.side, e),
+                corner: None,
             };
-            leaning.depart(e, &held);
+            leaning.depart(e, &top, &state.side, &mut held);
         }
         self.leaning = Some(leaning);
     }
@@ -149,8 +166,9 @@ impl System<3, INNER> for Column {
                     b,
                     inner,
                     jumps: Leaning::jumps(&state.side, e),
+                    corner: None,
                 };
-                if leaning.assemble(&self.tables, e, &top, held, out) {
+                if leaning.assemble(&self.tables, e, &top, held, &state.side, out) {
                     if symmetric {
                         out.inner_negatives += ALWAYS_NEGATIVE;
                     }
@@ -197,6 +215,8 @@ impl System<3, INNER> for Column {
             self.end_turns[which] = end.pose.by;
             self.seats_changed |= end.standing != self.standing[which];
             self.standing[which] = end.standing;
+            self.turns_over[which] = None;
+            self.turned_how[which] = end.turning.number(end.standing);
         }
         for (residual, pattern) in out.residual.iter_mut().zip(&self.pattern) {
             *residual -= pattern * load;
@@ -266,15 +286,16 @@ impl Column {
         for (e, element) in self.elements.iter().enumerate() {
             let (a, b) = self.element_poses(state, ends, e);
             let laws = leaning.laws[e];
-            let held = Held {
+            let mut held = Held {
                 element,
                 laws: &laws,
                 a,
                 b,
                 inner: &state.inner[e],
                 jumps: Leaning::jumps(&state.side, e),
+                corner: None,
             };
-            leaning.choose(e, top, &held);
+            leaning.choose(e, top, &state.side, &mut held);
         }
     }
 }

@@ -4,7 +4,7 @@
 use super::element::ElementForms;
 use super::guided::Leaning;
 use super::layout::{Column, ColumnState, Hold};
-use super::lean::{Held, PADS};
+use super::lean::SLOTS;
 use super::seat::{Pose, Touch};
 use super::wall::TopSeat;
 use crate::solve::Assembled;
@@ -40,6 +40,29 @@ pub(super) struct End {
     pub turning: Turning,
     /// The edge it stands on, if it does.
     pub standing: Option<f64>,
+}
+
+impl Turning {
+    /// A number for it.
+    pub fn number(self, standing: Option<f64>) -> u8 {
+        match self {
+            Turning::ByLaw => 0,
+            Turning::Stands => 1 + u8::from(standing.is_some_and(|side| side > 0.0)),
+            Turning::HeldAt(_) => 3,
+            Turning::Drags { factor } => 4 + u8::from(factor > 0.0),
+        }
+    }
+}
+
+/// What an end does at a kink.
+#[derive(Clone, Copy)]
+enum SeatKink {
+    /// A flat one stands up on an edge.
+    Stands(f64),
+    /// A flat one sits down.
+    Sits,
+    /// A swivel that stuck turns, against this factor times |F_x|.
+    Turns(f64),
 }
 
 /// What a seat makes of the rotation of an end.
@@ -96,7 +119,8 @@ impl Column {
         }
     }
 
-    /// Which flat ends, flush at `state` or standing, do the other before `beyond`: from the next assembly
+    /// Which flat ends, flush at `state` or standing, do the other before `beyond`, and which swivel that
+    /// sticks turns there: from the next assembly
     /// on they do, at the share of the way that is given. Both only where both are there at once, as in a
     /// column that is its own mirror image: the path may turn, and what lies farther on along its old
     /// direction is not met then.
@@ -116,12 +140,19 @@ impl Column {
             .map(|kink| kink.0)
             .min_by(f64::total_cmp)?;
         for (which, kink) in kinks.iter().enumerate() {
-            if let Some((share, side)) = kink
-                && *share <= first + AT_ONCE
-            {
-                self.standing[which] = *side;
-                self.passed[which] = true;
-                self.sits[which] = side.is_none();
+            match kink {
+                Some((share, _)) if *share > first + AT_ONCE => {}
+                Some((_, SeatKink::Stands(side))) => {
+                    self.standing[which] = Some(*side);
+                    self.passed[which] = true;
+                }
+                Some((_, SeatKink::Sits)) => {
+                    self.standing[which] = None;
+                    self.passed[which] = true;
+                    self.sits[which] = true;
+                }
+                Some((_, SeatKink::Turns(factor))) => self.turns_over[which] = Some(*factor),
+                None => {}
             }
         }
         Some(first)
@@ -139,13 +170,22 @@ impl Column {
         Some(passed.all(stays))
     }
 
-    /// At which share of the way from `state` to `beyond` a flat end stands up on an edge, or sits down.
+    /// What an end does between `state` and `beyond`, and at which share of the way.
     fn seat_kink(
         &self,
         which: usize,
         state: &ColumnState,
         beyond: &ColumnState,
-    ) -> Option<(f64, Option<f64>)> {
+    ) -> Option<(f64, SeatKink)> {
+        if let Touch::Swivel { .. } = self.seats[which].touch {
+            let before = self.end(state, which).turning;
+            return match (before, self.end(beyond, which).turning) {
+                (Turning::HeldAt(_), Turning::Drags { factor }) => {
+                    Some((0.0, SeatKink::Turns(factor)))
+                }
+                _ => None,
+            };
+        }
         if !matches!(self.seats[which].touch, Touch::Flat { .. }) {
             return None;
         }
@@ -160,11 +200,14 @@ impl Column {
                     self.overturning(state, which, self.turned(state, which), side, &actions)
                         .1
                 };
-                Some((crossing(excess(state), excess(beyond)), Some(side)))
+                Some((
+                    crossing(excess(state), excess(beyond)),
+                    SeatKink::Stands(side),
+                ))
             }
             (Turning::HeldAt(_), Some(_)) => {
                 let share = crossing(self.turned(state, which), self.turned(beyond, which));
-                Some((share, None))
+                Some((share, SeatKink::Sits))
             }
             _ => None,
         }
@@ -204,7 +247,9 @@ impl Column {
                 let holds = reach * force.abs();
                 let moved = q[2] - self.end_was[which];
                 let trial = SWIVEL_SEARCH * moved - moment;
-                end.turning = if trial.abs() <= holds * (1.0 + 1e-9) + AT_REST {
+                end.turning = if let Some(factor) = self.turns_over[which] {
+                    Turning::Drags { factor }
+                } else if trial.abs() <= holds * (1.0 + 1e-9) + AT_REST {
                     Turning::HeldAt(self.end_was[which])
                 } else {
                     Turning::Drags {
@@ -300,17 +345,10 @@ impl Column {
         let force = [inner[3], inner[4]];
         if let Some(leaning) = &self.leaning {
             let jumps = Leaning::jumps(&state.side, e);
-            if jumps != [[0.0; 2]; PADS] {
-                let held = Held {
-                    element,
-                    laws: &leaning.laws[e],
-                    a,
-                    b,
-                    inner,
-                    jumps,
-                };
+            if jumps != [[0.0; 2]; SLOTS] {
+                let held = leaning.held_with_corner(self, state, a, b, e);
                 let forms = held
-                    .forms(&self.tables, &leaning.tables, [false; PADS])
+                    .forms(&self.tables, &leaning.tables, [false; SLOTS])
                     .forms;
                 return (
                     [force, held.end_force()],

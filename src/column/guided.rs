@@ -2,8 +2,8 @@
 
 use super::element::{Element, INNER, PointLaw};
 use super::layout::{Column, ColumnState};
-use super::lean::{Held, PADS, PadTables};
-use super::pads::{Condensed, PAD_UNKNOWNS, Pad, decide};
+use super::lean::{Held, PADS, PadTables, SLOTS};
+use super::pads::{AtCorner, Condensed, Judge, PAD_UNKNOWNS, Pad};
 use super::profile::{Peak, Station};
 use super::seat::Touch;
 use super::wall::{TopSeat, Wall};
@@ -26,6 +26,8 @@ pub struct Leaning {
     pub(super) symmetric: bool,
     search: f64,
     pub(super) eased: bool,
+    /// By how much all clearances are widened, at the beginning of a path.
+    pub(super) slack: f64,
     /// Whether one pad changes at a time, the one that is farthest from right: late in an iteration,
     /// where the pads at the ends of a contact take turns.
     pub(super) one_at_a_time: bool,
@@ -37,11 +39,13 @@ pub struct Leaning {
     pub(super) changed: bool,
     /// Where each pad was along x when the step began.
     was: Vec<f64>,
+    /// Where the corners of each wall were along the column then.
+    corners_were: Vec<[Option<f64>; 2]>,
     /// Of the last assembly.
-    pads: Vec<[Pad; PADS]>,
+    pads: Vec<[Pad; SLOTS]>,
     condensed: Vec<Option<Condensed>>,
     /// From the pads' unknowns of the state to those it was assembled with.
-    mended: Vec<[[f64; 2]; PADS]>,
+    mended: Vec<[[f64; 2]; SLOTS]>,
 }
 
 /// A stretch of the column that leans on a guide, in the column's units.
@@ -61,7 +65,76 @@ pub struct Contact {
     pub at_corner: bool,
 }
 
+/// The force on a corner in an element next to `e`.
+fn neighbours(e: usize, side: &[f64]) -> [f64; 2] {
+    let slot = |e: usize| {
+        let first = e * PAD_UNKNOWNS + 2 * PADS;
+        match side.get(first..first + 2) {
+            Some(jump) => [jump[0], jump[1]],
+            None => [0.0; 2],
+        }
+    };
+    let before = e.checked_sub(1).map_or([0.0; 2], slot);
+    if before == [0.0; 2] {
+        slot(e + 1)
+    } else {
+        before
+    }
+}
+
+/// A place dragged along a guide.
+struct Dragged {
+    slot: Slot,
+    /// Force of friction on it along x.
+    drag: f64,
+    /// Whether its guide rides on the top seat.
+    rides: bool,
+}
+
+enum Slot {
+    /// Pad of an element.
+    Pad(usize, usize),
+    /// Corner at an end of a wall.
+    Corner(usize, usize),
+}
+
 impl Leaning {
+    /// A state of an element.
+    pub(super) fn held<'a>(
+        &'a self,
+        column: &'a Column,
+        state: &'a ColumnState,
+        a: &'a Vector3<f64>,
+        b: &'a Vector3<f64>,
+        e: usize,
+    ) -> Held<'a> {
+        Held {
+            element: &column.elements[e],
+            laws: &self.laws[e],
+            a,
+            b,
+            inner: &state.inner[e],
+            jumps: Leaning::jumps(&state.side, e),
+            corner: None,
+        }
+    }
+
+    /// The same with the corner found that lies in it.
+    pub(super) fn held_with_corner<'a>(
+        &'a self,
+        column: &'a Column,
+        state: &'a ColumnState,
+        a: &'a Vector3<f64>,
+        b: &'a Vector3<f64>,
+        e: usize,
+    ) -> Held<'a> {
+        let mut held = self.held(column, state, a, b, e);
+        if held.jumps[PADS] != [0.0; 2] {
+            self.corner_in(e, &column.top_seat(state), &state.side, &mut held);
+        }
+        held
+    }
+
     pub(super) fn new(walls: Vec<Wall>, elements: &[Element]) -> Self {
         let tables = PadTables::new();
         let symmetric = walls
@@ -73,24 +146,26 @@ impl Leaning {
                 .map(|element| tables.laws(element))
                 .collect(),
             tables,
+            corners_were: vec![[None; 2]; walls.len()],
             walls,
             symmetric,
             search: SEARCH,
             eased: false,
+            slack: 0.0,
             one_at_a_time: false,
             turn: None,
             farthest: 0.0,
             forced: false,
             changed: false,
-            was: vec![0.0; elements.len() * PADS],
-            pads: vec![[Pad::Away; PADS]; elements.len()],
+            was: vec![0.0; elements.len() * SLOTS],
+            pads: vec![[Pad::Away; SLOTS]; elements.len()],
             condensed: vec![None; elements.len()],
-            mended: vec![[[0.0; 2]; PADS]; elements.len()],
+            mended: vec![[[0.0; 2]; SLOTS]; elements.len()],
         }
     }
 
     /// The jumps of the force over the pads of an element.
-    pub(super) fn jumps(side: &[f64], e: usize) -> [[f64; 2]; PADS] {
+    pub(super) fn jumps(side: &[f64], e: usize) -> [[f64; 2]; SLOTS] {
         let mine = &side[e * PAD_UNKNOWNS..(e + 1) * PAD_UNKNOWNS];
         std::array::from_fn(|k| [mine[2 * k], mine[2 * k + 1]])
     }
@@ -121,50 +196,61 @@ impl Leaning {
         e: usize,
         top: &TopSeat,
         mut held: Held<'_>,
+        side: &[f64],
         out: &mut Assembled<3>,
     ) -> bool {
         self.condensed[e] = None;
-        let before = std::mem::replace(&mut self.pads[e], [Pad::Away; PADS]);
+        let before = std::mem::replace(&mut self.pads[e], [Pad::Away; SLOTS]);
         if self.eased || !self.is_near(top, &held) {
-            self.changed |= before != [Pad::Away; PADS];
+            self.changed |= before != [Pad::Away; SLOTS];
             return false;
         }
+        let given = held.jumps;
+        let corner = self.corner_in(e, top, side, &mut held);
         let means = held.means(&self.tables);
+        let judge = self.judge(top);
+        let were = &self.was[e * SLOTS..(e + 1) * SLOTS];
         let pads = if self.one_at_a_time {
             std::array::from_fn(|k| match self.turn {
-                Some((at, pad)) if at == e * PADS + k => pad,
-                _ => before[k].kept(&self.walls, top, &held, means[k]),
+                Some((at, pad)) if at == e * SLOTS + k => pad,
+                _ => judge.kept(&before[k], k, &held, means[k], corner.as_ref()),
             })
         } else {
-            self.decide(top, &held, &means, e).map(|decided| decided.0)
+            judge
+                .decide(&held, &means, were, corner.as_ref())
+                .map(|decided| decided.0)
         };
         self.changed |= pads
             .iter()
             .zip(&before)
             .any(|(pad, before)| pad.differs(before));
-        let was = &self.was[e * PADS..(e + 1) * PADS];
-        if pads == [Pad::Away; PADS] && held.jumps == [[0.0; 2]; PADS] {
+        if pads == [Pad::Away; SLOTS] && given == [[0.0; 2]; SLOTS] {
             return false;
         }
-        let given = held.jumps;
         for (pad, jump) in pads.iter().zip(&mut held.jumps) {
             match pad {
                 Pad::Away => *jump = [0.0; 2],
-                Pad::Leans { side, facing, .. } if self.symmetric => {
-                    jump[0] = -(facing.axis_slope + side * facing.widening) * jump[1];
+                Pad::Leans { facing, .. } if self.symmetric => {
+                    jump[0] = -facing.slope * jump[1];
                 }
                 Pad::Leans { .. } => {}
             }
         }
-        for k in 0..PADS {
+        for k in 0..SLOTS {
             for axis in 0..2 {
                 self.mended[e][k][axis] = held.jumps[k][axis] - given[k][axis];
             }
         }
+        if pads[PADS] == Pad::Away {
+            held.corner = None;
+        }
         let marked = pads.map(|pad| pad != Pad::Away);
         let forms = held.forms(plain, &self.tables, marked);
         let forces = [[held.inner[3], held.inner[4]], held.end_force()];
-        let condensed = forms.condense(&pads, &held.jumps, was, forces, self.symmetric);
+        let brink = corner
+            .zip(held.corner)
+            .map(|(corner, t)| (held.brink(t), corner.strayed));
+        let condensed = forms.condense(&pads, &held.jumps, were, forces, brink, self.symmetric);
         out.inner_negatives += condensed.negatives;
         for (node, residual) in condensed.residual.iter().enumerate() {
             out.residual[e + node] += residual;
@@ -208,16 +294,18 @@ impl Leaning {
 
     /// Chooses, of the pads of an element that should do something else than they did, the one that is
     /// farthest from right, if it is farther than those chosen before.
-    pub(super) fn choose(&mut self, e: usize, top: &TopSeat, held: &Held<'_>) {
+    pub(super) fn choose(&mut self, e: usize, top: &TopSeat, side: &[f64], held: &mut Held<'_>) {
         if !self.is_near(top, held) {
             return;
         }
+        let corner = self.corner_in(e, top, side, held);
         let means = held.means(&self.tables);
-        let decided = self.decide(top, held, &means, e);
+        let were = &self.was[e * SLOTS..(e + 1) * SLOTS];
+        let decided = self.judge(top).decide(held, &means, were, corner.as_ref());
         for (k, (pad, by)) in decided.into_iter().enumerate() {
             if pad.differs(&self.pads[e][k]) && by > self.farthest {
                 self.farthest = by;
-                self.turn = Some((e * PADS + k, pad));
+                self.turn = Some((e * SLOTS + k, pad));
             }
         }
     }
@@ -247,29 +335,101 @@ impl Leaning {
         self.forced
     }
 
-    fn decide(
-        &self,
-        top: &TopSeat,
-        held: &Held<'_>,
-        means: &[[f64; 2]; PADS],
-        e: usize,
-    ) -> [(Pad, f64); PADS] {
-        let was = &self.was[e * PADS..(e + 1) * PADS];
-        decide(
-            &self.walls,
+    fn judge<'a>(&'a self, top: &'a TopSeat) -> Judge<'a> {
+        Judge {
+            walls: &self.walls,
             top,
-            held,
-            means,
-            was,
-            self.search,
-            self.symmetric,
+            search: self.search,
+            symmetric: self.symmetric,
+            slack: self.slack,
+        }
+    }
+
+    /// A number for what all pads did in the last assembly.
+    pub(super) fn regime(&self, seed: u64) -> u64 {
+        let mix = |sum: u64, value: u64| (sum ^ value).wrapping_mul(0x0000_0100_0000_01b3);
+        let pads = self.pads.iter().flatten().enumerate();
+        pads.fold(
+            mix(0xcbf2_9ce4_8422_2325, seed),
+            |sum, (place, pad)| match pad.number() {
+                0 => sum,
+                number => mix(mix(sum, place as u64), number),
+            },
         )
     }
 
-    /// Remembers where every pad is: what sticks, sticks there.
-    pub(super) fn depart(&mut self, e: usize, held: &Held<'_>) {
+    /// How far the nodes at a state are inside a wall at most; 0 if none is.
+    pub(super) fn deepest(&self, state: &ColumnState, top: &TopSeat) -> f64 {
+        let walls = self.walls.iter();
+        walls
+            .flat_map(|wall| {
+                state
+                    .nodes
+                    .iter()
+                    .filter(|node| wall.covers(node[0], 0.0, top))
+                    .map(|node| -wall.room(node[0], node[1], 0.0, 0.0, top))
+            })
+            .fold(0.0, f64::max)
+    }
+
+    /// The corner of a guide in an element; its place is put into `held`, and the force on it where
+    /// it has just come over from a neighbour. `side` are the side unknowns of the state.
+    fn corner_in(
+        &self,
+        e: usize,
+        top: &TopSeat,
+        side: &[f64],
+        held: &mut Held<'_>,
+    ) -> Option<AtCorner> {
+        if self.symmetric {
+            return None;
+        }
+        let own = held.jumps[PADS];
+        if own == [0.0; 2] {
+            held.jumps[PADS] = neighbours(e, side);
+        }
+        let found = self.find_corner(e, top, held);
+        if found.is_none() {
+            held.jumps[PADS] = own;
+        }
+        found
+    }
+
+    fn find_corner(&self, e: usize, top: &TopSeat, held: &mut Held<'_>) -> Option<AtCorner> {
+        let length = held.element.length;
+        for (number, wall) in self.walls.iter().enumerate() {
+            for (end, corner) in wall.corners(top).into_iter().enumerate() {
+                let Some(x) = corner else { continue };
+                if !held.passes(x) {
+                    continue;
+                }
+                let t = held.find_place(&self.tables, x);
+                let place = (e as f64 + 0.5 * (1.0 + t)) * length;
+                let strayed = self.corners_were[number][end].map_or(0.0, |was| place - was);
+                let brink = held.brink(t);
+                return Some(AtCorner {
+                    wall: number,
+                    end,
+                    place,
+                    tilt: brink.mean[1] / brink.mean[0],
+                    strayed,
+                    moved: -strayed * brink.mean[0],
+                });
+            }
+        }
+        None
+    }
+
+    /// Remembers where every pad is, and every corner: what sticks, sticks there.
+    pub(super) fn depart(&mut self, e: usize, top: &TopSeat, side: &[f64], held: &mut Held<'_>) {
+        if e == 0 {
+            self.corners_were.fill([None; 2]);
+        }
+        if let Some(corner) = self.corner_in(e, top, side, held) {
+            self.corners_were[corner.wall][corner.end] = Some(corner.place);
+        }
         let means = held.means(&self.tables);
-        for (was, mean) in self.was[e * PADS..].iter_mut().zip(means) {
+        for (was, mean) in self.was[e * SLOTS..].iter_mut().zip(means) {
             *was = mean[0];
         }
     }
@@ -301,39 +461,51 @@ impl Column {
         let Some(leaning) = &self.leaning else { return };
         let top = self.top_seat(state);
         let width = 1.0 / (self.elements.len() * PADS) as f64;
-        for (e, element) in self.elements.iter().enumerate() {
-            let jumps = Leaning::jumps(&state.side, e);
-            if jumps.iter().all(|j| j[1] == 0.0) {
-                continue;
-            }
-            let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
-            let held = Held {
-                element,
-                laws: &leaning.laws[e],
-                a: &a,
-                b: &b,
-                inner: &state.inner[e],
-                jumps,
-            };
-            let means = held.means(&leaning.tables);
-            let pads = leaning.decide(&top, &held, &means, e);
-            for (k, (pad, _)) in pads.iter().enumerate() {
+        for e in 0..self.elements.len() {
+            self.in_element(leaning, state, &top, e, |k, pad, jump, corner| {
                 let Pad::Leans { side, facing, .. } = pad else {
-                    continue;
+                    return;
                 };
-                if jumps[k][1] == 0.0 {
-                    continue;
-                }
-                let slope = facing.axis_slope + side * facing.widening;
+                let slope = corner.map_or(facing.slope, |corner| corner.tilt);
+                let pad_place = ((e * PADS + k) as f64 + 0.5) * width;
                 out.push(Contact {
-                    place: ((e * PADS + k) as f64 + 0.5) * width,
+                    place: corner.map_or(pad_place, |corner| corner.place),
                     width,
                     side: *side,
-                    push: side * jumps[k][1],
+                    push: side * jump[1],
                     // The jump of the force is the force on the column, reversed.
-                    drag: -(jumps[k][0] + slope * jumps[k][1]),
-                    at_corner: facing.at_corner,
+                    drag: -(jump[0] + slope * jump[1]),
+                    at_corner: corner.is_some(),
                 });
+            });
+        }
+        out.sort_by(|a, b| a.place.total_cmp(&b.place));
+    }
+
+    /// Calls `act` for every place of an element through which force passes: its number, what it does,
+    /// its jump, and the corner it is, if it is one.
+    fn in_element(
+        &self,
+        leaning: &Leaning,
+        state: &ColumnState,
+        top: &TopSeat,
+        e: usize,
+        mut act: impl FnMut(usize, &Pad, [f64; 2], Option<&AtCorner>),
+    ) {
+        let jumps = Leaning::jumps(&state.side, e);
+        if jumps.iter().all(|j| j[1] == 0.0) {
+            return;
+        }
+        let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+        let mut held = leaning.held(self, state, &a, &b, e);
+        let corner = leaning.corner_in(e, top, &state.side, &mut held);
+        let means = held.means(&leaning.tables);
+        let were = &leaning.was[e * SLOTS..(e + 1) * SLOTS];
+        let judge = leaning.judge(top);
+        let decided = judge.decide(&held, &means, were, corner.as_ref());
+        for (k, (pad, _)) in decided.iter().enumerate() {
+            if jumps[k][1] != 0.0 {
+                act(k, pad, jumps[k], corner.as_ref().filter(|_| k == PADS));
             }
         }
     }
@@ -360,10 +532,12 @@ impl Column {
                 Peak::of(stations.iter().filter_map(|s| {
                     // F_x, as the growth of the coil has it.
                     let force = s.axial_force * s.angle.cos() - s.shear_force * s.angle.sin();
-                    let facing = wall.face(s.x, force, compliance, &top)?;
+                    if !wall.covers(s.x, 0.0, &top) {
+                        return None;
+                    }
+                    let facing = wall.surface(s.x, force, compliance, &top);
                     let depth = side * (s.y - facing.axis) - facing.clearance;
-                    let slope = side * (s.y_slope - facing.axis_slope * s.x_slope)
-                        - facing.widening * s.x_slope;
+                    let slope = side * (s.y_slope - facing.slope * s.x_slope);
                     Some((s.place, depth, slope))
                 }))
             })
@@ -372,6 +546,47 @@ impl Column {
             place: depth.place,
             value: -depth.value,
         })
+    }
+
+    /// How far a place slides along its guide, towards +x, from one state to the next.
+    fn slid(
+        &self,
+        leaning: &Leaning,
+        dragged: &Dragged,
+        states: [(&ColumnState, &TopSeat); 2],
+    ) -> f64 {
+        match dragged.slot {
+            Slot::Pad(e, k) => {
+                let [before, after] = states.map(|(state, top)| {
+                    let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+                    let held = leaning.held(self, state, &a, &b, e);
+                    let x = held.means(&leaning.tables)[k][0];
+                    if dragged.rides { x - top.x } else { x }
+                });
+                after - before
+            }
+            Slot::Corner(wall, end) => {
+                let places = states.map(|(state, top)| {
+                    (0..self.elements.len()).find_map(|e| {
+                        let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+                        let mut held = leaning.held(self, state, &a, &b, e);
+                        let x = leaning.walls[wall].corners(top)[end]?;
+                        if !held.passes(x) {
+                            return None;
+                        }
+                        let t = held.find_place(&leaning.tables, x);
+                        let rate = held.brink(t).mean[0];
+                        Some(((e as f64 + 0.5 * (1.0 + t)) * self.elements[e].length, rate))
+                    })
+                });
+                match places {
+                    [Some((before, rate)), Some((after, other))] => {
+                        -0.5 * (rate + other) * (after - before)
+                    }
+                    _ => 0.0,
+                }
+            }
+        }
     }
 
     /// Work of the friction on guides and swivels from one state to the next, in units of force ×
@@ -392,43 +607,36 @@ impl Column {
         if leaning.symmetric {
             return work;
         }
-        let tops = [self.top_seat(from), self.top_seat(to)];
-        for e in 0..last {
-            let drags = [from, to].map(|state| Leaning::jumps(&state.side, e));
-            if drags == [[[0.0; 2]; PADS]; 2] {
-                continue;
+        // (drag, place, what carries the guide) of every place that leans, at both states.
+        let gather = |state: &ColumnState| {
+            let top = self.top_seat(state);
+            let mut found: Vec<Dragged> = Vec::new();
+            for e in 0..last {
+                self.in_element(leaning, state, &top, e, |k, pad, jump, corner| {
+                    let Pad::Leans { facing, .. } = pad else {
+                        return;
+                    };
+                    let slope = corner.map_or(facing.slope, |corner| corner.tilt);
+                    found.push(Dragged {
+                        slot: match corner {
+                            Some(corner) => Slot::Corner(corner.wall, corner.end),
+                            None => Slot::Pad(e, k),
+                        },
+                        drag: -(jump[0] + slope * jump[1]),
+                        rides: facing.from_top,
+                    });
+                });
             }
-            let both = [(from, &tops[0]), (to, &tops[1])].map(|(state, top)| {
-                let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
-                let held = Held {
-                    element: &self.elements[e],
-                    laws: &leaning.laws[e],
-                    a: &a,
-                    b: &b,
-                    inner: &state.inner[e],
-                    jumps: Leaning::jumps(&state.side, e),
-                };
-                let means = held.means(&leaning.tables);
-                let pads = leaning.decide(top, &held, &means, e);
-                (means, pads)
-            });
-            for k in 0..PADS {
-                let drag = |i: usize| match &both[i].1[k].0 {
-                    Pad::Leans { side, facing, .. } => {
-                        let slope = facing.axis_slope + side * facing.widening;
-                        let rides = if facing.from_top { tops[i].x } else { 0.0 };
-                        (-(drags[i][k][0] + slope * drags[i][k][1]), Some(rides))
-                    }
-                    _ => (0.0, None),
-                };
-                let ((before, ride), (after, ride_after)) = (drag(0), drag(1));
-                let carried = match (ride, ride_after) {
-                    (Some(before), Some(after)) => after - before,
-                    _ => 0.0,
-                };
-                let moved = both[1].0[k][0] - both[0].0[k][0] - carried;
-                work += 0.5 * (before + after) * moved;
-            }
+            (found, top)
+        };
+        let ((before, top_before), (after, top_after)) = (gather(from), gather(to));
+        let both = before
+            .iter()
+            .map(|d| (d, 0))
+            .chain(after.iter().map(|d| (d, 1)));
+        for (dragged, _) in both {
+            let moved = self.slid(leaning, dragged, [(from, &top_before), (to, &top_after)]);
+            work += 0.5 * dragged.drag * moved;
         }
         work
     }

@@ -7,7 +7,6 @@
 use super::basis::{GAUSS_AT, Tables};
 use super::element::{Element, INNER, Lever, PointLaw};
 use super::guided::Leaning;
-use super::lean::Held;
 use super::seat::Seat;
 use crate::setup::Curve;
 use crate::solve::{System, Unknowns};
@@ -155,6 +154,10 @@ pub struct Column {
     pub(super) end_turns: [Matrix3<f64>; 2],
     /// Rotations of the ends when the step began.
     pub(super) end_was: [f64; 2],
+    /// Which way a swivel turns against friction, set for one assembly from outside.
+    pub(super) turns_over: [Option<f64>; 2],
+    /// What the seats made of the rotations in the last assembly, as numbers.
+    pub(super) turned_how: [u8; 2],
     /// Edge on which a flat end stands, in the iteration under way.
     pub(super) standing: [Option<f64>; 2],
     /// Flat ends that passed the kink last passed.
@@ -224,6 +227,8 @@ impl Column {
             inner_answers: vec![SMatrix::zeros(); elements],
             end_turns: [Matrix3::identity(); 2],
             end_was: [0.0; 2],
+            turns_over: [None; 2],
+            turned_how: [0; 2],
             standing: [None; 2],
             passed: [false; 2],
             sits: [false; 2],
@@ -353,15 +358,9 @@ impl Column {
                 let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
                 let inner = &state.inner[e];
                 match &self.leaning {
-                    Some(leaning) => Held {
-                        element,
-                        laws: &leaning.laws[e],
-                        a: &a,
-                        b: &b,
-                        inner,
-                        jumps: Leaning::jumps(&state.side, e),
-                    }
-                    .strain_energy(&self.tables, &leaning.tables),
+                    Some(leaning) => leaning
+                        .held_with_corner(self, state, &a, &b, e)
+                        .strain_energy(&self.tables, &leaning.tables),
                     None => element.strain_energy(&self.tables, &a, &b, inner),
                 }
             })

@@ -11,7 +11,8 @@
 //! ∂Π/∂J_k = x_B + ∫ ψ_k h_F dS = X_k,                                              (4)
 //! ```
 //!
-//! X_k = (X, Y) the mean position of the axis along pad k. The pad may not leave the strip
+//! X_k = (X, Y) the mean position of the axis along pad k. (The corner of a guide passes its force on at
+//! one place, ψ a step there: see [`super::corner`].) The pad may not leave the strip
 //! `σ(Y − y_g(X)) ≤ c(X, F_x)` on either side σ = ±1 (see [`super::wall`]). With `w = y_g + σ c` and
 //! the contact force N = σ J_y ≥ 0:
 //!
@@ -37,87 +38,164 @@ use nalgebra::{SVector, Vector3};
 
 /// Pads in an element.
 pub(super) const PADS: usize = 4;
-/// Points of quadrature of h: two a pad.
-const POINTS: usize = 2 * PADS;
+/// Places of an element through which force passes: its pads, and the corner of a guide.
+pub(super) const SLOTS: usize = PADS + 1;
+/// Points of quadrature of h: two a pad, and two more in the pad in which a corner lies.
+const MOST_NODES: usize = 2 * PADS + 2;
 
-/// Quadrature of h in an element: two-point Gauss in each pad.
+/// A point of quadrature of h.
+#[derive(Clone, Copy, Debug)]
+struct Node {
+    values: [f64; FUNCTIONS],
+    law: PointLaw,
+    weight: f64,
+    /// The pad it lies in, and ψ of that pad there.
+    pad: usize,
+    share: f64,
+    /// 1 behind the corner, towards B; 0 before it.
+    behind: f64,
+}
+
+/// Where the pads of an element are, and the points of quadrature in them.
 #[derive(Clone, Debug)]
 pub(super) struct PadTables {
-    values: [[f64; FUNCTIONS]; POINTS],
-    at: [f64; POINTS],
-    /// ψ of the pad in which the point lies.
+    values: [[f64; FUNCTIONS]; 2 * PADS],
+    at: [f64; 2 * PADS],
+    /// ψ at the two points of a pad.
     share: [f64; 2],
 }
 
 impl PadTables {
     pub fn new() -> Self {
-        let half = 1.0 / PADS as f64;
-        let offset = half / 3.0_f64.sqrt();
-        let at = std::array::from_fn(|g| {
-            let middle = -1.0 + half * (2 * (g / 2) + 1) as f64;
-            middle + if g % 2 == 0 { -offset } else { offset }
-        });
+        let share = GAUSS_TWO.map(|g| 0.5 * (1.0 + g));
+        let at = std::array::from_fn(|g| pad_start(g / 2) + PAD * share[g % 2]);
         PadTables {
             values: at.map(values),
             at,
-            share: [
-                0.5 * (1.0 - 1.0 / 3.0_f64.sqrt()),
-                0.5 * (1.0 + 1.0 / 3.0_f64.sqrt()),
-            ],
+            share,
         }
     }
 
     /// The law of an element at its points.
-    pub fn laws(&self, element: &Element) -> [PointLaw; POINTS] {
+    pub fn laws(&self, element: &Element) -> [PointLaw; 2 * PADS] {
         self.at.map(|t| element.law_at(t))
     }
+}
+
+/// Length of a pad on [−1, 1].
+const PAD: f64 = 2.0 / PADS as f64;
+/// Abscissae of the two-point Gauss–Legendre rule.
+const GAUSS_TWO: [f64; 2] = [-0.577_350_269_189_625_8, 0.577_350_269_189_625_8];
+
+fn pad_start(pad: usize) -> f64 {
+    -1.0 + PAD * pad as f64
+}
+
+/// The pad in which `t` lies, and ψ of that pad there.
+pub(super) fn pad_of(t: f64) -> (usize, f64) {
+    let at = (t + 1.0) / PAD;
+    let pad = (at.max(0.0) as usize).min(PADS - 1);
+    (pad, at - pad as f64)
 }
 
 /// A state of an element with pads.
 pub(super) struct Held<'a> {
     pub element: &'a Element,
-    pub laws: &'a [PointLaw; POINTS],
+    pub laws: &'a [PointLaw; 2 * PADS],
     pub a: &'a Vector3<f64>,
     pub b: &'a Vector3<f64>,
     pub inner: &'a SVector<f64, INNER>,
-    pub jumps: [[f64; 2]; PADS],
+    pub jumps: [[f64; 2]; SLOTS],
+    /// Where on [−1, 1] the corner of a guide is.
+    pub corner: Option<f64>,
 }
 
 /// Derivatives of Π of an element with pads.
 pub(super) struct PadForms {
     /// Those without the pads' unknowns.
     pub forms: ElementForms,
-    /// Mean positions X_k.
-    pub means: [[f64; 2]; PADS],
+    /// Mean positions X_k; of the corner, where it is.
+    pub means: [[f64; 2]; SLOTS],
     /// ∂X_k/∂θ.
-    pub turning: [[[f64; 2]; FUNCTIONS]; PADS],
+    pub turning: [[[f64; 2]; FUNCTIONS]; SLOTS],
     /// ∂X_k/∂F_A (xx, xy, yy).
-    pub stretch: [[f64; 3]; PADS],
-    /// ∂X_k/∂J_l, l ≥ k (xx, xy, yy).
-    pub mutual: [[[f64; 3]; PADS]; PADS],
+    pub stretch: [[f64; 3]; SLOTS],
+    /// ∂X_k/∂J_l (xx, xy, yy).
+    pub mutual: [[[f64; 3]; SLOTS]; SLOTS],
 }
 
 impl Held<'_> {
-    fn directions(&self, tables: &PadTables) -> [(f64, f64); POINTS] {
+    /// The points of quadrature.
+    fn nodes(&self, tables: &PadTables) -> ([Node; MOST_NODES], usize) {
+        let weight = self.element.length / (2 * PADS) as f64;
+        let node = |g: usize| Node {
+            values: tables.values[g],
+            law: self.laws[g],
+            weight,
+            pad: g / 2,
+            share: tables.share[g % 2],
+            behind: 0.0,
+        };
+        let mut nodes = [node(0); MOST_NODES];
+        let Some(corner) = self.corner else {
+            for (g, place) in nodes.iter_mut().enumerate().take(2 * PADS) {
+                *place = node(g);
+            }
+            return (nodes, 2 * PADS);
+        };
+        let (split, share) = pad_of(corner);
+        let mut count = 0;
+        for pad in 0..PADS {
+            let behind = f64::from(pad > split);
+            if pad != split {
+                for g in [2 * pad, 2 * pad + 1] {
+                    nodes[count] = Node { behind, ..node(g) };
+                    count += 1;
+                }
+                continue;
+            }
+            for (from, to, behind) in [(0.0, share, 0.0), (share, 1.0, 1.0)] {
+                for g in GAUSS_TWO {
+                    let psi = from + (to - from) * 0.5 * (1.0 + g);
+                    let t = pad_start(pad) + PAD * psi;
+                    nodes[count] = Node {
+                        values: values(t),
+                        law: self.element.law_at(t),
+                        weight: weight * (to - from),
+                        pad,
+                        share: psi,
+                        behind,
+                    };
+                    count += 1;
+                }
+            }
+        }
+        (nodes, count)
+    }
+
+    fn direction(&self, node: &Node) -> (f64, f64) {
         let q = Element::rotations(self.a, self.b, self.inner);
-        tables.values.map(|value| {
-            let angle: f64 = value.iter().zip(q).map(|(n, q)| n * q).sum();
-            angle.sin_cos()
-        })
+        let angle: f64 = node.values.iter().zip(q).map(|(n, q)| n * q).sum();
+        angle.sin_cos()
     }
 
     /// Force at a point.
     #[inline]
-    fn force(&self, tables: &PadTables, g: usize) -> (f64, f64) {
-        let (pad, share) = (g / 2, tables.share[g % 2]);
+    fn force(&self, node: &Node) -> (f64, f64) {
+        self.force_at(node.pad, node.share, node.behind)
+    }
+
+    /// Force where `share` of a pad's jump, and `behind` of the corner's, is passed.
+    pub fn force_at(&self, pad: usize, share: f64, behind: f64) -> (f64, f64) {
         let (mut fx, mut fy) = (self.inner[3], self.inner[4]);
         for jump in &self.jumps[..pad] {
             fx += jump[0];
             fy += jump[1];
         }
+        let (here, corner) = (self.jumps[pad], self.jumps[PADS]);
         (
-            fx + share * self.jumps[pad][0],
-            fy + share * self.jumps[pad][1],
+            fx + share * here[0] + behind * corner[0],
+            fy + share * here[1] + behind * corner[1],
         )
     }
 
@@ -131,37 +209,34 @@ impl Held<'_> {
         force
     }
 
-    /// Mean positions of the pads.
-    pub fn means(&self, tables: &PadTables) -> [[f64; 2]; PADS] {
-        let weight = 0.25 * self.element.length / PADS as f64 * 2.0;
+    /// Mean positions of the pads, and the corner's place.
+    pub fn means(&self, tables: &PadTables) -> [[f64; 2]; SLOTS] {
         let (sin, cos) = self.b[2].sin_cos();
         let lever = self.element.to_b;
         let mut x = self.b[0] - (lever.along * cos - lever.across * sin);
         let mut y = self.b[1] - (lever.along * sin + lever.across * cos);
-        let directions = self.directions(tables);
-        let mut means = [[0.0; 2]; PADS];
-        for pad in (0..PADS).rev() {
-            let mut mean = [x, y];
-            for g in [2 * pad, 2 * pad + 1] {
-                let (fx, fy) = self.force(tables, g);
-                let (sin, cos) = directions[g];
-                let law = &self.laws[g];
-                let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
-                let (open, slide) = (
-                    1.0 + axial * law.axial_compliance,
-                    shear * law.shear_compliance,
-                );
-                let step = [
-                    weight * (open * cos - slide * sin),
-                    weight * (open * sin + slide * cos),
-                ];
-                let share = tables.share[g % 2];
-                mean[0] -= share * step[0];
-                mean[1] -= share * step[1];
-                x -= step[0];
-                y -= step[1];
+        let (nodes, count) = self.nodes(tables);
+        let mut means = [[x, y]; SLOTS];
+        for node in nodes[..count].iter().rev() {
+            let (fx, fy) = self.force(node);
+            let (sin, cos) = self.direction(node);
+            let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
+            let open = 1.0 + axial * node.law.axial_compliance;
+            let slide = shear * node.law.shear_compliance;
+            let step = [
+                node.weight * (open * cos - slide * sin),
+                node.weight * (open * sin + slide * cos),
+            ];
+            means[node.pad][0] -= node.share * step[0];
+            means[node.pad][1] -= node.share * step[1];
+            x -= step[0];
+            y -= step[1];
+            for mean in means.iter_mut().take(node.pad) {
+                *mean = [x, y];
             }
-            means[pad] = mean;
+            if node.behind > 0.0 {
+                means[PADS] = [x, y];
+            }
         }
         means
     }
@@ -180,22 +255,22 @@ impl Held<'_> {
                     * (turn / half - law.natural_curvature).powi(2)
             })
             .sum();
-        let directions = self.directions(tables);
-        let weight = self.element.length / POINTS as f64;
-        let stretching: f64 = (0..POINTS)
-            .map(|g| {
-                let (fx, fy) = self.force(tables, g);
-                let ((sin, cos), law) = (directions[g], &self.laws[g]);
+        let (nodes, count) = self.nodes(tables);
+        let stretching: f64 = nodes[..count]
+            .iter()
+            .map(|node| {
+                let (fx, fy) = self.force(node);
+                let ((sin, cos), law) = (self.direction(node), &node.law);
                 let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
-                0.5 * weight
+                0.5 * node.weight
                     * (law.axial_compliance * axial * axial + law.shear_compliance * shear * shear)
             })
             .sum();
         bending + stretching
     }
 
-    /// All derivatives; of the pads marked only.
-    pub fn forms(&self, plain: &Tables, tables: &PadTables, marked: [bool; PADS]) -> PadForms {
+    /// All derivatives; of the slots marked only.
+    pub fn forms(&self, plain: &Tables, tables: &PadTables, marked: [bool; SLOTS]) -> PadForms {
         let element = self.element;
         let q = Element::rotations(self.a, self.b, self.inner);
         let mut forms = ElementForms {
@@ -217,16 +292,15 @@ impl Held<'_> {
                 }
             }
         }
-        let directions = self.directions(tables);
-        let weight = element.length / POINTS as f64;
-        let mut means = [[self.b[0], self.b[1]]; PADS];
-        let mut turning = [[[0.0; 2]; FUNCTIONS]; PADS];
-        let mut stretch = [[0.0; 3]; PADS];
-        let mut mutual = [[[0.0; 3]; PADS]; PADS];
-        for g in 0..POINTS {
-            let (value, law) = (&tables.values[g], &self.laws[g]);
-            let (fx, fy) = self.force(tables, g);
-            let (sin, cos) = directions[g];
+        let (nodes, count) = self.nodes(tables);
+        let mut means = [[self.b[0], self.b[1]]; SLOTS];
+        let mut turning = [[[0.0; 2]; FUNCTIONS]; SLOTS];
+        let mut stretch = [[0.0; 3]; SLOTS];
+        let mut mutual = [[[0.0; 3]; SLOTS]; SLOTS];
+        for node in &nodes[..count] {
+            let (value, law, weight) = (&node.values, &node.law, node.weight);
+            let (fx, fy) = self.force(node);
+            let (sin, cos) = self.direction(node);
             let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
             let (ca, cs) = (law.axial_compliance, law.shear_compliance);
             let c = ca - cs;
@@ -259,21 +333,28 @@ impl Held<'_> {
                     forms.bending[i][j] += soft * value[i] * value[j];
                 }
             }
-            let here = g / 2;
-            let share = |pad: usize| if pad < here { 1.0 } else { tables.share[g % 2] };
-            for k in (0..=here).filter(|k| marked[*k]) {
-                let psi = share(k);
-                means[k][0] -= psi * step[0];
-                means[k][1] -= psi * step[1];
+            let psi = |slot: usize| match slot {
+                PADS => node.behind,
+                pad if pad < node.pad => 1.0,
+                pad if pad == node.pad => node.share,
+                _ => 0.0,
+            };
+            for k in (0..SLOTS).filter(|k| marked[*k]) {
+                let share = psi(k);
+                if share == 0.0 {
+                    continue;
+                }
+                means[k][0] -= share * step[0];
+                means[k][1] -= share * step[1];
                 for i in 0..FUNCTIONS {
-                    turning[k][i][0] += psi * value[i] * mixed[0];
-                    turning[k][i][1] += psi * value[i] * mixed[1];
+                    turning[k][i][0] += share * value[i] * mixed[0];
+                    turning[k][i][1] += share * value[i] * mixed[1];
                 }
                 for n in 0..3 {
-                    stretch[k][n] += psi * give[n];
+                    stretch[k][n] += share * give[n];
                 }
-                for l in (k..=here).filter(|l| marked[*l]) {
-                    let both = psi * share(l);
+                for l in (k..SLOTS).filter(|l| marked[*l]) {
+                    let both = share * psi(l);
                     for n in 0..3 {
                         mutual[k][l][n] += both * give[n];
                     }
@@ -293,14 +374,14 @@ impl Held<'_> {
                 lever.along * cos - lever.across * sin,
                 lever.along * sin + lever.across * cos,
             ];
-            for k in 0..PADS {
+            for k in 0..SLOTS {
                 means[k][0] -= reach[0];
                 means[k][1] -= reach[1];
                 turning[k][1][0] += reach[1];
                 turning[k][1][1] -= reach[0];
             }
         }
-        for k in 0..PADS {
+        for k in 0..SLOTS {
             for l in 0..k {
                 mutual[k][l] = mutual[l][k];
             }
@@ -320,6 +401,8 @@ mod tests {
     use super::*;
     use crate::column::Lever;
     use proptest::prelude::*;
+
+    const CORNER: f64 = 0.17;
 
     fn element() -> Element {
         let law = |i: usize| PointLaw {
@@ -342,10 +425,10 @@ mod tests {
         }
     }
 
-    /// Order of the unknowns: A (3), B (3), inner (5), J (8).
+    /// Order of the unknowns: A (3), B (3), inner (5), J (10).
     fn held<'a>(
         element: &'a Element,
-        laws: &'a [PointLaw; POINTS],
+        laws: &'a [PointLaw; 2 * PADS],
         parts: &'a (Vector3<f64>, Vector3<f64>, SVector<f64, INNER>),
         u: &[f64],
     ) -> Held<'a> {
@@ -356,6 +439,7 @@ mod tests {
             b: &parts.1,
             inner: &parts.2,
             jumps: std::array::from_fn(|k| [u[11 + 2 * k], u[12 + 2 * k]]),
+            corner: Some(CORNER),
         }
     }
 
@@ -380,13 +464,14 @@ mod tests {
             let bent = turn / half - element.points[g].natural_curvature;
             energy += GAUSS_WEIGHT[g] * half * 0.5 * element.points[g].bending * bent * bent;
         }
-        for (g, (sin, cos)) in held.directions(&tables).into_iter().enumerate() {
-            let (fx, fy) = held.force(&tables, g);
+        let (nodes, count) = held.nodes(&tables);
+        for node in &nodes[..count] {
+            let ((sin, cos), (fx, fy)) = (held.direction(node), held.force(node));
             let (axial, shear) = (fx * cos + fy * sin, fy * cos - fx * sin);
-            energy -= element.length / POINTS as f64
+            energy -= node.weight
                 * (axial
-                    + 0.5 * laws[g].axial_compliance * axial * axial
-                    + 0.5 * laws[g].shear_compliance * shear * shear);
+                    + 0.5 * node.law.axial_compliance * axial * axial
+                    + 0.5 * node.law.shear_compliance * shear * shear);
         }
         let reach = |lever: &Lever, angle: f64| {
             let (sin, cos) = angle.sin_cos();
@@ -398,7 +483,7 @@ mod tests {
         let (start, end) = (reach(&element.from_a, u[2]), reach(&element.to_b, u[5]));
         let last = held.end_force();
         energy -= u[9] * start[0] + u[10] * start[1] + last[0] * end[0] + last[1] * end[1];
-        for k in 0..PADS {
+        for k in 0..SLOTS {
             energy += held.jumps[k][0] * u[3] + held.jumps[k][1] * u[4];
         }
         energy
@@ -407,13 +492,13 @@ mod tests {
     fn all(u: &[f64]) -> PadForms {
         let (element, tables) = (element(), PadTables::new());
         let (laws, parts) = (tables.laws(&element), parts(u));
-        held(&element, &laws, &parts, u).forms(&Tables::new(), &tables, [true; PADS])
+        held(&element, &laws, &parts, u).forms(&Tables::new(), &tables, [true; SLOTS])
     }
 
     fn gradient(u: &[f64]) -> Vec<f64> {
         let forms = all(u);
         let f = &forms.forms;
-        let jumps = |axis: usize| -> f64 { (0..PADS).map(|k| u[11 + 2 * k + axis]).sum() };
+        let jumps = |axis: usize| -> f64 { (0..SLOTS).map(|k| u[11 + 2 * k + axis]).sum() };
         let mut g = vec![
             -u[9],
             -u[10],
@@ -436,24 +521,24 @@ mod tests {
         /// Every derivative against fourth-order differences of what it derives from.
         #[test]
         fn residual_is_the_energys_and_tangent_the_residuals(
-            u in prop::collection::vec(-1.0..1.0_f64, 19),
+            u in prop::collection::vec(-1.0..1.0_f64, 21),
         ) {
             let step = 2e-3;
             let shifted = |k: usize, by: f64| { let mut v = u.clone(); v[k] += by; v };
             let exact = gradient(&u);
             let forms = all(&u);
-            for k in 0..19 {
+            for k in 0..21 {
                 let e = |by: f64| energy(&shifted(k, by));
                 let difference =
                     (8.0 * (e(step) - e(-step)) - e(2.0 * step) + e(-2.0 * step)) / (12.0 * step);
                 prop_assert!((difference - exact[k]).abs() < 2e-9, "{k}: {difference} {}", exact[k]);
             }
             // The pads' own second derivatives: columns of J.
-            for (l, axis) in (0..PADS).flat_map(|l| [(l, 0), (l, 1)]) {
+            for (l, axis) in (0..SLOTS).flat_map(|l| [(l, 0), (l, 1)]) {
                 let column = 11 + 2 * l + axis;
                 let g = |by: f64| gradient(&shifted(column, by));
                 let (p, m, pp, mm) = (g(step), g(-step), g(2.0 * step), g(-2.0 * step));
-                for row in 0..19 {
+                for row in 0..21 {
                     let difference = (8.0 * (p[row] - m[row]) - pp[row] + mm[row]) / (12.0 * step);
                     let turn = |i: usize| forms.turning[l][i][axis];
                     let exact = match row {
@@ -474,7 +559,7 @@ mod tests {
     /// The mean positions alone are those of the full derivatives.
     #[test]
     fn means_agree() {
-        let u: Vec<f64> = (0..19).map(|i| (1.3 * f64::from(i)).sin()).collect();
+        let u: Vec<f64> = (0..21).map(|i| (1.3 * f64::from(i)).sin()).collect();
         let (element, tables) = (element(), PadTables::new());
         let (laws, parts) = (tables.laws(&element), parts(&u));
         let means = held(&element, &laws, &parts, &u).means(&tables);

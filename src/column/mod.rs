@@ -3,6 +3,7 @@
 
 mod assembly;
 mod basis;
+mod corner;
 mod element;
 mod ends;
 mod guided;

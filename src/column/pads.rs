@@ -1,14 +1,19 @@
 //! The pads of a leaning element: what each of them does, and their unknowns eliminated together
 //! with the element's own. Equations (4) and (5) of [`super::lean`].
 
+use super::corner::Brink;
 use super::element::INNER;
-use super::lean::{Held, PADS, PadForms};
+use super::lean::{Held, PADS, PadForms, SLOTS};
 use super::wall::{Facing, TopSeat, Wall};
 use crate::solve::SymmetricFactor;
 use nalgebra::{Matrix3, SMatrix, SVector, Vector3};
 
-/// Unknowns of the pads of an element: (J_x, J_y) of each.
-pub(super) const PAD_UNKNOWNS: usize = 2 * PADS;
+/// Unknowns of the slots of an element: (J_x, J_y) of each, pads and corner.
+pub(super) const PAD_UNKNOWNS: usize = 2 * SLOTS;
+/// Those, and the place of the corner.
+const ALL: usize = PAD_UNKNOWNS + 1;
+/// Numbers of the corner's unknowns.
+const CORNER: [usize; 3] = [2 * PADS, 2 * PADS + 1, 2 * PADS + 2];
 /// Reduced outer unknowns: x_B − x_A, y_B − y_A, θ_A, θ_B, x_B, y_B.
 const OUTER: usize = 6;
 /// Friction holds up to this share above its limit, against round-off.
@@ -45,92 +50,111 @@ pub(super) struct Condensed {
     /// Of [`super::element::ElementForms::inner_right`], as for a plain element.
     pub inner_answers: SMatrix<f64, 5, INNER>,
     /// The inner unknowns' answers to the pads' unknowns, one a row.
-    pub to_pads: SMatrix<f64, PAD_UNKNOWNS, INNER>,
+    pub to_pads: SMatrix<f64, ALL, INNER>,
     /// The pads' answers to the reduced outer unknowns and the residual, one a column.
-    pub pad_answers: SMatrix<f64, PAD_UNKNOWNS, 7>,
+    pub pad_answers: SMatrix<f64, ALL, 7>,
     /// Negative eigenvalues beyond those of a stable state; unsymmetric: modulo 2.
     pub negatives: i64,
     symmetric: bool,
 }
 
 impl PadForms {
-    /// Eliminates the element's inner unknowns and its pads'. `was` is where each pad was along x,
-    /// `forces` the force at either end.
+    /// Eliminates the element's inner unknowns and its pads'. `was` is where each pad was along x, and
+    /// the corner along the column; `forces` the force at either end; `corner` what changes where a
+    /// corner leans, and how far that place lies from where it was.
     pub fn condense(
         mut self,
-        pads: &[Pad; PADS],
-        jumps: &[[f64; 2]; PADS],
+        pads: &[Pad; SLOTS],
+        jumps: &[[f64; 2]; SLOTS],
         was: &[f64],
         forces: [[f64; 2]; 2],
+        corner: Option<(Brink, f64)>,
         symmetric: bool,
     ) -> Condensed {
-        type Pads = SMatrix<f64, PAD_UNKNOWNS, PAD_UNKNOWNS>;
+        type Pads = SMatrix<f64, ALL, ALL>;
         let mut own = Pads::zeros();
-        let mut residual = SVector::<f64, PAD_UNKNOWNS>::zeros();
+        let mut residual = SVector::<f64, ALL>::zeros();
         // Columns: what an unknown does (J = Σ doing·p). Rows: what its equation looks at.
-        let mut doing = [[0.0; 2]; PAD_UNKNOWNS];
-        let mut looking = [[0.0; 2]; PAD_UNKNOWNS];
-        let mut by_force = [0.0; PAD_UNKNOWNS];
+        let mut doing = [[0.0; 2]; ALL];
+        let mut looking = [[0.0; 2]; ALL];
+        let mut by_force = [0.0; ALL];
+        let idle = if symmetric { -1.0 } else { 1.0 };
         // Negative eigenvalues, or the parity of them, that the pads have in every stable state.
-        let mut usual = if symmetric { PAD_UNKNOWNS as i64 } else { 0 };
+        let mut usual = if symmetric { ALL as i64 } else { 0 };
+        own[(CORNER[2], CORNER[2])] = idle;
         for (k, pad) in pads.iter().enumerate() {
             let (first, second) = (2 * k, 2 * k + 1);
-            match *pad {
-                Pad::Away => {
-                    let sign = if symmetric { -1.0 } else { 1.0 };
-                    own[(first, first)] = sign;
-                    own[(second, second)] = sign;
+            let Pad::Leans {
+                side,
+                facing,
+                motion,
+            } = *pad
+            else {
+                own[(first, first)] = idle;
+                own[(second, second)] = idle;
+                continue;
+            };
+            let [x, y] = self.means[k];
+            let slope = facing.slope;
+            let push = side * jumps[k][1];
+            let gap = y - facing.axis - side * facing.clearance;
+            self.forms.gap[0] -= push * facing.by_force;
+            self.forms.compliance[0] -= push * facing.by_force_bend;
+            if symmetric {
+                doing[first] = [-slope, 1.0];
+                looking[first] = [-slope, 1.0];
+                residual[first] = gap;
+                by_force[first] = -side * facing.by_force;
+                own[(second, second)] = -1.0;
+                continue;
+            }
+            doing[first] = [1.0, 0.0];
+            doing[second] = [0.0, 1.0];
+            looking[second] = [-slope, 1.0];
+            residual[second] = gap;
+            by_force[second] = -side * facing.by_force;
+            match motion {
+                Motion::Slips(friction) if k < PADS => {
+                    own[(first, first)] = 1.0;
+                    own[(first, second)] = slope - friction * side;
+                    residual[first] = jumps[k][0] + slope * jumps[k][1] - friction * push;
+                    usual += 1;
                 }
-                Pad::Leans {
-                    side,
-                    facing,
-                    motion,
-                } => {
-                    let [x, y] = self.means[k];
-                    let slope = facing.axis_slope + side * facing.widening;
-                    let push = side * jumps[k][1];
-                    let gap = y - facing.axis - side * facing.clearance;
-                    self.forms.gap[0] -= push * facing.by_force;
-                    self.forms.compliance[0] -= push * facing.by_force_bend;
-                    if symmetric {
-                        doing[first] = [-slope, 1.0];
-                        looking[first] = [-slope, 1.0];
-                        residual[first] = gap;
-                        by_force[first] = -side * facing.by_force;
-                        own[(second, second)] = -1.0;
-                        continue;
+                Motion::Sticks if k < PADS => {
+                    looking[first] = [1.0, 0.0];
+                    residual[first] = x - was[k];
+                }
+                Motion::Slips(friction) => {
+                    if let Some((brink, _)) = &corner {
+                        let tilt = brink.mean[1] / brink.mean[0];
+                        own[(first, first)] = 1.0;
+                        own[(first, second)] = tilt - friction * side;
+                        residual[first] = jumps[k][0] + tilt * jumps[k][1] - friction * push;
                     }
-                    doing[first] = [1.0, 0.0];
-                    doing[second] = [0.0, 1.0];
-                    looking[second] = [-slope, 1.0];
-                    residual[second] = gap;
-                    by_force[second] = -side * facing.by_force;
-                    match motion {
-                        Motion::Slips(friction) => {
-                            looking[first] = [side * facing.widening_bend * jumps[k][1], 0.0];
-                            own[(first, first)] = 1.0;
-                            own[(first, second)] = slope - friction * side;
-                            residual[first] = jumps[k][0] + slope * jumps[k][1] - friction * push;
-                            usual += 1;
-                        }
-                        Motion::Sticks => {
-                            looking[first] = [1.0, 0.0];
-                            residual[first] = x - was[k];
-                        }
-                    }
+                    usual += 1;
+                }
+                Motion::Sticks => {
+                    own[(first, CORNER[2])] = 1.0;
+                    residual[first] = corner.map_or(0.0, |(_, moved)| moved);
+                    usual += 1;
                 }
             }
         }
         let product = |v: [f64; 2], m: &[f64; 3], w: [f64; 2]| {
             v[0] * (m[0] * w[0] + m[1] * w[1]) + v[1] * (m[1] * w[0] + m[2] * w[1])
         };
+        let leans_on_corner = corner.filter(|_| pads[PADS] != Pad::Away);
+        if leans_on_corner.is_some() {
+            // x(S_e) = x_e, which holds at every state.
+            looking[CORNER[2]] = [1.0, 0.0];
+        }
         // Pads against inner (c, F), both ways; against the reduced outer unknowns, both ways.
-        let mut inner_columns = SMatrix::<f64, PAD_UNKNOWNS, INNER>::zeros();
-        let mut inner_rows = SMatrix::<f64, PAD_UNKNOWNS, INNER>::zeros();
-        let mut outer_columns = SMatrix::<f64, PAD_UNKNOWNS, OUTER>::zeros();
-        let mut outer_rows = SMatrix::<f64, PAD_UNKNOWNS, OUTER>::zeros();
-        for p in 0..PAD_UNKNOWNS {
-            let k = p / 2;
+        let mut inner_columns = SMatrix::<f64, ALL, INNER>::zeros();
+        let mut inner_rows = SMatrix::<f64, ALL, INNER>::zeros();
+        let mut outer_columns = SMatrix::<f64, ALL, OUTER>::zeros();
+        let mut outer_rows = SMatrix::<f64, ALL, OUTER>::zeros();
+        for p in 0..ALL {
+            let k = (p / 2).min(PADS);
             for (vector, inner, outer) in [
                 (doing[p], &mut inner_columns, &mut outer_columns),
                 (looking[p], &mut inner_rows, &mut outer_rows),
@@ -156,6 +180,52 @@ impl PadForms {
                 own[(p, other)] += product(looking[p], &self.mutual[k][other / 2], doing[other]);
             }
         }
+        if let Some((brink, _)) = leans_on_corner {
+            let [first, second, place] = CORNER;
+            own[(place, place)] = brink.slope[0];
+            own[(second, place)] += looking[second][0] * brink.slope[0] + brink.slope[1];
+            // The place's column: what its motion does to all the others.
+            for i in 0..3 {
+                inner_columns[(place, i)] = brink.values[2 + i] * brink.twist;
+            }
+            for axis in 0..2 {
+                inner_columns[(place, 3 + axis)] = brink.fold[axis];
+                outer_columns[(place, 2 + axis)] = brink.values[axis] * brink.twist;
+            }
+            for p in 0..2 * PADS {
+                let along = looking[p][0] * brink.fold[0] + looking[p][1] * brink.fold[1];
+                own[(p, place)] += brink.passed[p / 2] * along;
+            }
+            if let Pad::Leans {
+                motion: Motion::Slips(_),
+                ..
+            } = pads[PADS]
+            {
+                // J_y δτ = g·δx̄'.
+                let tilt = brink.mean[1] / brink.mean[0];
+                let lever = jumps[PADS][1] / brink.mean[0];
+                let g = [-tilt * lever, lever];
+                let turn = g[0] * brink.mean_turn[0] + g[1] * brink.mean_turn[1];
+                let m = &brink.mean_give;
+                let give = [g[0] * m[0] + g[1] * m[1], g[0] * m[1] + g[1] * m[2]];
+                for i in 0..3 {
+                    inner_rows[(first, i)] += turn * brink.values[2 + i];
+                }
+                for axis in 0..2 {
+                    inner_rows[(first, 3 + axis)] += give[axis];
+                    outer_rows[(first, 2 + axis)] += turn * brink.values[axis];
+                }
+                for p in 0..PAD_UNKNOWNS {
+                    let passed = if p < 2 * PADS {
+                        brink.passed[p / 2]
+                    } else {
+                        0.5
+                    };
+                    own[(first, p)] += passed * (give[0] * doing[p][0] + give[1] * doing[p][1]);
+                }
+                own[(first, place)] += g[0] * brink.mean_bend[0] + g[1] * brink.mean_bend[1];
+            }
+        }
         let inner_factor = SymmetricFactor::new(&self.forms.inner_matrix());
         let right = self.forms.inner_right();
         let mut answers = right;
@@ -164,9 +234,9 @@ impl PadForms {
         inner_factor.solve_rows(&mut to_pads);
         own -= inner_rows * to_pads.transpose();
         // Columns: outer (dx, dy, θ_A, θ_B: through the inner ones too; x_B, y_B), and residual.
-        let mut seen = SMatrix::<f64, PAD_UNKNOWNS, 7>::zeros();
+        let mut seen = SMatrix::<f64, ALL, 7>::zeros();
         let through = inner_rows * answers.transpose();
-        for p in 0..PAD_UNKNOWNS {
+        for p in 0..ALL {
             for column in 0..OUTER {
                 seen[(p, column)] = outer_rows[(p, column)]
                     - if column < 4 {
@@ -191,7 +261,7 @@ impl PadForms {
         // Condensed matrix and residual of the reduced unknowns.
         let mut from_pads = outer_columns;
         let through = to_pads * right.transpose();
-        for p in 0..PAD_UNKNOWNS {
+        for p in 0..ALL {
             for column in 0..4 {
                 from_pads[(p, column)] -= through[(p, column)];
             }
@@ -256,22 +326,21 @@ impl Condensed {
     /// Steps of the element's inner unknowns and of its pads' J for steps of its ends.
     pub fn recover(
         &self,
-        pads: &[Pad; PADS],
+        pads: &[Pad; SLOTS],
         a: &Vector3<f64>,
         b: &Vector3<f64>,
         residual: f64,
-    ) -> (SVector<f64, INNER>, [[f64; 2]; PADS]) {
+    ) -> (SVector<f64, INNER>, [[f64; 2]; SLOTS]) {
         let outer = [b[0] - a[0], b[1] - a[1], a[2], b[2], b[0], b[1], residual];
         let pushed = -(self.pad_answers * SVector::from(outer));
         let inner = -(self.inner_answers.tr_mul(&SVector::from([
             outer[0], outer[1], outer[2], outer[3], residual,
         ])) + self.to_pads.tr_mul(&pushed));
-        let mut jumps = [[0.0; 2]; PADS];
+        let mut jumps = [[0.0; 2]; SLOTS];
         for (k, pad) in pads.iter().enumerate() {
-            if let Pad::Leans { side, facing, .. } = pad {
+            if let Pad::Leans { facing, .. } = pad {
                 jumps[k] = if self.symmetric {
-                    let slope = facing.axis_slope + side * facing.widening;
-                    [-slope * pushed[2 * k], pushed[2 * k]]
+                    [-facing.slope * pushed[2 * k], pushed[2 * k]]
                 } else {
                     [pushed[2 * k], pushed[2 * k + 1]]
                 };
@@ -281,70 +350,156 @@ impl Condensed {
     }
 }
 
-/// What the pads of an element do at their mean positions, from what they did and where; and by how
-/// much the condition that decides it is met, as a force.
-pub(super) fn decide(
-    walls: &[Wall],
-    top: &TopSeat,
-    held: &Held<'_>,
-    means: &[[f64; 2]; PADS],
-    was: &[f64],
-    search: f64,
-    symmetric: bool,
-) -> [(Pad, f64); PADS] {
-    std::array::from_fn(|k| {
-        let ([x, y], [jx, jy]) = (means[k], held.jumps[k]);
-        let Some(facing) = nearest(walls, top, held, means[k]) else {
-            return (Pad::Away, f64::INFINITY);
-        };
-        let aside = y - facing.axis;
-        let side = if jy != 0.0 {
-            jy.signum()
-        } else {
-            aside.signum()
-        };
-        let gap = facing.clearance - side * aside;
-        let push = side * jy;
-        let held_on = push - search * gap;
-        if held_on <= 0.0 {
-            return (Pad::Away, -held_on);
-        }
-        let slope = facing.axis_slope + side * facing.widening;
-        let (motion, by) = if symmetric || facing.friction == 0.0 {
-            (Motion::Slips(0.0), held_on)
-        } else {
-            let drag = jx + slope * jy;
-            let trial = drag + search * (x - was[k]);
-            let most = facing.friction * push * HOLDS;
-            if trial.abs() <= most {
-                (Motion::Sticks, most - trial.abs())
-            } else {
-                let way = Motion::Slips(trial.signum() * facing.friction);
-                (way, trial.abs() - most)
-            }
-        };
-        let pad = Pad::Leans {
-            side,
-            facing,
-            motion,
-        };
-        (pad, by)
-    })
+/// What decides what a pad does, besides its own place and force.
+pub(super) struct Judge<'a> {
+    pub walls: &'a [Wall],
+    pub top: &'a TopSeat,
+    /// ρ of the search.
+    pub search: f64,
+    pub symmetric: bool,
+    /// By how much all clearances are widened.
+    pub slack: f64,
 }
 
-/// The wall nearest to a place of the axis.
-fn nearest(walls: &[Wall], top: &TopSeat, held: &Held<'_>, [x, y]: [f64; 2]) -> Option<Facing> {
-    let compliance = held.element.points[0].axial_compliance;
-    walls
-        .iter()
-        .filter_map(|wall| wall.face(x, held.inner[3], compliance, top))
-        .min_by(|a, b| {
-            let room = |f: &Facing| f.clearance - (y - f.axis).abs();
-            room(a).total_cmp(&room(b))
+impl Judge<'_> {
+    /// What the pads of an element do at their mean positions, from what they did and where they
+    /// `were`; and by how much the condition that decides it is met, as a force. `corner`: the wall
+    /// whose corner lies in the element, its tilt τ there, and how far its place has moved towards −x.
+    pub fn decide(
+        &self,
+        held: &Held<'_>,
+        means: &[[f64; 2]; SLOTS],
+        were: &[f64],
+        corner: Option<&AtCorner>,
+    ) -> [(Pad, f64); SLOTS] {
+        std::array::from_fn(|k| {
+            let (place, jump) = (means[k], held.jumps[k]);
+            let facing = match (k, corner) {
+                (PADS, None) => None,
+                (PADS, Some(corner)) => Some(self.surface(&self.walls[corner.wall], held, place)),
+                _ => self.nearest(held, place),
+            };
+            let Some(facing) = facing else {
+                return (Pad::Away, f64::INFINITY);
+            };
+            let aside = place[1] - facing.axis;
+            let side = if jump[1] != 0.0 {
+                jump[1].signum()
+            } else {
+                aside.signum()
+            };
+            let gap = facing.clearance - side * aside;
+            let push = side * jump[1];
+            let held_on = push - self.search * gap;
+            if held_on <= 0.0 {
+                return (Pad::Away, -held_on);
+            }
+            let (motion, by) = if self.symmetric || facing.friction == 0.0 {
+                (Motion::Slips(0.0), held_on)
+            } else {
+                let (slope, moved) = match (k, corner) {
+                    (PADS, Some(corner)) => (corner.tilt, corner.moved),
+                    _ => (facing.slope, place[0] - were[k]),
+                };
+                let drag = jump[0] + slope * jump[1];
+                let trial = drag + self.search * moved;
+                let most = facing.friction * push * HOLDS;
+                if trial.abs() <= most {
+                    (Motion::Sticks, most - trial.abs())
+                } else {
+                    let way = Motion::Slips(trial.signum() * facing.friction);
+                    (way, trial.abs() - most)
+                }
+            };
+            let pad = Pad::Leans {
+                side,
+                facing,
+                motion,
+            };
+            (pad, by)
         })
+    }
+
+    /// What a pad did, where the axis is now.
+    pub fn kept(
+        &self,
+        pad: &Pad,
+        k: usize,
+        held: &Held<'_>,
+        place: [f64; 2],
+        corner: Option<&AtCorner>,
+    ) -> Pad {
+        let facing = match (k, corner) {
+            (PADS, None) => None,
+            (PADS, Some(corner)) => Some(self.surface(&self.walls[corner.wall], held, place)),
+            _ => self.nearest(held, place),
+        };
+        match (pad, facing) {
+            (Pad::Leans { side, motion, .. }, Some(facing)) => Pad::Leans {
+                side: *side,
+                facing,
+                motion: *motion,
+            },
+            _ => Pad::Away,
+        }
+    }
+
+    fn surface(&self, wall: &Wall, held: &Held<'_>, place: [f64; 2]) -> Facing {
+        let compliance = held.element.points[0].axial_compliance;
+        let facing = wall.surface(place[0], held.inner[3], compliance, self.top);
+        Facing {
+            clearance: facing.clearance + self.slack,
+            ..facing
+        }
+    }
+
+    /// The nearest wall that lies beside the whole pad.
+    fn nearest(&self, held: &Held<'_>, place: [f64; 2]) -> Option<Facing> {
+        let open = 1.0 + held.inner[3] * held.element.points[0].axial_compliance;
+        let half = 0.5 * held.element.length / PADS as f64 * open;
+        self.walls
+            .iter()
+            .filter(|wall| wall.covers(place[0], half, self.top))
+            .map(|wall| self.surface(wall, held, place))
+            .min_by(|a, b| {
+                let room = |f: &Facing| f.clearance - (place[1] - f.axis).abs();
+                room(a).total_cmp(&room(b))
+            })
+    }
+}
+
+/// A corner in an element.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct AtCorner {
+    /// The wall whose corner it is.
+    pub wall: usize,
+    /// Which end of it.
+    pub end: usize,
+    /// Its place along the column, in units of its length.
+    pub place: f64,
+    /// How far that is from where it was when the step began.
+    pub strayed: f64,
+    /// τ of [`super::corner`].
+    pub tilt: f64,
+    /// How far what was at the corner has moved along x since the step began.
+    pub moved: f64,
 }
 
 impl Pad {
+    /// A number for what it does; 0: nothing.
+    pub fn number(&self) -> u64 {
+        match self {
+            Pad::Away => 0,
+            Pad::Leans { side, motion, .. } => {
+                let way = match motion {
+                    Motion::Sticks => 1,
+                    Motion::Slips(friction) => 2 + u64::from(*friction > 0.0),
+                };
+                2 * way + u64::from(*side > 0.0)
+            }
+        }
+    }
+
     /// Whether it does something else than `other`.
     pub fn differs(&self, other: &Pad) -> bool {
         match (self, other) {
@@ -358,18 +513,6 @@ impl Pad {
                 },
             ) => side != other_side || motion != other_motion,
             _ => true,
-        }
-    }
-
-    /// The same doing where the axis is now.
-    pub fn kept(&self, walls: &[Wall], top: &TopSeat, held: &Held<'_>, mean: [f64; 2]) -> Pad {
-        match (self, nearest(walls, top, held, mean)) {
-            (Pad::Leans { side, motion, .. }, Some(facing)) => Pad::Leans {
-                side: *side,
-                facing,
-                motion: *motion,
-            },
-            _ => Pad::Away,
         }
     }
 }

@@ -2,9 +2,8 @@
 
 use super::basis::{GAUSS_AT, GAUSS_WEIGHT, values};
 use super::element::Element;
-use super::guided::Leaning;
 use super::layout::{Column, ColumnState};
-use super::lean::PADS;
+use super::lean::{PADS, SLOTS};
 
 /// Stations in an element.
 const STATIONS: usize = 4;
@@ -52,13 +51,14 @@ pub struct Peak {
 }
 
 impl Column {
-    /// The jumps of the force over the pads of an element.
-    fn pushes(&self, state: &ColumnState, e: usize) -> [[f64; 2]; PADS] {
-        if self.leaning.is_some() {
-            Leaning::jumps(&state.side, e)
-        } else {
-            [[0.0; 2]; PADS]
-        }
+    /// The jumps of the force in an element, and where the corner of a guide is.
+    fn pushes(&self, state: &ColumnState, e: usize) -> ([[f64; 2]; SLOTS], Option<f64>) {
+        let Some(leaning) = &self.leaning else {
+            return ([[0.0; 2]; SLOTS], None);
+        };
+        let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
+        let held = leaning.held_with_corner(self, state, &a, &b, e);
+        (held.jumps, held.corner)
     }
 
     /// Sections of the column at `state`, four in an element and one at the top, from bottom to
@@ -152,13 +152,17 @@ impl Column {
 /// Force at `t` in an element with the jumps of its pads.
 fn force_at(
     inner: &nalgebra::SVector<f64, { super::element::INNER }>,
-    jumps: &[[f64; 2]; PADS],
+    (jumps, corner): &([[f64; 2]; SLOTS], Option<f64>),
     t: f64,
 ) -> (f64, f64) {
     let at = 0.5 * (1.0 + t) * PADS as f64;
     let mut force = (inner[3], inner[4]);
     for (k, jump) in jumps.iter().enumerate() {
-        let share = (at - k as f64).clamp(0.0, 1.0);
+        let share = if k < PADS {
+            (at - k as f64).clamp(0.0, 1.0)
+        } else {
+            f64::from(corner.is_some_and(|corner| t > corner))
+        };
         force.0 += share * jump[0];
         force.1 += share * jump[1];
     }

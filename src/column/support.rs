@@ -85,7 +85,6 @@ fn wall(setup: &Setup, guide: &Guide, scale: Scale) -> Wall {
         },
         to: length(guide.to),
         from_top: guide.fixed_to == FixedTo::Top,
-        corner: length(half_wire),
         friction: guide.friction,
         may_touch: guide.touching_allowed,
     }

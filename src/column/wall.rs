@@ -4,13 +4,8 @@
 //! clearance. It changes with the compression, as the coil grows: with D² + (p² − p'²)/π² for the
 //! square of the mean diameter at pitch p' (ends kept from rotating), p' = p(1 + F_x/EA).
 //!
-//! Where a guide ends between the seats, its corner is a place where the coil catches. A round wire
-//! of diameter d leans on a sharp corner from all sides: its axis runs around it on a circle of
-//! radius d/2, so that beyond the end by δ the clearance opens as `d/2 − √((d/2)² − δ²)`; from
-//! [`STEEPEST`] on it goes on straight.
-
-/// Slope at which the circle around a corner goes over into a straight line: 60°.
-const STEEPEST: f64 = 1.732_050_807_568_877_2;
+//! Where a guide ends between the seats, its corner is a place where the coil catches: see
+//! [`super::corner`].
 
 /// A guide in the column's units.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -35,8 +30,6 @@ pub struct Wall {
     pub to: f64,
     /// Whether it is carried by the top seat, and counted downwards from it.
     pub from_top: bool,
-    /// Radius on which the wire's axis runs around its ends.
-    pub corner: f64,
     /// Coefficient of friction.
     pub friction: f64,
     /// Whether it may be touched.
@@ -56,16 +49,12 @@ pub(super) struct TopSeat {
 pub(super) struct Facing {
     /// y_g, and its derivative by x.
     pub axis: f64,
-    pub axis_slope: f64,
-    /// c, its derivatives by x (two) and by F_x (two).
+    pub slope: f64,
+    /// c, and its derivatives by F_x.
     pub clearance: f64,
-    pub widening: f64,
-    pub widening_bend: f64,
     pub by_force: f64,
     pub by_force_bend: f64,
     pub friction: f64,
-    /// Whether the place is on a corner.
-    pub at_corner: bool,
     /// Whether it rides on the top seat.
     pub from_top: bool,
 }
@@ -84,7 +73,6 @@ impl Wall {
             from: f64::NEG_INFINITY,
             to: f64::INFINITY,
             from_top: false,
-            corner: 0.0,
             friction: 0.0,
             may_touch: true,
         }
@@ -95,14 +83,8 @@ impl Wall {
         self.from == f64::NEG_INFINITY && self.to == f64::INFINITY && !self.from_top
     }
 
-    /// The wall at x under the axial force F_x; `None` beyond its ends.
-    pub(super) fn face(
-        &self,
-        x: f64,
-        force: f64,
-        compliance: f64,
-        top: &TopSeat,
-    ) -> Option<Facing> {
+    /// The surface at x under the axial force F_x, its ends left out of account.
+    pub(super) fn surface(&self, x: f64, force: f64, compliance: f64, top: &TopSeat) -> Facing {
         // Growth: R(o) = ½√(D² + p²(1 − o²)/π²), o = 1 + F_x/EA.
         let open = 1.0 + force * compliance;
         let share = (self.pitch / std::f64::consts::PI).powi(2);
@@ -119,78 +101,48 @@ impl Wall {
         } else {
             (radius - self.half_wire - self.radius, 1.0)
         };
-        let (place, sign, axis, axis_slope) = if self.from_top {
+        let (axis, slope) = if self.from_top {
             let slope = top.slope + self.slope;
-            (
-                top.x - x,
-                -1.0,
-                top.y + self.offset + slope * (x - top.x),
-                slope,
-            )
+            (top.y + self.offset + slope * (x - top.x), slope)
         } else {
-            (x, 1.0, self.offset + self.slope * x, self.slope)
+            (self.offset + self.slope * x, self.slope)
         };
-        let (beyond, outward) = if place > self.to {
-            (place - self.to, sign)
-        } else if place < self.from {
-            (self.from - place, -sign)
-        } else {
-            (0.0, 0.0)
-        };
-        let (opening, rate, rate_bend) = self.corner_at(beyond)?;
-        Some(Facing {
+        Facing {
             axis,
-            axis_slope,
-            clearance: play + opening,
-            widening: outward * rate,
-            widening_bend: rate_bend,
+            slope,
+            clearance: play,
             by_force: sense * turn * compliance,
             by_force_bend: sense * bend * compliance * compliance,
             friction: self.friction,
-            at_corner: beyond > 0.0,
             from_top: self.from_top,
+        }
+    }
+
+    /// Whether it lies beside the whole stretch from x − half to x + half.
+    pub(super) fn covers(&self, x: f64, half: f64, top: &TopSeat) -> bool {
+        let place = if self.from_top { top.x - x } else { x };
+        place - half >= self.from && place + half <= self.to
+    }
+
+    /// Where its corners are along x: those ends that lie between the seats.
+    pub(super) fn corners(&self, top: &TopSeat) -> [Option<f64>; 2] {
+        [self.from, self.to].map(|end| {
+            let x = if self.from_top { top.x - end } else { end };
+            end.is_finite().then_some(x)
         })
     }
 
-    /// Whether any of it lies beside the stretch between two places, corners included.
+    /// Whether any of it lies beside the stretch between two places.
     pub(super) fn reaches(&self, one: f64, other: f64, top: &TopSeat) -> bool {
         let place = |x: f64| if self.from_top { top.x - x } else { x };
         let (one, other) = (place(one), place(other));
-        let margin = 4.0 * self.corner;
-        one.max(other) >= self.from - margin && one.min(other) <= self.to + margin
+        one.max(other) >= self.from && one.min(other) <= self.to
     }
 
     /// Room of an axis at (x, y), its ends left out of account.
     pub(super) fn room(&self, x: f64, y: f64, force: f64, compliance: f64, top: &TopSeat) -> f64 {
-        let endless = Wall {
-            from: f64::NEG_INFINITY,
-            to: f64::INFINITY,
-            ..*self
-        };
-        endless
-            .face(x, force, compliance, top)
-            .map_or(f64::INFINITY, |f| f.clearance - (y - f.axis).abs())
-    }
-
-    /// How far the clearance has opened at a distance beyond the end, with two derivatives; `None`
-    /// where nothing is to be leaned on any more.
-    fn corner_at(&self, beyond: f64) -> Option<(f64, f64, f64)> {
-        let r = self.corner;
-        if beyond == 0.0 {
-            // Its curvature belongs to the far side.
-            return Some((0.0, 0.0, 0.0));
-        }
-        // tan of the slope angle is δ/√(r² − δ²): δ = r sin(60°) there.
-        let last = r * STEEPEST / (1.0 + STEEPEST * STEEPEST).sqrt();
-        if beyond > 4.0 * r {
-            None
-        } else if beyond > last {
-            let height = r - (r * r - last * last).sqrt();
-            Some((height + STEEPEST * (beyond - last), STEEPEST, 0.0))
-        } else {
-            let root = (r * r - beyond * beyond).sqrt();
-            Some((r - root, beyond / root, r * r / root.powi(3)))
-        }
+        let facing = self.surface(x, force, compliance, top);
+        facing.clearance - (y - facing.axis).abs()
     }
 }
 
@@ -210,7 +162,6 @@ mod tests {
             from: f64::NEG_INFINITY,
             to: 0.4,
             from_top: false,
-            corner: 0.02,
             friction: 0.1,
             may_touch: true,
         }
@@ -223,71 +174,42 @@ mod tests {
             y: 0.01,
             slope: 0.02,
         };
-        let (compliance, step) = (0.02, 1e-6);
-        for from_top in [false, true] {
-            for around in [false, true] {
-                let wall = Wall {
-                    from_top,
-                    around,
-                    radius: if around { 0.3 } else { 0.2 },
-                    ..pilot()
-                };
-                for x in [0.1, 0.3, 0.405, 0.415, 0.42, 0.49, 0.495, 0.7] {
-                    for force in [0.0, -8.0, -20.0] {
-                        let Some(here) = wall.face(x, force, compliance, &top) else {
-                            continue;
-                        };
-                        let at = |x: f64, f: f64| wall.face(x, f, compliance, &top).expect("near");
-                        let (left, right) = (at(x - step, force), at(x + step, force));
-                        let (less, more) = (at(x, force - 1e-3), at(x, force + 1e-3));
-                        let check = |difference: f64, exact: f64, tolerance: f64| {
-                            assert!(
-                                (difference - exact).abs() < tolerance,
-                                "{x} {force}: {difference} {exact}"
-                            );
-                        };
-                        check(
-                            (right.clearance - left.clearance) / (2.0 * step),
-                            here.widening,
-                            1e-6,
-                        );
-                        check(
-                            (right.widening - left.widening) / (2.0 * step),
-                            here.widening_bend,
-                            1e-2 * here.widening_bend.max(1e-2),
-                        );
-                        check(
-                            (right.axis - left.axis) / (2.0 * step),
-                            here.axis_slope,
-                            1e-8,
-                        );
-                        check(
-                            (more.clearance - less.clearance) / 2e-3,
-                            here.by_force,
-                            1e-9,
-                        );
-                        check(
-                            (more.by_force - less.by_force) / 2e-3,
-                            here.by_force_bend,
-                            1e-8,
-                        );
-                    }
-                }
+        let compliance = 0.02;
+        for (from_top, around) in [(false, false), (false, true), (true, false), (true, true)] {
+            let radius = if around { 0.3 } else { 0.2 };
+            let wall = Wall {
+                from_top,
+                around,
+                radius,
+                ..pilot()
+            };
+            for force in [0.0, -8.0, -20.0] {
+                let at = |x: f64, f: f64| wall.surface(x, f, compliance, &top);
+                let here = at(0.3, force);
+                let axis = (at(0.4, force).axis - at(0.2, force).axis) / 0.2;
+                approx::assert_abs_diff_eq!(axis, here.slope, epsilon = 1e-14);
+                let (less, more) = (at(0.3, force - 1e-3), at(0.3, force + 1e-3));
+                let by = (more.clearance - less.clearance) / 2e-3;
+                approx::assert_abs_diff_eq!(by, here.by_force, epsilon = 1e-9);
+                let bend = (more.by_force - less.by_force) / 2e-3;
+                approx::assert_abs_diff_eq!(bend, here.by_force_bend, epsilon = 1e-8);
             }
         }
     }
 
     #[test]
-    fn it_ends() {
-        let wall = pilot();
-        assert!(wall.face(0.49, 0.0, 0.0, &TopSeat::default()).is_none());
-        assert!(
-            wall.face(0.41, 0.0, 0.0, &TopSeat::default())
-                .is_some_and(|f| f.at_corner)
-        );
-        let inside = wall
-            .face(0.2, 0.0, 0.0, &TopSeat::default())
-            .expect("covered");
+    fn it_ends_where_it_ends() {
+        let (wall, top) = (pilot(), TopSeat::default());
+        assert!(wall.covers(0.39, 0.009, &top) && !wall.covers(0.39, 0.011, &top));
+        assert_eq!(wall.corners(&top), [None, Some(0.4)]);
+        let inside = wall.surface(0.2, 0.0, 0.0, &top);
         approx::assert_abs_diff_eq!(inside.clearance, 0.25 - 0.02 - 0.2, epsilon = 1e-15);
+        let hung = Wall {
+            from_top: true,
+            ..wall
+        };
+        let top = TopSeat { x: 0.9, ..top };
+        assert_eq!(hung.corners(&top), [None, Some(0.5)]);
+        assert!(hung.covers(0.7, 0.1, &top) && !hung.covers(0.45, 0.1, &top));
     }
 }

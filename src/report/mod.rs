@@ -4,6 +4,8 @@
 mod csv;
 mod json;
 mod layout;
+mod leaning;
+mod losses;
 mod materials;
 mod names;
 mod numbers;

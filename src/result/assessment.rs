@@ -159,6 +159,9 @@ pub struct Limit {
     pub required_margin: f64,
     /// Error estimate, m; `null` where nothing is computed.
     pub error_m: Option<Metre>,
+    /// Whether it is told for information only: nothing is required of it, and it does not govern. The
+    /// critical deflection of the perfect column is, where a guide is there to be leaned on.
+    pub for_information: bool,
     /// Whether it is the governing limit.
     pub governs: bool,
     /// Whether it lies beyond solid, so that the spring never gets there.

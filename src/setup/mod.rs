@@ -70,12 +70,19 @@ impl Setup {
             LimitKind::LiftOff => flat(|_| true),
             LimitKind::Slide => flat(|seat| seat.friction.is_some()),
             LimitKind::GuideTouch => self.guides.iter().any(|guide| !guide.touching_allowed),
+            LimitKind::Critical => !self.may_lean(),
             LimitKind::BoreFilled => self
                 .guides
                 .iter()
                 .any(|guide| guide.kind == GuideKind::Bore),
             _ => self.duty.has(limit),
         }
+    }
+
+    /// Whether the spring may lean on a guide: buckling is then what the guide is there for, and the
+    /// critical deflection of the perfect column is no limit.
+    pub fn may_lean(&self) -> bool {
+        self.guides.iter().any(|guide| guide.touching_allowed)
     }
 
     /// The largest deflection that any limit of this case must reach, m.

@@ -16,17 +16,16 @@ use super::{
 };
 use nalgebra::SVector;
 
+/// Smallest step in which contacts are taken in at the beginning of a path.
+const SMALLEST_EASING: f64 = 1e-3;
+/// Distances along the tangent beyond which a point on the plane belongs to another path.
+const FAR_AWAY: f64 = 30.0;
 /// Step at which a kink is looked for where Newton fails.
 const AT_A_KINK: f64 = 1e-9;
 /// How far ahead the kink may lie.
 const BEYOND_A_KINK: f64 = 1e-6;
 /// First step behind a kink.
 const BEHIND_A_KINK: f64 = 1e-4;
-/// A point on the plane ahead that is as many steps away, and at least [`FAR`], is one of another path:
-/// where a path has kinks, it may end at that plane.
-const FARTHEST: f64 = 10.0;
-/// Distance that behind the sharpest kink a path of short steps does not come to in one.
-const FAR: f64 = 1e-3;
 /// Times Newton begins anew where its last step went over a kink.
 const MOST_AGAIN: usize = 4;
 /// Kinks turned at before a path is given up.
@@ -47,6 +46,8 @@ pub struct PathPoint<const B: usize, const I: usize> {
     pub load_direction: f64,
     /// Negative eigenvalues of the tangent matrix.
     pub negatives: u32,
+    /// Number of the one-sided laws that hold there.
+    pub regime: u64,
     /// Distance along this point's tangent at which the next point lies; 0 at the last.
     pub distance: f64,
 }
@@ -135,17 +136,7 @@ pub fn follow<const B: usize, const I: usize>(
         let Some((base, earlier)) = points.split_last_mut() else {
             return (Outcome::Lost(trouble), walk);
         };
-        let found = at_distance(system, newton, earlier.last(), base, step).and_then(|next| {
-            let apart = apart(system, base, &next);
-            if system.has_kinks() && apart > (FARTHEST * step).max(FAR) {
-                return Err(NotConverged {
-                    iterations: newton.iterations,
-                    last_step: apart,
-                });
-            }
-            Ok(next)
-        });
-        let next = match found {
+        let mut next = match at_distance(system, newton, earlier.last(), base, step) {
             Ok(next) => next,
             Err(failed) => {
                 trouble = failed;
@@ -184,6 +175,15 @@ pub fn follow<const B: usize, const I: usize>(
         }
         base.distance = step;
         walk.steps += 1;
+        if base.regime != next.regime && crosses_another(base, &next) {
+            // No other path is crossed: over the kink this one turns sharply round.
+            next.direction.scale(-1.0);
+            next.load_direction = -next.load_direction;
+            walk.corners.push(points.len());
+            step = BEHIND_A_KINK;
+            points.push(next);
+            continue;
+        }
         let by_iterations = 4.0 / newton.iterations.max(1) as f64;
         let by_turn = 0.6 * settings.largest_turn / turn.max(1e-12);
         step = (step * by_iterations.min(by_turn).clamp(0.5, 1.6)).min(settings.largest_step);
@@ -269,6 +269,14 @@ pub(super) fn at_distance<const B: usize, const I: usize>(
         newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
         iterations += newton.iterations;
         let point = complete(system, newton, state, load, &row, d);
+        let apart = apart(system, base, &point);
+        if apart > FAR_AWAY * distance {
+            // On the plane, but of another path.
+            return Err(NotConverged {
+                iterations,
+                last_step: apart,
+            });
+        }
         if !system.changed() {
             newton.iterations = iterations;
             return Ok(point);
@@ -292,6 +300,7 @@ pub(super) fn complete<const B: usize, const I: usize>(
     d: f64,
 ) -> PathPoint<B, I> {
     let negatives = newton.evaluate(system, &state, load);
+    let regime = system.regime();
     let mut direction = system.zero();
     let mut load_direction = newton.tangent(system, row, d, &mut direction);
     let weight = 1.0 / direction.nodes.len() as f64;
@@ -306,6 +315,7 @@ pub(super) fn complete<const B: usize, const I: usize>(
         direction,
         load_direction,
         negatives,
+        regime,
         distance: 0.0,
     }
 }
@@ -322,16 +332,54 @@ pub fn start<const B: usize, const I: usize>(
 ) -> Result<PathPoint<B, I>, NotConverged> {
     let mut state = guess.clone();
     if system.has_kinks() {
-        system.ease(true);
-        let near = newton.solve_at_load(system, &mut state, load);
-        system.ease(false);
-        near?;
+        begin(system, newton, &mut state, load)?;
+    } else {
+        newton.solve_at_load(system, &mut state, load)?;
     }
-    newton.solve_at_load(system, &mut state, load)?;
     system.depart(&state);
     let row = vec![SVector::zeros(); system.links() + 1];
     let d = 1.0 / system.load_scale();
     Ok(complete(system, newton, state, load, &row, d))
+}
+
+/// The state at `load` from a guess that may lie inside of what it must stay out of: without contacts
+/// first, then with contacts that are entered less and less.
+fn begin<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    state: &mut Unknowns<B, I>,
+    load: f64,
+) -> Result<(), NotConverged> {
+    system.depart(state);
+    system.ease(1.0, state);
+    let near = newton.solve_at_load(system, state, load);
+    if near.is_err() {
+        system.ease(0.0, state);
+        return near;
+    }
+    let free = state.clone();
+    let (mut share, mut step) = (1.0, 1.0);
+    while share > 0.0 {
+        let next: f64 = if step < share { share - step } else { 0.0 };
+        let mut trial = state.clone();
+        system.depart(state);
+        system.ease(next, &free);
+        match newton.solve_at_load(system, &mut trial, load) {
+            Ok(()) => {
+                state.copy_from(&trial);
+                share = next;
+                step *= 2.0;
+            }
+            Err(failed) => {
+                step *= 0.5;
+                if step < SMALLEST_EASING {
+                    system.ease(0.0, &free);
+                    return Err(failed);
+                }
+            }
+        }
+    }
+    Ok(())
 }
 
 /// The same point with its direction turned round, to go back from: what friction held up to now

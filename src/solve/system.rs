@@ -81,6 +81,11 @@ pub trait System<const B: usize, const I: usize> {
         false
     }
 
+    /// A number for the one-sided laws that held in the last assembly: over a kink it changes.
+    fn regime(&self) -> u64 {
+        0
+    }
+
     /// Takes the kink for passed that lies between `state`, last assembled, and `beyond`, a state
     /// extrapolated from it: the next assembly is that of the path behind the kink. Gives the share of the
     /// way at which it lies; `None` where there is none.
@@ -94,9 +99,10 @@ pub trait System<const B: usize, const I: usize> {
         None
     }
 
-    /// Leaves contacts that come and go out of account, to find a state near which to begin, or takes
-    /// them back in.
-    fn ease(&mut self, _eased: bool) {}
+    /// Sets how far contacts that come and go give way, to find a state to begin with: 1 leaves them
+    /// out of account, shares below let them be entered by that share of what `state`, found without
+    /// them, does; 0 takes them as they are.
+    fn ease(&mut self, _share: f64, _state: &Unknowns<B, I>) {}
 
     /// Evaluates residual and tangent at `state` under the load `load`, and remembers what
     /// [`System::recover`] needs. Does not allocate.

@@ -27,6 +27,9 @@ fn the_shape_of_supports_and_guides_is_kept() {
         "planes",
         "effective_end_constant",
         "support_sensitivity",
+        "guide_answer",
+        "seat_loads",
+        "stroke",
     ]
     .into_iter()
     .map(|key| (key.to_owned(), all[key].clone()))
@@ -92,7 +95,7 @@ fn quantities_end_in_their_unit() {
         "_per_k",
         "_kg_per_m3",
     ];
-    const PURE: [&str; 25] = [
+    const PURE: [&str; 32] = [
         "spring_index",
         "slenderness",
         "active_coils",
@@ -118,6 +121,13 @@ fn quantities_end_in_their_unit() {
         "relative_change_error",
         "ground_share",
         "friction",
+        "guide_coil_place",
+        "guide_places",
+        "first_touch_place",
+        "side",
+        "closes_within",
+        "unstable_set_deflection",
+        "unstable_dead_load",
     ];
     fn walk(value: &Value, found: &mut Vec<String>) {
         match value {
@@ -145,30 +155,41 @@ fn quantities_end_in_their_unit() {
 
 #[test]
 fn the_table_reads_back_digit_for_digit() {
-    let path = assessment(Shape::Falling).imperfect_column.unwrap().path;
-    let table = report::csv(&path).unwrap();
-    let mut reader = csv::Reader::from_reader(table.as_slice());
-    let columns = reader.headers().unwrap().len();
-    assert_eq!(columns, 15);
-    let rows: Vec<Vec<f64>> = reader
-        .records()
-        .map(|row| {
-            row.unwrap()
-                .iter()
-                .map(|cell| cell.parse().unwrap())
-                .collect()
-        })
-        .collect();
-    assert_eq!(rows.len(), path.points.len());
-    for (row, point) in rows.iter().zip(&path.points) {
-        let PathPoint {
-            deflection_m,
-            force_n,
-            bow_m,
-            wire_stress_pa,
-            ..
-        } = *point;
-        assert_eq!([row[0], row[2], row[3]], [deflection_m, force_n, bow_m]);
-        assert_eq!(row[12], wire_stress_pa);
+    for path in [
+        assessment(Shape::Falling).imperfect_column.unwrap().path,
+        in_every_support().imperfect_column.unwrap().path,
+    ] {
+        let table = report::csv(&path).unwrap();
+        let mut reader = csv::Reader::from_reader(table.as_slice());
+        let columns = reader.headers().unwrap().clone();
+        assert_eq!(columns.len(), 29);
+        let rows: Vec<csv::StringRecord> = reader.records().map(|row| row.unwrap()).collect();
+        assert_eq!(rows.len(), path.points.len());
+        for (row, point) in rows.iter().zip(&path.points) {
+            let text = |name: &str| &row[columns.iter().position(|c| c == name).unwrap()];
+            // An empty cell where there is no number.
+            let cell = |name: &str| (!text(name).is_empty()).then(|| text(name).parse().unwrap());
+            let PathPoint {
+                deflection_m,
+                force_n,
+                bow_m,
+                wire_stress_pa,
+                guide_force_n,
+                guide_room_m,
+                bottom_line_m,
+                ..
+            } = *point;
+            for (name, value) in [
+                ("deflection_m", Some(deflection_m)),
+                ("force_n", Some(force_n)),
+                ("bow_m", Some(bow_m)),
+                ("wire_stress_pa", Some(wire_stress_pa)),
+                ("guide_force_n", Some(guide_force_n)),
+                ("guide_room_m", guide_room_m),
+                ("bottom_line_m", bottom_line_m),
+            ] {
+                assert_eq!(cell(name), value, "{name}");
+            }
+        }
     }
 }

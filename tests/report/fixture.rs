@@ -45,7 +45,21 @@ fn point(deflection_m: f64, force_n: f64, bow_m: f64) -> PathPoint {
         top_rotation_rad: 0.0,
         bottom_moment_n_m: 0.4 * force_n * bow_m,
         top_moment_n_m: -0.4 * force_n * bow_m,
-        transverse_force_n: 0.0,
+        transverse_force_n: 0.02 * force_n,
+        bottom_thrust_n: 0.02 * force_n,
+        top_thrust_n: -0.02 * force_n,
+        bottom_line_m: (force_n != 0.0).then_some(0.4 * bow_m),
+        top_line_m: (force_n != 0.0).then_some(-0.4 * bow_m),
+        bottom_lift_rad: 0.0,
+        top_lift_rad: 0.0,
+        guide_room_m: None,
+        guide_force_n: 0.0,
+        guide_coil_force_n: 0.0,
+        guide_coil_place: 0.0,
+        guide_places: 0,
+        guide_longest_m: 0.0,
+        guide_corner_force_n: 0.0,
+        guide_friction_n: 0.0,
         rate_n_per_m: RATE,
         wire_stress_pa: 1.9e6 * force_n,
         unstable_set_deflection: 0,
@@ -406,6 +420,9 @@ pub fn assessment(shape: Shape) -> Assessment {
             None
         },
         snap: None,
+        guide_answer: None,
+        seat_loads: None,
+        stroke: None,
         absolute_stability: AbsoluteStability {
             formula: Some(false),
             formula_below_m: Some(0.1032),
@@ -555,5 +572,126 @@ pub fn in_every_support() -> Assessment {
         ],
         sentence: "An invented advice.".into(),
     });
+    bear(&mut all);
     all
+}
+
+/// What guides and seats bear, and a stroke with friction: made up.
+fn bear(all: &mut Assessment) {
+    const TOUCH: f64 = 0.031;
+    let leaning_hard = |point: &mut PathPoint| {
+        let over = (point.deflection_m - TOUCH).max(0.0);
+        point.guide_room_m = Some(if over > 0.0 { 0.0 } else { 0.001 - point.bow_m });
+        point.guide_force_n = 900.0 * over;
+        point.guide_coil_force_n = 600.0 * over;
+        point.guide_coil_place = 0.31;
+        point.guide_places = 2 * u32::from(over > 0.0);
+        point.guide_longest_m = 2.0 * over;
+        point.guide_corner_force_n = 150.0 * over;
+        point.guide_friction_n = 0.12 * 900.0 * over;
+    };
+    let column = all.imperfect_column.as_mut().expect("a path");
+    let path = &mut column.path;
+    path.points.iter_mut().for_each(leaning_hard);
+    for mark in &mut path.marks {
+        leaning_hard(&mut mark.point);
+    }
+    for (name, q) in [
+        ("first_touch", 0.0006),
+        ("line_contact", 0.0014),
+        ("second_place", 0.0011),
+        ("lift_off", 0.003),
+        ("slide", 0.0045),
+        ("guide_touch", 0.0009),
+        ("loose_flat", 0.0052),
+        ("seated", 0.00004),
+    ] {
+        let mut point = bowed(Shape::Rising, q);
+        leaning_hard(&mut point);
+        path.marks.push(mark(name, point));
+    }
+    path.marks
+        .sort_by(|a, b| a.point.bow_m.total_cmp(&b.point.bow_m));
+    let path = path.clone();
+    let of = |name: &str| {
+        let mark = path.marks.iter().find(|mark| mark.name == name);
+        mark.expect("a mark").point
+    };
+    for kind in [LimitKind::LiftOff, LimitKind::Slide, LimitKind::GuideTouch] {
+        let at = of(kind.key());
+        let reached = Some((at.deflection_m, at.force_n));
+        all.limits.push(limit(kind, reached, "an invented note"));
+    }
+    all.limits.push(limit(
+        LimitKind::BoreFilled,
+        Some((0.0995, RATE * 0.0995)),
+        "an invented note",
+    ));
+    let at = |limit: &Limit| limit.deflection_m.unwrap_or(f64::INFINITY);
+    all.limits.sort_by(|a, b| at(a).total_cmp(&at(b)));
+
+    let pad = |from: f64, to: f64, side: f64, force_n: f64| Leaning {
+        from_m: from,
+        to_m: to,
+        side,
+        force_n_per_m: force_n / (to - from),
+        at_corner: false,
+    };
+    let working = of("working");
+    all.guide_answer = Some(GuideAnswer {
+        first_touch_m: Some(of("first_touch").deflection_m),
+        first_touch_place: Some(0.31),
+        line_contact_m: Some(of("line_contact").deflection_m),
+        second_place_m: Some(of("second_place").deflection_m),
+        loose_flat_m: Some(of("loose_flat").deflection_m),
+        at_working: working,
+        leaning: vec![
+            pad(0.0360, 0.0385, 1.0, 1.1),
+            pad(0.0385, 0.0410, 1.0, 2.4),
+            pad(0.0410, 0.0435, 1.0, 1.3),
+            Leaning {
+                at_corner: true,
+                ..pad(0.0498, 0.0500, -1.0, 0.9)
+            },
+            pad(0.0925, 0.0950, -1.0, 1.7),
+        ],
+        largest_coil_force_n: working.guide_coil_force_n,
+        deepest_m: 2.4e-9,
+        without_first_limit: Some(LimitKind::RateLost),
+        without_first_limit_m: Some(0.0331),
+        sentence: "An invented help.".into(),
+    });
+    let seat = |sign: f64| SeatLoad {
+        largest_thrust_n: sign * 6.52,
+        at_deflection_m: WORKING + TOLERANCE,
+        farthest_line_m: Some(sign * 0.0007),
+        line_at_working_m: Some(sign * 0.00065),
+    };
+    all.seat_loads = Some([
+        seat(1.0),
+        SeatLoad {
+            farthest_line_m: None,
+            line_at_working_m: None,
+            ..seat(-1.0)
+        },
+    ]);
+    // A parallelogram: out above, back below.
+    let leg = |shift: f64| -> Vec<PathPoint> {
+        let between = |share: f64| 0.012 + share * (WORKING + TOLERANCE - 0.012);
+        (0..=20)
+            .map(|i| between(f64::from(i) / 20.0))
+            .map(|deflection| point(deflection, RATE * deflection + shift, 0.001))
+            .collect()
+    };
+    let mut back = leg(-5.0);
+    back.reverse();
+    all.stroke = Some(Stroke {
+        from_deflection_m: 0.012,
+        to_deflection_m: WORKING + TOLERANCE,
+        energy_lost_j: 0.285,
+        friction_work_j: 0.2851,
+        closes_within: 3e-7,
+        out: leg(5.0),
+        back,
+    });
 }

@@ -268,3 +268,92 @@ fn materials_fit_the_page() {
         assert_fits(&plain(&report::materials_text(&wire_materials(), units)));
     }
 }
+
+/// The words of a section, from its heading to the next empty line, on one line.
+fn words_of(page: &str, heading: &str) -> String {
+    let from = page.find(&format!("\n{heading}")).unwrap() + 1;
+    let end = page[from..].find("\n\n").map_or(page.len(), |to| from + to);
+    spoken(&page[from..end])
+}
+
+#[test]
+fn what_guides_bear_is_said() {
+    let mut case = in_every_support();
+    let guides = |case: &Assessment| words_of(&page(case, Units::Metric), "Guides");
+    let all = guides(&case);
+    for words in [
+        "An invented help.",
+        "at 0.31 of the deformable length (47.12 mm from its bottom).",
+        "It leans at another place too (the next mode) from ",
+        "Friction on the guides takes ",
+        "corner at a guide's end 49.80 50.00 - 0.900",
+    ] {
+        assert!(all.contains(words), "{words}\n{all}");
+    }
+    let answer = case.guide_answer.as_mut().unwrap();
+    answer.at_working.guide_coil_force_n = answer.at_working.guide_force_n;
+    answer.at_working.guide_friction_n = -0.5;
+    answer.first_touch_m = Some(0.0);
+    answer.largest_coil_force_n = 2.0 * answer.at_working.guide_force_n;
+    let one = guides(&case);
+    for words in [
+        "It touches before it is deflected.",
+        "all of it on one coil",
+        "on one coil on the way there",
+        "takes 0.5000 N: the bottom gets more axial force",
+    ] {
+        assert!(one.contains(words), "{words}\n{one}");
+    }
+    let answer = case.guide_answer.as_mut().unwrap();
+    answer.at_working.guide_force_n = 0.0;
+    answer.leaning.clear();
+    let free = guides(&case);
+    assert!(free.contains("It leans on no guide at the largest working deflection"));
+    assert!(!free.contains("Where it leans"));
+    let answer = case.guide_answer.as_mut().unwrap();
+    answer.first_touch_m = None;
+    answer.at_working.guide_room_m = Some(0.0004);
+    assert!(guides(&case).contains("Room left at the largest working deflection"));
+}
+
+#[test]
+fn what_friction_takes_is_said() {
+    let mut case = in_every_support();
+    let said = |case: &Assessment| words_of(&page(case, Units::Metric), "Stroke with friction");
+    let lossy = said(&case);
+    assert!(
+        lossy.contains("0.2850 J less than it takes") && lossy.contains("the same to 0.035 %"),
+        "{lossy}"
+    );
+    let stroke = case.stroke.as_mut().unwrap();
+    // What is left of nothing after rounding.
+    (stroke.energy_lost_j, stroke.friction_work_j) = (-9e-12, 0.0);
+    stroke.closes_within = 1e-16;
+    let stuck = said(&case);
+    assert!(
+        stuck.contains("nothing slips and no energy is lost. The loop closes but for round-off."),
+        "{stuck}"
+    );
+}
+
+/// Filling a bore is of the geometry: it is neither of the imperfect column nor past its clash.
+#[test]
+fn a_filled_bore_is_of_the_geometry() {
+    let mut case = in_every_support();
+    let text = page(&case, Units::Metric);
+    assert!(spoken(&text).contains("Solid, and coil fills the bore: of the spring's geometry."));
+    let row = |text: &str| {
+        let found = text
+            .lines()
+            .find(|line| line.trim_start().starts_with("coil fills the bore "));
+        found.unwrap().to_string()
+    };
+    assert!(!row(&text).contains("past clash"));
+    for limit in &mut case.limits {
+        if limit.name == LimitKind::BoreFilled {
+            limit.deflection_m = None;
+        }
+    }
+    case.imperfect_column = None;
+    assert!(row(&page(&case, Units::Metric)).ends_with("none before solid"));
+}

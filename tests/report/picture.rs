@@ -1,6 +1,6 @@
 //! The picture of a load path.
 
-use super::fixture::{Shape, assessment};
+use super::fixture::{Shape, assessment, in_every_support};
 use coilstay::report::{self, Units};
 use coilstay::result::{Assessment, Path};
 
@@ -177,4 +177,108 @@ fn odd_paths_are_drawn_or_left_blank() {
     for path in [&empty, &single, &broken] {
         assert_sound(&picture(&odd, path));
     }
+}
+
+#[test]
+fn guides_and_strokes_have_panels_of_their_own() {
+    let guided = in_every_support();
+    let path = &guided.imperfect_column.as_ref().unwrap().path;
+    for (units, names) in [
+        (
+            Units::Metric,
+            [
+                "guide force, N",
+                "force on guides, N/mm",
+                "along the part that deforms, from its bottom, unloaded, mm",
+                "axial force, N",
+                "out - back, N",
+                "4.800 N",
+                "corner 0.9000 N",
+                "1.700 N",
+                "Stroke with friction: 0.2850 J lost in each",
+            ],
+        ),
+        (
+            Units::Inch,
+            [
+                "guide force, lbf",
+                "force on guides, lbf/in",
+                "along the part that deforms, from its bottom, unloaded, in",
+                "axial force, lbf",
+                "out - back, lbf",
+                "1.079 lbf",
+                "corner 0.2023 lbf",
+                "0.3822 lbf",
+                "Stroke with friction: 2.522 lbf in lost in each",
+            ],
+        ),
+    ] {
+        let svg = report::plot(&guided, path, units).unwrap();
+        assert_sound(&svg);
+        let texts = texts(&svg);
+        for name in names {
+            assert!(texts.contains(&name), "{name} is missing in {texts:?}");
+        }
+        for name in [
+            "first touch of a guide",
+            "more than one coil leans",
+            "leans at another place",
+            "flat stretch could leave the guide",
+            "flat ends sit flush",
+            "end lifts off its seat",
+            "end slides on its seat",
+            "touches a guide",
+            "coil fills the bore (straight spring) (off the picture)",
+            "force on the guides, added up",
+        ] {
+            assert!(texts.contains(&name), "{name} is missing");
+        }
+    }
+    let unguided = drawn(Shape::Rising);
+    assert!(!unguided.contains("guide force") && !unguided.contains("Stroke with friction"));
+    let mut sticking = guided.clone();
+    let stroke = sticking.stroke.as_mut().unwrap();
+    (stroke.energy_lost_j, stroke.friction_work_j) = (-9e-12, 0.0);
+    assert!(!picture(&sticking, path).contains("Stroke with friction"));
+}
+
+/// Where a guide may not be touched, its first touch is that limit and is marked once.
+#[test]
+fn a_touch_that_is_a_limit_is_marked_once() {
+    let mut guided = in_every_support();
+    let path = &mut guided.imperfect_column.as_mut().unwrap().path;
+    let at = |path: &Path, name: &str| path.marks.iter().position(|m| m.name == name).unwrap();
+    let (limit, touch) = (at(path, "guide_touch"), at(path, "first_touch"));
+    path.marks[limit].point = path.marks[touch].point;
+    let path = path.clone();
+    let svg = picture(&guided, &path);
+    let texts = texts(&svg);
+    assert!(texts.contains(&"touches a guide") && !texts.contains(&"first touch of a guide"));
+}
+
+#[test]
+fn odd_guides_and_strokes_are_drawn_or_left_blank() {
+    let mut odd = in_every_support();
+    let path = odd.imperfect_column.as_ref().unwrap().path.clone();
+    let answer = odd.guide_answer.as_mut().unwrap();
+    answer.leaning[1].force_n_per_m = f64::NAN;
+    answer
+        .leaning
+        .retain(|stretch| stretch.at_corner || stretch.side > 0.0);
+    let stroke = odd.stroke.as_mut().unwrap();
+    stroke.out[3].force_n = f64::INFINITY;
+    stroke.back.truncate(2);
+    assert_sound(&picture(&odd, &path));
+    odd.guide_answer
+        .as_mut()
+        .unwrap()
+        .leaning
+        .retain(|stretch| stretch.at_corner);
+    odd.stroke.as_mut().unwrap().back.clear();
+    let svg = picture(&odd, &path);
+    assert_sound(&svg);
+    assert!(texts(&svg).contains(&"corner 0.9000 N") && !svg.contains("out - back"));
+    odd.guide_answer.as_mut().unwrap().leaning.clear();
+    odd.spring.deformable_length_m = f64::NAN;
+    assert!(!picture(&odd, &path).contains("Leaning on the guides"));
 }

@@ -1,16 +1,19 @@
-//! The whole figure: heading, numbers in a row, two panels over one axis, key.
+//! The whole figure: heading, numbers in a row, panels over one axis, key, further panels.
 
-use super::ink::{BLACK, BLUE, GREY, VERMILION, tenths};
-use super::key::{self, Entry};
-use super::marks::{Marked, Shape, marked};
+use super::along::Along;
+use super::hysteresis::Hysteresis;
+use super::ink::{BLACK, BLUE, GREEN, GREY, VERMILION, tenths};
+use super::key::{self, Entry, Lines, WIDE};
+use super::marks::{Marked, marked};
 use super::panel::{Curve, Dash, Panel, Sheet};
 use super::parts::parted;
+use super::reach::{Point, deflection_axis, highest_force, value_axis};
 use super::scale::{Axis, apart};
 use super::{PlotError, drawing_error, symbols};
 use crate::report::Units;
 use crate::report::names::phrase;
 use crate::report::numbers::{Unit, column_decimals, fixed};
-use crate::result::{Assessment, LimitKind, Path, Verdict};
+use crate::result::{Assessment, LimitKind, Path, PathPoint, Verdict};
 use plotters::element::PathElement;
 use plotters::style::{Color, ShapeStyle};
 
@@ -22,7 +25,10 @@ const FORCE_TOP: f64 = 96.0;
 const FORCE_HEIGHT: f64 = 250.0;
 const BOW_TOP: f64 = 362.0;
 const BOW_HEIGHT: f64 = 150.0;
-const KEY_TOP: f64 = 572.0;
+const GUIDES_HEIGHT: f64 = 110.0;
+const BETWEEN: f64 = 16.0;
+/// From the last panel to the key.
+const TO_KEY: f64 = 60.0;
 
 /// A figure ready to be drawn: everything in the units shown.
 pub struct Figure {
@@ -34,6 +40,9 @@ pub struct Figure {
     deflection: Axis,
     force: Panel,
     bow: Panel,
+    guides: Option<Panel>,
+    along: Option<Along>,
+    hysteresis: Option<Hysteresis>,
     past_clash: bool,
     length_unit: Unit,
     force_unit: Unit,
@@ -50,30 +59,29 @@ impl Figure {
                 deflection: length.of(mark.deflection),
                 force: force.of(mark.force),
                 bow: length.of(mark.bow),
+                leaning: force.of(mark.leaning),
                 ..mark
             })
             .collect();
-        let points: Vec<[f64; 3]> = path
+        let numbers = |p: &PathPoint| {
+            [
+                length.of(p.deflection_m),
+                force.of(p.force_n),
+                length.of(p.bow_m),
+                force.of(p.guide_force_n),
+                force.of(p.guide_coil_force_n),
+            ]
+        };
+        let points: Vec<Point> = path
             .points
             .iter()
-            .map(|p| {
-                [
-                    length.of(p.deflection_m),
-                    force.of(p.force_n),
-                    length.of(p.bow_m),
-                ]
-            })
+            .map(numbers)
             .filter(|point| point.iter().all(|value| value.is_finite()))
             .collect();
         // The last step of a path goes past solid.
         let of_path = |kind: LimitKind| {
             let mark = path.marks.iter().find(|mark| mark.name == kind.key())?;
-            let point = mark.point;
-            Some([
-                length.of(point.deflection_m),
-                force.of(point.force_n),
-                length.of(point.bow_m),
-            ])
+            Some(numbers(&mark.point))
         };
         let points = parted(&points, of_path(LimitKind::Solid)).0;
         let highest = highest_force(&points, &all);
@@ -88,21 +96,22 @@ impl Figure {
             .map(|p| p[1])
             .chain(marks.iter().map(|m| m.force));
         let limit = length.of(assessment.duty.bow_limit_m);
-        let bows = seen.map(|p| p[2]).chain([limit]);
+        let bows = seen.clone().map(|p| p[2]).chain([limit]);
+        let leaning = seen.map(|p| p[3]);
         let (known, guide) = parted(&points, of_path(LimitKind::Clash));
         let past_clash = !guide.is_empty();
-        let curves_of = |value: usize, color| {
+        let curves_of = |value: usize, color, width| {
             [(&known, Dash::Solid), (&guide, Dash::Broken)].map(|(part, dash)| Curve {
                 line: part.iter().map(|p| (p[0], p[value])).collect(),
                 color,
                 dash,
-                width: 2.0,
+                width,
             })
         };
         // The perfect column's line lies below, to be seen where the two part.
         let mut curves: Vec<Curve> = perfect_path(&marks).into_iter().collect();
-        curves.extend(curves_of(1, BLUE));
-        let mut bow_curves = curves_of(2, VERMILION).to_vec();
+        curves.extend(curves_of(1, BLUE, 2.0));
+        let mut bow_curves = curves_of(2, VERMILION, 2.0).to_vec();
         bow_curves.push(Curve {
             line: vec![(deflection.from, limit), (deflection.to, limit)],
             color: BLACK,
@@ -119,6 +128,18 @@ impl Figure {
             axis: value_axis(bows, 4),
             curves: bow_curves,
         };
+        let guides_panel = assessment.guide_answer.as_ref().map(|_| {
+            let mut curves = curves_of(3, GREEN, WIDE).to_vec();
+            curves.extend(curves_of(4, BLACK, 1.2).map(|curve| Curve {
+                dash: Dash::Dotted,
+                ..curve
+            }));
+            Panel {
+                name: format!("guide force, {}", force.symbol),
+                axis: value_axis(leaning, 3),
+                curves,
+            }
+        });
         Figure {
             title: assessment.title.clone(),
             answer: answer(assessment, units),
@@ -127,6 +148,9 @@ impl Figure {
             deflection,
             force: force_panel,
             bow: bow_panel,
+            guides: guides_panel,
+            along: Along::of(assessment, units),
+            hysteresis: Hysteresis::of(assessment, units),
             past_clash,
             length_unit: length,
             force_unit: force,
@@ -135,21 +159,57 @@ impl Figure {
 
     /// Width and height, pixels.
     pub fn size(&self) -> (u32, u32) {
+        (WIDTH as u32, self.tops()[3].ceil() as u32)
+    }
+
+    /// Bottom of the panels over the deflection, pixels.
+    fn bottom(&self) -> f64 {
+        match self.guides {
+            Some(_) => BOW_TOP + BOW_HEIGHT + BETWEEN + GUIDES_HEIGHT,
+            None => BOW_TOP + BOW_HEIGHT,
+        }
+    }
+
+    /// Lines that the key has to explain.
+    fn lines(&self) -> Lines {
+        Lines {
+            past_clash: self.past_clash,
+            guides: self.guides.is_some(),
+        }
+    }
+
+    /// Tops of the key and of the further panels, and the bottom of the sheet, pixels.
+    fn tops(&self) -> [f64; 4] {
         let rows = self.marks.len() + self.off.len();
-        (
-            WIDTH as u32,
-            (KEY_TOP + key::height(rows, self.past_clash)).ceil() as u32,
-        )
+        let key = self.bottom() + TO_KEY;
+        let along = key + key::height(rows, self.lines());
+        let hysteresis = along + self.along.as_ref().map_or(0.0, Along::height);
+        let end = hysteresis + self.hysteresis.as_ref().map_or(0.0, Hysteresis::height);
+        [key, along, hysteresis, end]
     }
 
     /// The figure in words, for readers who cannot see it.
     pub fn description(&self) -> String {
-        format!(
-            "{} Axial force and bow against axial deflection, with {} numbered points explained in \
-             the key below.",
+        let guides = match self.guides {
+            Some(_) => ", and the force on the guides,",
+            None => "",
+        };
+        let mut text = format!(
+            "{} Axial force and bow{guides} against axial deflection, with {} numbered points \
+             explained in the key below.",
             self.answer,
             self.marks.len()
-        )
+        );
+        for words in [
+            self.along.as_ref().map(Along::description),
+            self.hysteresis.as_ref().map(Hysteresis::description),
+        ]
+        .into_iter()
+        .flatten()
+        {
+            text += &format!(" {words}");
+        }
+        text
     }
 
     /// Draws it.
@@ -167,44 +227,69 @@ impl Figure {
             None,
         )?;
         let name = format!("axial deflection, {}", self.length_unit.symbol);
+        let last = |panel: bool| panel.then_some(name.as_str());
         let bow = self.bow.draw(
             sheet,
             across,
             (BOW_TOP, BOW_HEIGHT),
             &self.deflection,
-            Some(&name),
+            last(self.guides.is_none()),
         )?;
+        let guides = match &self.guides {
+            Some(panel) => {
+                let down = (BOW_TOP + BOW_HEIGHT + BETWEEN, GUIDES_HEIGHT);
+                let placed = panel.draw(sheet, across, down, &self.deflection, last(true))?;
+                Some((panel, placed))
+            }
+            None => None,
+        };
 
         let places: Vec<i32> = self
             .marks
             .iter()
             .map(|mark| force.place((mark.deflection, 0.0)).0)
             .collect();
-        self.guides(sheet, &places)?;
+        self.lines_down(sheet, &places)?;
         force.curves(sheet, &self.force.curves)?;
         bow.curves(sheet, &self.bow.curves)?;
+        if let Some((panel, placed)) = &guides {
+            placed.curves(sheet, &panel.curves)?;
+        }
         // The governing mark last, on top of its neighbours.
         let (governing, others): (Vec<_>, Vec<_>) = self.marks.iter().partition(|m| m.governs);
         for mark in others.into_iter().chain(governing) {
-            for at in [
+            let on_guides = guides
+                .as_ref()
+                .filter(|_| mark.leaning.is_finite())
+                .map(|(_, placed)| placed.place((mark.deflection, mark.leaning)));
+            let places = [
                 force.place((mark.deflection, mark.force)),
                 bow.place((mark.deflection, mark.bow)),
-            ] {
+            ];
+            for at in places.into_iter().chain(on_guides) {
                 symbols::draw(sheet, mark.shape, at, mark.governs)?;
             }
         }
         self.numbers(sheet, &places)?;
+        let [key_top, along_top, hysteresis_top, _] = self.tops();
         key::draw(
             sheet,
-            (18.0, KEY_TOP),
+            (18.0, key_top),
             &self.entries(),
             [self.length_unit.symbol, self.force_unit.symbol],
-            self.past_clash,
-        )
+            self.lines(),
+        )?;
+        if let Some(along) = &self.along {
+            along.draw(sheet, across, along_top)?;
+        }
+        if let Some(hysteresis) = &self.hysteresis {
+            hysteresis.draw(sheet, across, hysteresis_top)?;
+        }
+        Ok(())
     }
 
-    /// Thin lines from the row of numbers down through both panels.
-    fn guides(&self, sheet: &Sheet, places: &[i32]) -> Result<(), PlotError> {
+    /// Thin lines from the row of numbers down through the panels.
+    fn lines_down(&self, sheet: &Sheet, places: &[i32]) -> Result<(), PlotError> {
         let style = ShapeStyle {
             color: GREY.to_rgba(),
             filled: false,
@@ -214,7 +299,7 @@ impl Figure {
             let line = vec![
                 (badge, tenths(NUMBERS)),
                 (*x, tenths(FORCE_TOP)),
-                (*x, tenths(BOW_TOP + BOW_HEIGHT)),
+                (*x, tenths(self.bottom())),
             ];
             sheet
                 .draw(&PathElement::new(line, style))
@@ -265,58 +350,6 @@ fn badges(places: &[i32]) -> Vec<i32> {
         .into_iter()
         .map(|x| x.round() as i32)
         .collect()
-}
-
-/// From nought past the path and its points; limits, formula and solid too where that does not
-/// squeeze the path.
-fn deflection_axis(points: &[[f64; 3]], marks: &[Marked], highest: f64) -> Axis {
-    let reach = points
-        .iter()
-        .map(|point| point[0])
-        .chain(marks.iter().filter(must_show).map(|mark| mark.deflection))
-        .fold(0.0, f64::max);
-    let room = room_beyond(reach);
-    let to = marks
-        .iter()
-        .filter(|mark| mark.force <= highest)
-        .map(|mark| mark.deflection)
-        .filter(|deflection| *deflection <= room)
-        .fold(reach, f64::max);
-    Axis::over(0.0, 1.03 * to, 8)
-}
-
-/// Whether the picture reaches as far as this mark in any case.
-fn must_show(mark: &&Marked) -> bool {
-    matches!(mark.shape, Shape::OpenCircle | Shape::FilledCircle) || mark.governs
-}
-
-/// How far marks beyond the path may stretch an axis.
-fn room_beyond(reach: f64) -> f64 {
-    if reach > 0.0 {
-        1.6 * reach
-    } else {
-        f64::INFINITY
-    }
-}
-
-/// Marks above this force would squeeze the path: they are named only.
-fn highest_force(points: &[[f64; 3]], marks: &[Marked]) -> f64 {
-    let reach = points
-        .iter()
-        .map(|point| point[1])
-        .chain(marks.iter().filter(must_show).map(|mark| mark.force))
-        .fold(0.0, f64::max);
-    room_beyond(reach)
-}
-
-/// From nought (or below, where values are) to a little above the largest value.
-fn value_axis(values: impl Iterator<Item = f64>, count: usize) -> Axis {
-    let (low, high) = values.fold((0.0f64, 0.0f64), |(low, high), value| {
-        (low.min(value), high.max(value))
-    });
-    let extent = high - low;
-    let from = if low < 0.0 { low - 0.06 * extent } else { 0.0 };
-    Axis::over(from, high + 0.08 * extent, count)
 }
 
 /// The straight path of the perfect column as built: a straight line from the origin to its

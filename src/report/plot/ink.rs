@@ -8,9 +8,11 @@ use plotters::style::{Color, FontDesc, FontFamily, FontStyle, RGBColor, TextStyl
 pub const BLUE: RGBColor = RGBColor(0, 84, 147);
 /// See [`BLUE`].
 pub const VERMILION: RGBColor = RGBColor(213, 94, 0);
+/// See [`BLUE`]; the lightest of the three.
+pub const GREEN: RGBColor = RGBColor(64, 176, 138);
 /// Text, axes, outlines.
 pub const BLACK: RGBColor = RGBColor(20, 20, 20);
-/// Guides.
+/// Lines from the numbers down.
 pub const GREY: RGBColor = RGBColor(150, 150, 150);
 
 /// Pixels in the units of the paper.

@@ -1,6 +1,6 @@
 //! The key: lines, then the numbered marks with their values.
 
-use super::ink::{BLACK, BLUE, VERMILION, tenths};
+use super::ink::{BLACK, BLUE, GREEN, VERMILION, tenths};
 use super::marks::Shape;
 use super::panel::{Dash, Sheet, stroke};
 use super::{PlotError, symbols};
@@ -9,6 +9,8 @@ const LINES: f64 = 24.0;
 const PAST_CLASH: &str = "past the first clash of coils: the column model is a guide only";
 const HEAD: f64 = 20.0;
 const ROW: f64 = 20.0;
+/// Width of the line of guide forces: another one lies on it, pixels.
+pub const WIDE: f64 = 3.2;
 /// Right edges of the columns of values, pixels from the left edge of the key.
 const COLUMNS: [f64; 3] = [470.0, 590.0, 700.0];
 
@@ -26,14 +28,25 @@ pub struct Entry {
     pub values: [String; 3],
 }
 
-/// Height of the samples of lines, pixels.
-fn height_of_lines(past_clash: bool) -> f64 {
-    if past_clash { 2.0 * LINES } else { LINES }
+/// Which lines there are besides those that every picture has.
+#[derive(Clone, Copy, Debug)]
+pub struct Lines {
+    /// Past the first clash.
+    pub past_clash: bool,
+    /// Forces on guides.
+    pub guides: bool,
 }
 
-/// Height of a key with so many rows, pixels; with a line for what is past the first clash or not.
-pub fn height(rows: usize, past_clash: bool) -> f64 {
-    height_of_lines(past_clash) + HEAD + ROW * rows as f64 + 14.0
+impl Lines {
+    /// Height of their samples, pixels.
+    fn height(self) -> f64 {
+        LINES * (1.0 + f64::from(self.past_clash) + f64::from(self.guides))
+    }
+}
+
+/// Height of a key with so many rows, pixels.
+pub fn height(rows: usize, lines: Lines) -> f64 {
+    lines.height() + HEAD + ROW * rows as f64 + 14.0
 }
 
 /// Draws the key with its top left corner at `corner` (pixels).
@@ -42,43 +55,12 @@ pub fn draw(
     (left, top): (f64, f64),
     entries: &[Entry],
     [length, force]: [&str; 2],
-    past_clash: bool,
+    lines: Lines,
 ) -> Result<(), PlotError> {
     let text = symbols::Text::new(sheet);
-    let samples = [
-        (0.0, BLUE, Dash::Solid, 2.0, "force, imperfect"),
-        (175.0, VERMILION, Dash::Solid, 2.0, "bow, imperfect"),
-        (
-            340.0,
-            BLACK,
-            Dash::Dashed,
-            1.2,
-            "force, perfect and straight",
-        ),
-        (590.0, BLACK, Dash::Dotted, 1.2, "bow limit"),
-    ];
-    let mut middle = top + LINES / 2.0;
-    for (x, color, dash, width, name) in samples {
-        let line = vec![
-            (tenths(left + x), tenths(middle)),
-            (tenths(left + x + 28.0), tenths(middle)),
-        ];
-        stroke(sheet, line, color, dash, width)?;
-        text.entry(name, (left + x + 35.0, middle), false)?;
-    }
-    if past_clash {
-        middle += LINES;
-        for (up, color) in [(-2.5, BLUE), (2.5, VERMILION)] {
-            let line = vec![
-                (tenths(left), tenths(middle + up)),
-                (tenths(left + 28.0), tenths(middle + up)),
-            ];
-            stroke(sheet, line, color, Dash::Broken, 2.0)?;
-        }
-        text.entry(PAST_CLASH, (left + 35.0, middle), false)?;
-    }
+    samples(sheet, (left, top), lines)?;
 
-    let heads_top = top + height_of_lines(past_clash);
+    let heads_top = top + lines.height();
     let middle = heads_top + HEAD / 2.0;
     let heads = [
         format!("deflection, {length}"),
@@ -114,6 +96,70 @@ pub fn draw(
         for (value, column) in entry.values.iter().zip(COLUMNS) {
             text.figure(value, (left + column, middle), entry.governs)?;
         }
+    }
+    Ok(())
+}
+
+/// The lines and what they are.
+fn samples(sheet: &Sheet, (left, top): (f64, f64), lines: Lines) -> Result<(), PlotError> {
+    let text = symbols::Text::new(sheet);
+    let of_every_picture = [
+        (0.0, BLUE, Dash::Solid, 2.0, "force, imperfect"),
+        (175.0, VERMILION, Dash::Solid, 2.0, "bow, imperfect"),
+        (
+            340.0,
+            BLACK,
+            Dash::Dashed,
+            1.2,
+            "force, perfect and straight",
+        ),
+        (590.0, BLACK, Dash::Dotted, 1.2, "bow limit"),
+    ];
+    let of_guides = [
+        (
+            0.0,
+            GREEN,
+            Dash::Solid,
+            WIDE,
+            "force on the guides, added up",
+        ),
+        (
+            340.0,
+            BLACK,
+            Dash::Dotted,
+            1.2,
+            "of it on the coil that bears most",
+        ),
+    ];
+    let mut middle = top + LINES / 2.0;
+    let rows: [&[_]; 2] = [
+        &of_every_picture,
+        if lines.guides { &of_guides } else { &[] },
+    ];
+    for row in rows.into_iter().filter(|row| !row.is_empty()) {
+        for (x, color, dash, width, name) in row {
+            let line = vec![
+                (tenths(left + x), tenths(middle)),
+                (tenths(left + x + 28.0), tenths(middle)),
+            ];
+            stroke(sheet, line, *color, *dash, *width)?;
+            text.entry(name, (left + x + 35.0, middle), false)?;
+        }
+        middle += LINES;
+    }
+    if lines.past_clash {
+        let mut broken = vec![(-2.5, BLUE, 2.0), (2.5, VERMILION, 2.0)];
+        if lines.guides {
+            broken = vec![(-5.0, BLUE, 2.0), (0.0, VERMILION, 2.0), (5.0, GREEN, WIDE)];
+        }
+        for (up, color, width) in broken {
+            let line = vec![
+                (tenths(left), tenths(middle + up)),
+                (tenths(left + 28.0), tenths(middle + up)),
+            ];
+            stroke(sheet, line, color, Dash::Broken, width)?;
+        }
+        text.entry(PAST_CLASH, (left + 35.0, middle), false)?;
     }
     Ok(())
 }

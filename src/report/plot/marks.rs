@@ -36,6 +36,24 @@ pub enum Shape {
     Cross,
     /// Straight column.
     Plus,
+    /// Lift-off from a seat.
+    Wedge,
+    /// Sliding on a seat.
+    Parallelogram,
+    /// Touch of a guide that may not be touched.
+    HalfDisc,
+    /// The bore is filled.
+    DottedSquare,
+    /// Flat ends sit flush.
+    Tee,
+    /// First touch of a guide.
+    Touch,
+    /// More than one coil leans.
+    TwoLines,
+    /// Leans at another place.
+    TwoCircles,
+    /// What lies flat could leave the guide.
+    Wave,
 }
 
 /// A point to be marked.
@@ -53,6 +71,8 @@ pub struct Marked {
     pub force: f64,
     /// Bow, m.
     pub bow: f64,
+    /// Force on the guides, N; not a number off the path.
+    pub leaning: f64,
     /// Whether it is the governing limit.
     pub governs: bool,
 }
@@ -65,6 +85,7 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
         let repeated = match mark.name.as_str() {
             "largest_force" => has(path, LimitKind::DeadLoadLost.key()),
             "largest_travel" => has(path, LimitKind::TravelLost.key()),
+            "first_touch" => same_place(path, "first_touch", LimitKind::GuideTouch.key()),
             _ => false,
         };
         if repeated || is_beyond_solid(assessment, &mark.name) {
@@ -77,6 +98,7 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
             deflection: mark.point.deflection_m,
             force: mark.point.force_n,
             bow: mark.point.bow_m,
+            leaning: mark.point.guide_force_n,
             governs: governing == Some(mark.name.as_str()),
         });
     }
@@ -93,6 +115,7 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
                 deflection,
                 force,
                 bow: 0.0,
+                leaning: f64::NAN,
                 governs: limit.governs,
             });
         }
@@ -104,6 +127,7 @@ pub fn marked(assessment: &Assessment, path: &Path) -> Vec<Marked> {
         deflection: measure.deflection_m,
         force: measure.force_n,
         bow: 0.0,
+        leaning: f64::NAN,
         governs: false,
     };
     for curve in &assessment.closed_form.curves {
@@ -133,12 +157,22 @@ fn is_beyond_solid(assessment: &Assessment, key: &str) -> bool {
 fn off_path_title(limit: LimitKind) -> String {
     match limit {
         LimitKind::Solid => "solid (force of the straight spring)".to_string(),
+        LimitKind::BoreFilled => "coil fills the bore (straight spring)".to_string(),
         other => other.title().to_string(),
     }
 }
 
 fn has(path: &Path, name: &str) -> bool {
     path.marks.iter().any(|mark| mark.name == name)
+}
+
+/// Whether two marks of a path are one point.
+fn same_place(path: &Path, one: &str, other: &str) -> bool {
+    let at = |name: &str| {
+        let mark = path.marks.iter().find(|mark| mark.name == name)?;
+        Some((mark.point.deflection_m, mark.point.force_n))
+    };
+    at(one).is_some() && at(one) == at(other)
 }
 
 fn shape(key: &str) -> Shape {
@@ -154,6 +188,15 @@ fn shape(key: &str) -> Shape {
         "stress" => Shape::Pentagon,
         "clash" => Shape::Star,
         "solid" => Shape::Bar,
+        "lift_off" => Shape::Wedge,
+        "slide" => Shape::Parallelogram,
+        "guide_touch" => Shape::HalfDisc,
+        "bore_filled" => Shape::DottedSquare,
+        "seated" => Shape::Tee,
+        "first_touch" => Shape::Touch,
+        "line_contact" => Shape::TwoLines,
+        "second_place" => Shape::TwoCircles,
+        "loose_flat" => Shape::Wave,
         _ => Shape::Ring,
     }
 }

@@ -1,14 +1,18 @@
-//! The picture of a load path: axial force above, bow below, both against the axial deflection;
-//! numbered marks with a key. Readable in grey: lines of one panel differ in dash, kinds of mark in
+//! The picture of a load path: axial force above, bow below, then what guides bear, all against the
+//! axial deflection; numbered marks with a key. Below it, where there are any, the places at which a
+//! guide bears and the loop of a stroke with friction. Readable in grey: lines of one panel differ in dash, kinds of mark in
 //! shape.
 
+mod along;
 mod figure;
+mod hysteresis;
 mod ink;
 mod key;
 mod marks;
 mod panel;
 mod paper;
 mod parts;
+mod reach;
 mod scale;
 mod symbols;
 

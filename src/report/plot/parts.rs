@@ -1,7 +1,12 @@
 //! The path in two parts: up to one of its points, and past it.
 
+use std::array::from_fn;
+
 /// A path up to the point `at` and what follows; nothing follows where there is no such point.
-pub fn parted(points: &[[f64; 3]], at: Option<[f64; 3]>) -> (Vec<[f64; 3]>, Vec<[f64; 3]>) {
+pub fn parted<const N: usize>(
+    points: &[[f64; N]],
+    at: Option<[f64; N]>,
+) -> (Vec<[f64; N]>, Vec<[f64; N]>) {
     let finite = at.filter(|at| at.iter().all(|value| value.is_finite()));
     let Some((at, after)) = finite.and_then(|at| Some((at, piece_with(points, at)?))) else {
         return (points.to_vec(), Vec::new());
@@ -14,22 +19,22 @@ pub fn parted(points: &[[f64; 3]], at: Option<[f64; 3]>) -> (Vec<[f64; 3]>, Vec<
 }
 
 /// Index of the piece between two neighbouring points that passes nearest to `at`.
-fn piece_with(points: &[[f64; 3]], at: [f64; 3]) -> Option<usize> {
-    let sizes = [0, 1, 2].map(|i| {
+fn piece_with<const N: usize>(points: &[[f64; N]], at: [f64; N]) -> Option<usize> {
+    let sizes: [f64; N] = from_fn(|i| {
         let largest = points.iter().map(|p| p[i].abs()).fold(0.0, f64::max);
         if largest > 0.0 { largest } else { 1.0 }
     });
-    let distance = |pair: &[[f64; 3]]| -> f64 {
-        let along = [0, 1, 2].map(|i| (pair[1][i] - pair[0][i]) / sizes[i]);
-        let to = [0, 1, 2].map(|i| (at[i] - pair[0][i]) / sizes[i]);
-        let dot = |a: [f64; 3], b: [f64; 3]| a[0] * b[0] + a[1] * b[1] + a[2] * b[2];
+    let distance = |pair: &[[f64; N]]| -> f64 {
+        let along: [f64; N] = from_fn(|i| (pair[1][i] - pair[0][i]) / sizes[i]);
+        let to: [f64; N] = from_fn(|i| (at[i] - pair[0][i]) / sizes[i]);
+        let dot = |a: [f64; N], b: [f64; N]| -> f64 { a.iter().zip(b).map(|(a, b)| a * b).sum() };
         let length = dot(along, along);
         let share = if length > 0.0 {
             (dot(to, along) / length).clamp(0.0, 1.0)
         } else {
             0.0
         };
-        let off = [0, 1, 2].map(|i| to[i] - share * along[i]);
+        let off: [f64; N] = from_fn(|i| to[i] - share * along[i]);
         dot(off, off)
     };
     (0..points.len().saturating_sub(1)).min_by(|a, b| {

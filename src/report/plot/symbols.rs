@@ -55,7 +55,12 @@ impl<'a, 'p> Text<'a, 'p> {
         self.write(text, paper(at), style, (HPos::Left, VPos::Center))
     }
 
-    /// The same, right-aligned.
+    /// Plain and small, its middle at `at` (tenths of a pixel).
+    pub fn label(&self, text: &str, at: (i32, i32)) -> Result<(), PlotError> {
+        self.write(text, at, font(10.5), (HPos::Center, VPos::Center))
+    }
+
+    /// The same as an entry, right-aligned.
     pub fn figure(&self, text: &str, at: (f64, f64), bold: bool) -> Result<(), PlotError> {
         let weight = if bold {
             FontStyle::Bold
@@ -124,14 +129,16 @@ pub fn draw(sheet: &Sheet, shape: Shape, at: (i32, i32), governs: bool) -> Resul
         }
         Ok(())
     };
-    let round = |radius: f64, ground: RGBColor| -> Result<(), PlotError> {
+    let round_at = |centre: (f64, f64), radius: f64, ground: RGBColor| -> Result<(), PlotError> {
+        let centre = beside(at, centre);
         sheet
-            .draw(&Circle::new(at, tenths(radius), ground.filled()))
+            .draw(&Circle::new(centre, tenths(radius), ground.filled()))
             .map_err(drawing_error)?;
         sheet
-            .draw(&Circle::new(at, tenths(radius), outline(1.1)))
+            .draw(&Circle::new(centre, tenths(radius), outline(1.1)))
             .map_err(drawing_error)
     };
+    let round = |radius: f64, ground: RGBColor| round_at((0.0, 0.0), radius, ground);
     match shape {
         Shape::FilledCircle => round(4.2, BLACK),
         Shape::OpenCircle => round(4.2, WHITE),
@@ -150,6 +157,29 @@ pub fn draw(sheet: &Sheet, shape: Shape, at: (i32, i32), governs: bool) -> Resul
             1.4,
         ),
         Shape::Plus => lines(&[[(-5.8, 0.0), (5.8, 0.0)], [(0.0, -5.8), (0.0, 5.8)]], 1.4),
+        Shape::Wedge => closed(vec![(-6.5, 4.0), (6.5, 4.0), (6.5, -4.5)]),
+        Shape::Parallelogram => closed(vec![(-7.0, 3.6), (2.6, 3.6), (7.0, -3.6), (-2.6, -3.6)]),
+        Shape::HalfDisc => closed(half_disc(6.0)),
+        Shape::DottedSquare => closed(regular(4, 7.0, PI / 4.0)).and_then(|()| round(1.4, BLACK)),
+        Shape::Tee => lines(&[[(-6.0, 4.5), (6.0, 4.5)], [(0.0, 4.5), (0.0, -5.5)]], 1.6),
+        Shape::Touch => round_at((-1.6, 0.0), 3.8, WHITE)
+            .and_then(|()| lines(&[[(3.2, -7.0), (3.2, 7.0)]], 1.6)),
+        Shape::TwoLines => lines(
+            &[[(-2.4, -6.5), (-2.4, 6.5)], [(2.4, -6.5), (2.4, 6.5)]],
+            1.6,
+        ),
+        Shape::TwoCircles => {
+            round_at((-3.2, 0.0), 3.2, WHITE).and_then(|()| round_at((3.2, 0.0), 3.2, WHITE))
+        }
+        Shape::Wave => lines(
+            &[
+                [(-7.0, 3.5), (-3.5, -3.5)],
+                [(-3.5, -3.5), (0.0, 3.5)],
+                [(0.0, 3.5), (3.5, -3.5)],
+                [(3.5, -3.5), (7.0, 3.5)],
+            ],
+            1.5,
+        ),
     }
 }
 
@@ -162,6 +192,16 @@ fn regular(corners: u32, radius: f64, turn: f64) -> Vec<(f64, f64)> {
         .map(|corner| {
             let angle = turn + 2.0 * PI * f64::from(corner) / f64::from(corners);
             (radius * angle.cos(), radius * angle.sin())
+        })
+        .collect()
+}
+
+/// Flat on the right.
+fn half_disc(radius: f64) -> Vec<(f64, f64)> {
+    (0..=12)
+        .map(|step| {
+            let angle = PI * (0.5 + f64::from(step) / 12.0);
+            (0.4 * radius + radius * angle.cos(), radius * angle.sin())
         })
         .collect()
 }

@@ -6,10 +6,13 @@ use crate::report::layout::{Row, paragraph, table};
 use crate::report::numbers::{
     column_decimals, error, fixed, percent_input, percent_number, shortest,
 };
-use crate::result::{Assessment, Limit, LimitKind};
+use crate::result::{Assessment, Limit, LimitKind, SupportEcho};
 
 const MODELS: &str = "Critical: of the perfect column as built, dead coils and arms included. Solid: \
      of the spring's geometry. All others: of the imperfect column.";
+const MODELS_WITH_BORE: &str = "Critical: of the perfect column as built, dead coils and arms \
+     included. Solid, and coil fills the bore: of the spring's geometry. All others: of the imperfect \
+     column.";
 
 /// The table of limits and their notes.
 pub fn limits(assessment: &Assessment, units: Units) -> String {
@@ -101,7 +104,10 @@ fn remark(limits: &[Limit], limit: &Limit) -> String {
 
 /// Whether the path of the column gets there.
 fn is_of_path(limit: &Limit) -> bool {
-    !matches!(limit.name, LimitKind::Critical | LimitKind::Solid)
+    !matches!(
+        limit.name,
+        LimitKind::Critical | LimitKind::Solid | LimitKind::BoreFilled
+    )
 }
 
 fn is_reached(limit: &Limit) -> bool {
@@ -131,7 +137,12 @@ fn is_past_clash(limits: &[Limit], limit: &Limit) -> bool {
 
 /// Which model each limit belongs to, and what those mean that are reached.
 fn legend(assessment: &Assessment, units: Units) -> String {
-    let mut out = paragraph("  ", MODELS);
+    let has_bore = assessment
+        .limits
+        .iter()
+        .any(|limit| limit.name == LimitKind::BoreFilled);
+    let models = if has_bore { MODELS_WITH_BORE } else { MODELS };
+    let mut out = paragraph("  ", models);
     for limit in assessment.limits.iter().filter(|limit| is_reached(limit)) {
         let meaning = match limit.name {
             LimitKind::Bow => format!(
@@ -148,11 +159,11 @@ fn legend(assessment: &Assessment, units: Units) -> String {
             }
             LimitKind::DeadLoadLost => "largest force of the path".to_string(),
             LimitKind::TravelLost => "largest travel of the path".to_string(),
-            LimitKind::LiftOff
-            | LimitKind::Slide
-            | LimitKind::GuideTouch
-            | LimitKind::BoreFilled
-            | LimitKind::Solid => limit.note.clone(),
+            LimitKind::LiftOff => lift_off(assessment, limit, units),
+            LimitKind::Slide => slide(assessment),
+            LimitKind::GuideTouch => guide_touch(assessment, units),
+            LimitKind::BoreFilled => bore_filled(assessment, units),
+            LimitKind::Solid => limit.note.clone(),
             LimitKind::Critical => String::new(),
         };
         if !meaning.is_empty() {
@@ -172,12 +183,95 @@ fn legend(assessment: &Assessment, units: Units) -> String {
     out
 }
 
+/// The flat ends of the case.
+fn flat_ends(assessment: &Assessment) -> impl Iterator<Item = (&'static str, &SupportEcho)> {
+    let supports = &assessment.supports;
+    [("bottom", &supports.bottom), ("top", &supports.top)]
+        .into_iter()
+        .filter(|(_, support)| support.contact == "flat")
+}
+
+/// " (bottom 14 mm, top 12 mm)", from a number of each flat end; nothing where there is none.
+pub(super) fn of_flat_ends(
+    assessment: &Assessment,
+    number: impl Fn(&SupportEcho) -> Option<String>,
+) -> String {
+    let numbers: Vec<String> = flat_ends(assessment)
+        .filter_map(|(end, support)| Some(format!("{end} {}", number(support)?)))
+        .collect();
+    if numbers.is_empty() {
+        String::new()
+    } else {
+        format!(" ({})", numbers.join(", "))
+    }
+}
+
+fn lift_off(assessment: &Assessment, limit: &Limit, units: Units) -> String {
+    let radii = of_flat_ends(assessment, |support| {
+        let radius = support.seat_radius_m?;
+        Some(units.length().show_input(radius))
+    });
+    let start = if limit.deflection_m == Some(0.0) {
+        " (It has not sat down flush by the largest working deflection: it counts as lifted from \
+         the start.)"
+    } else {
+        ""
+    };
+    format!(
+        "the force line leaves the rigid ring on which a flat end bears{radii}, and the end stands \
+         on its edge; an elastic ring begins to open at half of that{start}"
+    )
+}
+
+fn slide(assessment: &Assessment) -> String {
+    let friction = of_flat_ends(assessment, |support| support.friction.map(shortest));
+    format!(
+        "the thrust of a flat end along its seat exceeds friction{friction} times the force on the \
+         seat"
+    )
+}
+
+fn guide_touch(assessment: &Assessment, units: Units) -> String {
+    let guides: Vec<String> = assessment
+        .guides
+        .iter()
+        .filter(|guide| !guide.touching_allowed)
+        .map(|guide| {
+            format!(
+                "{} of {}, {} of room around the free spring",
+                guide.kind,
+                units.length().show_input(guide.diameter_m),
+                units.length().show_rounded(guide.clearance_free_m)
+            )
+        })
+        .collect();
+    format!(
+        "no room left between the coil and a guide that it may not touch ({})",
+        guides.join("; ")
+    )
+}
+
+fn bore_filled(assessment: &Assessment, units: Units) -> String {
+    let bores: Vec<String> = assessment
+        .guides
+        .iter()
+        .filter(|guide| guide.kind == "bore")
+        .map(|guide| units.length().show_input(guide.diameter_m))
+        .collect();
+    format!(
+        "the straight coil, grown by compression, is as wide as its bore ({}); ends held or free to \
+         turn about the axis, the worse of the two",
+        bores.join(", ")
+    )
+}
+
 /// Why a limit has no deflection.
 fn absent(assessment: &Assessment, limit: &Limit, units: Units) -> String {
     match limit.name {
         LimitKind::Stress if assessment.duty.allowable_stress_pa.is_none() => {
             "not checked: no allowable stress given".into()
         }
+        LimitKind::BoreFilled => "none before solid".into(),
         _ if assessment.imperfect_column.is_none() && limit.name != LimitKind::Critical => {
             "not computed".into()
         }

@@ -2,6 +2,7 @@
 //! then what it rests on.
 
 mod answer;
+mod contact;
 mod ends;
 mod inputs;
 mod limits;
@@ -41,6 +42,9 @@ fn verdict(assessment: &Assessment, units: Units) -> String {
         limits::limits(assessment, units),
         remarks::dead_load(assessment, units),
         remarks::snap(assessment, units),
+        contact::guides(assessment, units),
+        contact::seats(assessment, units),
+        contact::stroke(assessment, units),
         ends::sensitivity(assessment),
         remarks::absolute_stability(assessment, units),
         remarks::stress_at_solid(assessment, units),

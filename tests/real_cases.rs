@@ -1,0 +1,318 @@
+//! Random springs on real seats and in guides: flat ends that can only push, balls with friction, links,
+//! levers, rods and bores of any reach, with friction. Each ends in an answer with an error
+//! estimate, or says honestly that it could not be decided.
+
+use coilstay::assess::assess;
+use coilstay::result::{Assessment, Verdict};
+use coilstay::setup::{
+    Contact, FixedTo, FlatSeat, Guide, GuideKind, LeverArc, Link, Motion, Setup, Support, Swivel,
+};
+use proptest::prelude::*;
+use proptest::strategy::ValueTree;
+
+mod fixture;
+
+/// A number between `low` and `high`, evenly in its logarithm.
+fn spread(low: f64, high: f64) -> impl Strategy<Value = f64> {
+    (low.ln()..high.ln()).prop_map(f64::exp)
+}
+
+fn sometimes(values: impl Strategy<Value = f64> + 'static) -> impl Strategy<Value = f64> {
+    prop_oneof![Just(0.0).boxed(), values.boxed()]
+}
+
+/// A support of a spring of 50 mm mean diameter.
+fn support(top: bool) -> impl Strategy<Value = Support> {
+    let flat = (0.6..1.0_f64, prop::option::of(0.05..0.5_f64)).prop_map(|(share, friction)| {
+        Support::flat(FlatSeat {
+            radius: 0.025,
+            ground_share: share,
+            friction,
+        })
+    });
+    let ball =
+        (0.01..0.4_f64, 0.002..0.02_f64, -0.01..0.02_f64).prop_map(|(friction, radius, arm)| {
+            Support {
+                contact: Contact::Swivel(Swivel { friction, radius }),
+                arm,
+                ..Support::hinged()
+            }
+        });
+    let link = (spread(0.02, 1.0), any::<bool>()).prop_map(|(length, hanging)| Support {
+        link: Some(Link { length, hanging }),
+        ..Support::hinged()
+    });
+    let lever =
+        (-0.02..0.02_f64, 0.15..0.6_f64, any::<bool>()).prop_map(|(along, across, left)| Support {
+            motion: Some(Motion::Lever(LeverArc {
+                along,
+                across: if left { across } else { -across },
+            })),
+            ..Support::clamped()
+        });
+    let plain = prop_oneof![Just(Support::clamped()), Just(Support::hinged())];
+    let kind = if top {
+        prop_oneof![
+            flat.boxed(),
+            ball.boxed(),
+            link.boxed(),
+            lever.boxed(),
+            plain.boxed()
+        ]
+        .boxed()
+    } else {
+        prop_oneof![2 => flat.boxed(), 1 => ball.boxed(), 2 => plain.boxed()].boxed()
+    };
+    (kind, sometimes(-0.02..0.02_f64)).prop_map(|(kind, tilt)| Support { tilt, ..kind })
+}
+
+/// A guide, its places as shares of the free length.
+fn guide() -> impl Strategy<Value = (Guide, f64)> {
+    (
+        any::<bool>(),
+        spread(1e-4, 0.005),
+        sometimes(0.02..0.5_f64),
+        sometimes(0.02..0.4_f64),
+        sometimes(0.1..0.3_f64),
+        (
+            any::<bool>(),
+            prop_oneof![Just(FixedTo::Ground), Just(FixedTo::Bottom)],
+        ),
+    )
+        .prop_map(
+            |(rod, clearance, to, friction, from, (allowed, fixed_to))| {
+                let guide = Guide {
+                    kind: if rod { GuideKind::Rod } else { GuideKind::Bore },
+                    diameter: 0.0,
+                    fixed_to,
+                    from: if to > from + 0.05 { from } else { 0.0 },
+                    to: if to > 0.0 { to } else { f64::INFINITY },
+                    friction,
+                    touching_allowed: allowed,
+                };
+                (guide, clearance)
+            },
+        )
+}
+
+fn real_case() -> impl Strategy<Value = Setup> {
+    (
+        (spread(2.0, 9.0), support(false), support(true)),
+        prop::option::weighted(0.7, guide()),
+        (
+            sometimes(spread(1e-4, 0.04)),
+            sometimes(spread(1e-4, 0.04)),
+            sometimes(spread(1e-5, 0.01)),
+        ),
+        0.1..0.6_f64,
+    )
+        .prop_map(
+            |((slenderness, bottom, top), guide, (e1, e2, bow), share)| {
+                let mut setup = fixture::setup(slenderness, 206.0 / 81.5, bottom, top);
+                let spring = &setup.spring;
+                let (length, diameter) = (spring.free_length, spring.mean_diameter);
+                if let Some((mut guide, clearance)) = guide {
+                    guide.diameter = match guide.kind {
+                        GuideKind::Rod => spring.inner_diameter() - 2.0 * clearance,
+                        GuideKind::Bore => spring.outer_diameter() + 2.0 * clearance,
+                    };
+                    guide.from *= length;
+                    guide.to *= length;
+                    setup.guides.push(guide);
+                }
+                setup.imperfections.squareness = e1 * length;
+                setup.imperfections.parallelism = e2 * diameter;
+                setup.imperfections.bow = bow * length;
+                setup.duty.allowable_stress = Some(1e9);
+                setup.duty.working_deflection = share * setup.spring.solid_deflection();
+                setup
+            },
+        )
+        .prop_filter("held, longer than solid, lever long enough", |setup| {
+            let reach = match setup.top.motion {
+                Some(Motion::Lever(arc)) => arc.largest_travel(),
+                _ => f64::INFINITY,
+            };
+            setup.is_held()
+                && setup.spring.free_length > 1.1 * setup.spring.solid_length
+                && reach > 1.2 * setup.spring.solid_deflection()
+        })
+}
+
+fn check(setup: &Setup, answer: &Assessment) -> Result<(), TestCaseError> {
+    prop_assert!(answer.governing.is_some());
+    for limit in answer.limits.iter().filter(|limit| !limit.beyond_solid) {
+        let Some(deflection) = limit.deflection_m else {
+            continue;
+        };
+        prop_assert!(deflection.is_finite() && deflection >= 0.0, "{limit:?}");
+        prop_assert!(limit.error_m.is_none_or(|error| error >= 0.0), "{limit:?}");
+    }
+    if answer.verdict == Verdict::Undecided {
+        prop_assert!(answer.undecided_reason.is_some());
+    } else if setup.guides.is_empty() {
+        prop_assert!(answer.failures.is_empty(), "{:?}", answer.failures);
+    }
+    if let Some(stroke) = &answer.stroke {
+        prop_assert!(stroke.friction_work_j >= -1e-9 * stroke.energy_lost_j.abs().max(1e-9));
+    }
+    Ok(())
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig::with_cases(24))]
+    #[test]
+    fn every_valid_case_is_answered_or_says_why_not(setup in real_case()) {
+        check(&setup, &assess(&setup, "random"))?;
+    }
+}
+
+#[test]
+#[ignore = "a census of many cases, to be read"]
+fn census() {
+    let count: u32 = std::env::var("CASES")
+        .ok()
+        .and_then(|v| v.parse().ok())
+        .unwrap_or(100);
+    let mut runner = proptest::test_runner::TestRunner::deterministic();
+    let mut undecided = 0;
+    let mut slowest = 0.0_f64;
+    for i in 0..count {
+        let setup = real_case().new_tree(&mut runner).expect("a case").current();
+        let clock = std::time::Instant::now();
+        let answer = assess(&setup, "");
+        let seconds = clock.elapsed().as_secs_f64();
+        slowest = slowest.max(seconds);
+        let bad = answer.verdict == Verdict::Undecided;
+        undecided += u32::from(bad);
+        let worst = answer
+            .limits
+            .iter()
+            .filter_map(|l| Some((l.error_m? / setup.spring.free_length, l.name)))
+            .fold(
+                (0.0, None),
+                |w, (e, n)| if e > w.0 { (e, Some(n)) } else { w },
+            );
+        if bad || seconds > 3.0 || worst.0 > 1e-3 || !answer.failures.is_empty() {
+            println!(
+                "{i}: {:?} {seconds:.2} s, worst error {worst:?}, {:?}",
+                answer.verdict, answer.undecided_reason
+            );
+            for failure in &answer.failures {
+                println!(
+                    "    {} at {:?}",
+                    failure.cause,
+                    failure
+                        .last_good_deflection_m
+                        .map(|d| d / setup.spring.free_length)
+                );
+            }
+            println!(
+                "    bottom {} {:?} top {} {:?} {:?} guides {:?} e1 {:.2e} e2 {:.2e} bow {:.2e} L/D {:.2} work {:.3}",
+                setup.bottom.word(),
+                setup.bottom.tilt,
+                setup.top.word(),
+                setup.top.tilt,
+                setup.top.motion.is_some(),
+                setup
+                    .guides
+                    .iter()
+                    .map(|g| (
+                        g.kind,
+                        g.from / setup.spring.free_length,
+                        g.to / setup.spring.free_length,
+                        g.friction,
+                        g.clearance(&setup.spring, 1.0)
+                    ))
+                    .collect::<Vec<_>>(),
+                setup.imperfections.squareness,
+                setup.imperfections.parallelism,
+                setup.imperfections.bow,
+                setup.spring.slenderness(),
+                setup.duty.working_deflection / setup.spring.free_length
+            );
+        }
+    }
+    println!("{count} cases, {undecided} undecided, slowest {slowest:.2} s");
+}
+
+#[test]
+#[ignore = "one case, to be looked at"]
+fn one() {
+    use coilstay::column::{Column, Deviations, Idealisation};
+    use coilstay::setup::Orientation;
+    use coilstay::solve::{Newton, PathSettings, follow, start};
+    let number: u32 = std::env::var("CASE")
+        .ok()
+        .and_then(|v| v.parse().ok())
+        .unwrap_or(0);
+    let mut runner = proptest::test_runner::TestRunner::deterministic();
+    let mut setup = None;
+    for _ in 0..=number {
+        setup = Some(real_case().new_tree(&mut runner).expect("a case").current());
+    }
+    let setup = setup.expect("x");
+    println!("{setup:#?}");
+    let d = Deviations {
+        sizes: &setup.imperfections,
+        orientation: Orientation::plain(),
+        mode: None,
+    };
+    let n = 32;
+    let mut column =
+        Column::of_setup(&setup, Idealisation::AsBuilt, n, Some(&d)).with_load_scale(20.0);
+    let mut newton = Newton::new(&column);
+    let guess = column.first_guess();
+    let first = match start(&mut column, &mut newton, &guess, 0.0) {
+        Ok(f) => f,
+        Err(e) => {
+            println!("{e:?}");
+            return;
+        }
+    };
+    let mut points = vec![first];
+    let top = points[0].state.nodes[n][0];
+    let solid = setup.spring.solid_deflection() / column.scale.length;
+    let clock = std::time::Instant::now();
+    let (outcome, walk) = follow(
+        &mut column,
+        &mut newton,
+        &mut points,
+        &PathSettings::default(),
+        |p| top - p[p.len() - 1].state.nodes[n][0] > solid,
+    );
+    println!("{outcome:?} {walk:?} {:?} solid {solid}", clock.elapsed());
+    let mut contacts = Vec::new();
+    let step = (points.len() / 25).max(1);
+    for (i, p) in points.iter().enumerate() {
+        if i % step != 0 && i + 6 < points.len() {
+            continue;
+        }
+        column.contacts(&p.state, &mut contacts);
+        print!(
+            "{i} s {:.6} P {:.5} dP {:.3} neg {} d {:.1e} th {:.4} {:.4} pads {} ",
+            top - p.state.nodes[n][0],
+            p.load,
+            p.load_direction,
+            p.negatives,
+            p.distance,
+            p.state.nodes[0][2],
+            p.state.nodes[n][2],
+            contacts.len()
+        );
+        let mut before = -1.0;
+        for c in &contacts {
+            if c.place - before > 1.5 * c.width {
+                print!(
+                    "[{:.3}{}{}:{:.1e}",
+                    c.place,
+                    if c.side > 0.0 { '+' } else { '-' },
+                    if c.at_corner { "C" } else { "" },
+                    c.push
+                );
+            }
+            before = c.place;
+        }
+        println!();
+    }
+}
