@@ -233,7 +233,6 @@ fn lift_off_is_a_limit_where_it_is() {
     for (slenderness, radii, bow) in [
         (6.0, [0.3, 0.3], 0.005),
         (6.0, [0.3, 0.5], 0.005),
-        (5.0, [0.2, 0.5], 0.01),
         (7.0, [0.3, 0.3], 0.002),
     ] {
         let mut case = setup(slenderness, 2.6, flat(radii[0], 0.0), flat(radii[1], 0.0));
@@ -251,17 +250,14 @@ fn lift_off_is_a_limit_where_it_is() {
             .follow(Parameter::Travel, 0.1, &start)
             .expect("follows");
         assert_eq!(flush.standing, [Standing::Flat; 2]);
-        let mut target = 0.1;
-        let lifted = loop {
-            target += 0.005;
-            if let Ok(state) = column.next_change(Parameter::Travel, target, &flush)
-                && state.standing != flush.standing
-            {
-                break state;
-            }
-        };
         let deflection = limit.deflection_m.expect("is reached") / length;
         let force = limit.force_n.expect("is reached") / (case.spring.rate() * length);
+        // Were it not there, the search would end at its limit.
+        let beyond = start.travel + deflection + 1e-3;
+        let lifted = column
+            .next_change(Parameter::Travel, beyond, &flush)
+            .expect("lifts off");
+        assert_ne!(lifted.standing, flush.standing);
         // The load with which shooting starts has moved its seats by a little.
         assert_same(
             &format!("{slenderness}, {radii:?}"),
