@@ -8,6 +8,8 @@ use crate::setup::Setup;
 pub(super) struct Leaned {
     /// Smallest room; `None` without a guide beside the column.
     pub room: Option<f64>,
+    /// Where it is.
+    pub tightest_place: Option<f64>,
     /// All forces added up.
     pub push: f64,
     /// The largest over any one pitch, with its place.
@@ -34,7 +36,8 @@ impl Leaned {
         let spans = spans(&contacts, pitch);
         Leaned {
             room: room.map(|tight| tight.value),
-            push: contacts.iter().map(|c| c.push).sum(),
+            tightest_place: room.map(|tight| tight.place),
+            push: total(contacts.iter().map(|c| c.push)),
             on_one_coil: on_one_coil(&contacts, pitch),
             places: spans.len() as u32,
             longest: spans
@@ -45,14 +48,15 @@ impl Leaned {
                     .iter()
                     .fold(0.0, |longest: f64, span| longest.max(span.1 - span.0))
                 / (2.0 * std::f64::consts::PI),
-            at_corners: contacts
-                .iter()
-                .filter(|c| c.at_corner)
-                .map(|c| c.push)
-                .sum(),
-            drag: contacts.iter().map(|c| c.drag).sum(),
+            at_corners: total(contacts.iter().filter(|c| c.at_corner).map(|c| c.push)),
+            drag: total(contacts.iter().map(|c| c.drag)),
         }
     }
+}
+
+/// The sum; of nothing it is nought, not minus nought.
+fn total(values: impl Iterator<Item = f64>) -> f64 {
+    values.fold(0.0, |sum, value| sum + value)
 }
 
 /// Where a column leans at `state`, for people.

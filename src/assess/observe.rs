@@ -134,6 +134,7 @@ impl Observer {
                 bottom_lift_rad: seats_pressed[0].turned,
                 top_lift_rad: seats_pressed[1].turned,
                 guide_room_m: guide.room.map(|room| room * scale.length),
+                guide_tightest_place: guide.tightest_place,
                 guide_force_n: guide.push * scale.force,
                 guide_coil_force_n: guide.on_one_coil.value * scale.force,
                 guide_coil_place: guide.on_one_coil.place,

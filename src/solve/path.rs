@@ -142,13 +142,15 @@ pub fn follow<const B: usize, const I: usize>(
                 walk.refused += 1;
                 step *= 0.5;
                 let kinks = system.has_kinks() && walk.corners.len() < MOST_CORNERS;
-                if kinks && step < AT_A_KINK && walk.corners.last() != Some(&(points.len() - 1)) {
-                    if let Some(behind) = behind_kink(system, newton, &points[points.len() - 1]) {
-                        walk.corners.push(points.len());
-                        points.push(behind);
-                        step = BEHIND_A_KINK;
-                        continue;
-                    }
+                if kinks
+                    && step < AT_A_KINK
+                    && walk.corners.last() != Some(&(points.len() - 1))
+                    && let Some(behind) = behind_kink(system, newton, &points[points.len() - 1])
+                {
+                    walk.corners.push(points.len());
+                    points.push(behind);
+                    step = BEHIND_A_KINK;
+                    continue;
                 }
                 if step < settings.smallest_step {
                     return (Outcome::Lost(trouble), walk);
