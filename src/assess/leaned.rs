@@ -14,6 +14,8 @@ pub(super) struct Leaned {
     pub push: f64,
     /// The largest over any one pitch, with its place.
     pub on_one_coil: Peak,
+    /// On guides that may not be touched.
+    pub forbidden: f64,
     /// Separate places.
     pub places: u32,
     /// Length of the longest of them.
@@ -39,6 +41,7 @@ impl Leaned {
             tightest_place: room.map(|tight| tight.place),
             push: total(contacts.iter().map(|c| c.push)),
             on_one_coil: on_one_coil(&contacts, pitch),
+            forbidden: total(contacts.iter().filter(|c| !c.may_touch).map(|c| c.push)),
             places: spans.len() as u32,
             longest: spans
                 .iter()
@@ -133,6 +136,7 @@ mod tests {
             push,
             drag: 0.0,
             at_corner: false,
+            may_touch: true,
         }
     }
 

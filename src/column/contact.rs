@@ -26,6 +26,65 @@ pub struct Contact {
     pub drag: f64,
     /// Whether it leans on the corner at the end of a guide.
     pub at_corner: bool,
+    /// Whether it may lean there.
+    pub may_touch: bool,
+}
+
+/// A place of the axis.
+struct Place {
+    place: f64,
+    x: f64,
+    y: f64,
+    x_slope: f64,
+    y_slope: f64,
+    /// F_x, as the growth of the coil has it.
+    force: f64,
+}
+
+impl Place {
+    fn of(station: &Station) -> Self {
+        Place {
+            place: station.place,
+            x: station.x,
+            y: station.y,
+            x_slope: station.x_slope,
+            y_slope: station.y_slope,
+            force: station.axial_force * station.angle.cos()
+                - station.shear_force * station.angle.sin(),
+        }
+    }
+
+    /// Where the axis passes x between two stations: of the cubics through both.
+    fn at(stations: &[Station], x: f64) -> Option<Self> {
+        let pair = stations
+            .windows(2)
+            .find(|pair| pair[0].x <= x && x < pair[1].x)?;
+        let (one, other) = (Place::of(&pair[0]), Place::of(&pair[1]));
+        let h = other.place - one.place;
+        let cubic = |a: f64, b: f64, slope_a: f64, slope_b: f64, u: f64| {
+            let (p, q) = (slope_a * h, slope_b * h);
+            let value =
+                a + u * (p + u * (3.0 * (b - a) - 2.0 * p - q + u * (p + q - 2.0 * (b - a))));
+            let slope =
+                p + u * (2.0 * (3.0 * (b - a) - 2.0 * p - q) + 3.0 * u * (p + q - 2.0 * (b - a)));
+            (value, slope / h)
+        };
+        let along = |u: f64| cubic(one.x, other.x, one.x_slope, other.x_slope, u);
+        let mut u = (x - one.x) / (other.x - one.x);
+        for _ in 0..8 {
+            let (value, slope) = along(u);
+            u = (u - (value - x) / (slope * h)).clamp(0.0, 1.0);
+        }
+        let (y, y_slope) = cubic(one.y, other.y, one.y_slope, other.y_slope, u);
+        Some(Place {
+            place: one.place + u * h,
+            x,
+            y,
+            x_slope: along(u).1,
+            y_slope,
+            force: one.force + u * (other.force - one.force),
+        })
+    }
 }
 
 /// A place dragged along a guide.
@@ -66,6 +125,7 @@ impl Column {
                     // The jump of the force is the force on the column, reversed.
                     drag: -(jump[0] + slope * jump[1]),
                     at_corner: corner.is_some(),
+                    may_touch: facing.may_touch,
                 });
             });
         }
@@ -119,17 +179,31 @@ impl Column {
         let depth = walls
             .flat_map(|wall| [(wall, 1.0), (wall, -1.0)])
             .map(|(wall, side)| {
-                Peak::of(stations.iter().filter_map(|s| {
-                    // F_x, as the growth of the coil has it.
-                    let force = s.axial_force * s.angle.cos() - s.shear_force * s.angle.sin();
-                    if !wall.covers(s.x, 0.0, &top) {
-                        return None;
-                    }
-                    let facing = wall.surface(s.x, force, compliance, &top);
+                let depth_at = |s: &Place| {
+                    let facing = wall.surface(s.x, s.force, compliance, &top);
                     let depth = side * (s.y - facing.axis) - facing.clearance;
-                    let slope = side * (s.y_slope - facing.slope * s.x_slope);
-                    Some((s.place, depth, slope))
-                }))
+                    (
+                        s.place,
+                        depth,
+                        side * (s.y_slope - facing.slope * s.x_slope),
+                    )
+                };
+                let beside = stations
+                    .iter()
+                    .map(Place::of)
+                    .filter(|s| wall.covers(s.x, 0.0, &top));
+                let along = Peak::of(beside.map(|s| depth_at(&s)));
+                let corners = wall.corners(&top).into_iter().flatten();
+                corners
+                    .filter_map(|x| Place::at(stations, x))
+                    .fold(along, |peak, s| {
+                        let (place, value, _) = depth_at(&s);
+                        if value > peak.value {
+                            Peak { place, value }
+                        } else {
+                            peak
+                        }
+                    })
             })
             .max_by(|a, b| a.value.total_cmp(&b.value))?;
         depth.value.is_finite().then_some(Peak {
