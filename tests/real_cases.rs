@@ -160,7 +160,7 @@ fn check(setup: &Setup, answer: &Assessment) -> Result<(), TestCaseError> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(24))]
+    #![proptest_config(ProptestConfig::with_cases(10))]
     #[test]
     fn every_valid_case_is_answered_or_says_why_not(setup in real_case()) {
         check(&setup, &assess(&setup, "random"))?;

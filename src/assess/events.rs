@@ -221,7 +221,11 @@ impl Track<'_> {
                 s.forbidden_room.unwrap_or(f64::INFINITY)
             }),
             Watch::state(EventKind::FirstTouch, |s| {
-                s.point.guide_room_m.unwrap_or(f64::INFINITY)
+                if s.point.guide_force_n > 0.0 {
+                    -s.point.guide_force_n
+                } else {
+                    s.point.guide_room_m.unwrap_or(f64::INFINITY)
+                }
             }),
             Watch::state(EventKind::LineContact, |s| pitch - s.point.guide_longest_m),
             Watch::state(EventKind::LooseFlat, |s| 1.0 - s.flat),

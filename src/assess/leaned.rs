@@ -8,10 +8,14 @@ use crate::setup::Setup;
 pub(super) struct Leaned {
     /// Smallest room; `None` without a guide beside the column.
     pub room: Option<f64>,
+    /// Where it is.
+    pub tightest_place: Option<f64>,
     /// All forces added up.
     pub push: f64,
     /// The largest over any one pitch, with its place.
     pub on_one_coil: Peak,
+    /// On guides that may not be touched.
+    pub forbidden: f64,
     /// Separate places.
     pub places: u32,
     /// Length of the longest of them.
@@ -34,8 +38,10 @@ impl Leaned {
         let spans = spans(&contacts, pitch);
         Leaned {
             room: room.map(|tight| tight.value),
-            push: contacts.iter().map(|c| c.push).sum(),
+            tightest_place: room.map(|tight| tight.place),
+            push: total(contacts.iter().map(|c| c.push)),
             on_one_coil: on_one_coil(&contacts, pitch),
+            forbidden: total(contacts.iter().filter(|c| !c.may_touch).map(|c| c.push)),
             places: spans.len() as u32,
             longest: spans
                 .iter()
@@ -45,14 +51,15 @@ impl Leaned {
                     .iter()
                     .fold(0.0, |longest: f64, span| longest.max(span.1 - span.0))
                 / (2.0 * std::f64::consts::PI),
-            at_corners: contacts
-                .iter()
-                .filter(|c| c.at_corner)
-                .map(|c| c.push)
-                .sum(),
-            drag: contacts.iter().map(|c| c.drag).sum(),
+            at_corners: total(contacts.iter().filter(|c| c.at_corner).map(|c| c.push)),
+            drag: total(contacts.iter().map(|c| c.drag)),
         }
     }
+}
+
+/// The sum; of nothing it is nought, not minus nought.
+fn total(values: impl Iterator<Item = f64>) -> f64 {
+    values.fold(0.0, |sum, value| sum + value)
 }
 
 /// Where a column leans at `state`, for people.
@@ -129,6 +136,7 @@ mod tests {
             push,
             drag: 0.0,
             at_corner: false,
+            may_touch: true,
         }
     }
 

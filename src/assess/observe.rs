@@ -31,7 +31,8 @@ pub(super) struct Seen {
     pub slides: Option<f64>,
     /// How long what lies flat on a guide is, over the length at which it buckles away by itself.
     pub flat: f64,
-    /// Smallest room to a guide that may not be touched, in the column's length.
+    /// Smallest room to a guide that may not be touched, in the column's length; where it is touched,
+    /// the force, negative.
     pub forbidden_room: Option<f64>,
     /// Direction of the path: change of the force, N, and of the travel, m.
     pub along: (f64, f64),
@@ -134,6 +135,7 @@ impl Observer {
                 bottom_lift_rad: seats_pressed[0].turned,
                 top_lift_rad: seats_pressed[1].turned,
                 guide_room_m: guide.room.map(|room| room * scale.length),
+                guide_tightest_place: guide.tightest_place,
                 guide_force_n: guide.push * scale.force,
                 guide_coil_force_n: guide.on_one_coil.value * scale.force,
                 guide_coil_place: guide.on_one_coil.place,
@@ -153,7 +155,13 @@ impl Observer {
             slides: sliding_ends(setup, &seats_pressed, scale.force),
             forbidden_room: column
                 .tightest(&solved.state, &stations, true)
-                .map(|tight| tight.value),
+                .map(|tight| {
+                    if guide.forbidden > 0.0 {
+                        -guide.forbidden
+                    } else {
+                        tight.value
+                    }
+                }),
             along: (force_along, travel_along),
         }
     }

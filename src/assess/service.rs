@@ -59,7 +59,7 @@ pub(super) fn guides(
     let (with, bare_first) = (first(limits), first(&bare_limits));
     Some(GuideAnswer {
         first_touch_m: touch.map(|event| event.reached.0),
-        first_touch_place: touch.map(|event| event.point.bow_place),
+        first_touch_place: touch.and_then(|event| event.point.guide_tightest_place),
         line_contact_m: at(EventKind::LineContact),
         second_place_m: at(EventKind::SecondPlace),
         loose_flat_m: at(EventKind::LooseFlat),

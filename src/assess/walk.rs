@@ -34,9 +34,9 @@ pub(super) const BRACKET: f64 = 1e-11;
 /// Share of the load scale by which a path may go back into tension before it is left.
 const PULLED: f64 = 0.02;
 /// Force, in those of the straight spring pressed solid, at which a path with contacts is left.
-const JAMMED: f64 = 4.0;
+const JAMMED: f64 = 2.0;
 /// Points after the largest travel without regaining it before a path with contacts is left.
-const MOST_AFTER_LOSS: usize = 250;
+const MOST_AFTER_LOSS: usize = 120;
 /// First step on a branch: so short that the slope there is that at the branch point but for its
 /// square, and so long that the slope is far above round-off.
 const FIRST_ON_BRANCH: f64 = 2e-3;

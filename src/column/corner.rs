@@ -21,7 +21,8 @@
 
 use super::basis::{FUNCTIONS, slopes, values};
 use super::element::Element;
-use super::lean::{Held, PADS, PadTables, pad_of};
+use super::lean::{Held, PADS};
+use super::nodes::{PadTables, pad_of};
 
 /// What changes at a corner as its place moves along the column.
 #[derive(Clone, Copy, Debug)]

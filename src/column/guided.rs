@@ -1,13 +1,13 @@
-//! The guides of a column: which elements lean on them, and what passes through the contact.
+//! The guides of a column: which elements lean on them, and what they add to the chain.
 
 use super::element::{Element, INNER, PointLaw};
+use super::judge::{AtCorner, Judge};
 use super::layout::{Column, ColumnState};
-use super::lean::{Held, PADS, PadTables, SLOTS};
-use super::pads::{AtCorner, Condensed, Judge, PAD_UNKNOWNS, Pad};
-use super::profile::{Peak, Station};
-use super::seat::Touch;
+use super::lean::{Held, PADS, SLOTS};
+use super::nodes::PadTables;
+use super::pads::{Condensed, PAD_UNKNOWNS, Pad};
 use super::wall::{TopSeat, Wall};
-use crate::solve::{Assembled, System};
+use crate::solve::Assembled;
 use nalgebra::{SVector, Vector3};
 
 /// Weight of a gap against a force in the search for what leans (see [`super::lean`]), in EI/L³: of
@@ -38,7 +38,7 @@ pub struct Leaning {
     /// Whether the last assembly changed what any pad does.
     pub(super) changed: bool,
     /// Where each pad was along x when the step began.
-    was: Vec<f64>,
+    pub(super) was: Vec<f64>,
     /// Where the corners of each wall were along the column then.
     corners_were: Vec<[Option<f64>; 2]>,
     /// Of the last assembly.
@@ -46,23 +46,6 @@ pub struct Leaning {
     condensed: Vec<Option<Condensed>>,
     /// From the pads' unknowns of the state to those it was assembled with.
     mended: Vec<[[f64; 2]; SLOTS]>,
-}
-
-/// A stretch of the column that leans on a guide, in the column's units.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Contact {
-    /// Its middle along the stress-free axis, share of the length from the bottom.
-    pub place: f64,
-    /// Its length, share of the column's.
-    pub width: f64,
-    /// Side of the strip on which it leans: +1 at +y.
-    pub side: f64,
-    /// Force across the wall.
-    pub push: f64,
-    /// Force of friction on the column along x.
-    pub drag: f64,
-    /// Whether it leans on the corner at the end of a guide.
-    pub at_corner: bool,
 }
 
 /// The force on a corner in an element next to `e`.
@@ -80,22 +63,6 @@ fn neighbours(e: usize, side: &[f64]) -> [f64; 2] {
     } else {
         before
     }
-}
-
-/// A place dragged along a guide.
-struct Dragged {
-    slot: Slot,
-    /// Force of friction on it along x.
-    drag: f64,
-    /// Whether its guide rides on the top seat.
-    rides: bool,
-}
-
-enum Slot {
-    /// Pad of an element.
-    Pad(usize, usize),
-    /// Corner at an end of a wall.
-    Corner(usize, usize),
 }
 
 impl Leaning {
@@ -335,7 +302,7 @@ impl Leaning {
         self.forced
     }
 
-    fn judge<'a>(&'a self, top: &'a TopSeat) -> Judge<'a> {
+    pub(super) fn judge<'a>(&'a self, top: &'a TopSeat) -> Judge<'a> {
         Judge {
             walls: &self.walls,
             top,
@@ -374,7 +341,7 @@ impl Leaning {
 
     /// The corner of a guide in an element; its place is put into `held`, and the force on it where
     /// it has just come over from a neighbour. `side` are the side unknowns of the state.
-    fn corner_in(
+    pub(super) fn corner_in(
         &self,
         e: usize,
         top: &TopSeat,
@@ -453,213 +420,5 @@ impl Column {
     /// Whether it has guides.
     pub fn is_guided(&self) -> bool {
         self.leaning.is_some()
-    }
-
-    /// Where it leans at a state, from bottom to top.
-    pub fn contacts(&self, state: &ColumnState, out: &mut Vec<Contact>) {
-        out.clear();
-        let Some(leaning) = &self.leaning else { return };
-        let top = self.top_seat(state);
-        let width = 1.0 / (self.elements.len() * PADS) as f64;
-        for e in 0..self.elements.len() {
-            self.in_element(leaning, state, &top, e, |k, pad, jump, corner| {
-                let Pad::Leans { side, facing, .. } = pad else {
-                    return;
-                };
-                let slope = corner.map_or(facing.slope, |corner| corner.tilt);
-                let pad_place = ((e * PADS + k) as f64 + 0.5) * width;
-                out.push(Contact {
-                    place: corner.map_or(pad_place, |corner| corner.place),
-                    width,
-                    side: *side,
-                    push: side * jump[1],
-                    // The jump of the force is the force on the column, reversed.
-                    drag: -(jump[0] + slope * jump[1]),
-                    at_corner: corner.is_some(),
-                });
-            });
-        }
-        out.sort_by(|a, b| a.place.total_cmp(&b.place));
-    }
-
-    /// Calls `act` for every place of an element through which force passes: its number, what it does,
-    /// its jump, and the corner it is, if it is one.
-    fn in_element(
-        &self,
-        leaning: &Leaning,
-        state: &ColumnState,
-        top: &TopSeat,
-        e: usize,
-        mut act: impl FnMut(usize, &Pad, [f64; 2], Option<&AtCorner>),
-    ) {
-        let jumps = Leaning::jumps(&state.side, e);
-        if jumps.iter().all(|j| j[1] == 0.0) {
-            return;
-        }
-        let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
-        let mut held = leaning.held(self, state, &a, &b, e);
-        let corner = leaning.corner_in(e, top, &state.side, &mut held);
-        let means = held.means(&leaning.tables);
-        let were = &leaning.was[e * SLOTS..(e + 1) * SLOTS];
-        let judge = leaning.judge(top);
-        let decided = judge.decide(&held, &means, were, corner.as_ref());
-        for (k, (pad, _)) in decided.iter().enumerate() {
-            if jumps[k][1] != 0.0 {
-                act(k, pad, jumps[k], corner.as_ref().filter(|_| k == PADS));
-            }
-        }
-    }
-
-    /// The tightest place between the axis and the guides, of all or of those that may not be
-    /// touched: its place and the room there, negative inside a guide; `None` where there is no guide
-    /// beside the column. `stations` are those of [`Column::profile`] at this state.
-    pub fn tightest(
-        &self,
-        state: &ColumnState,
-        stations: &[Station],
-        forbidden_only: bool,
-    ) -> Option<Peak> {
-        let leaning = self.leaning.as_ref()?;
-        let top = self.top_seat(state);
-        let compliance = self.elements[0].points[0].axial_compliance;
-        let walls = leaning
-            .walls
-            .iter()
-            .filter(|wall| !(forbidden_only && wall.may_touch));
-        let depth = walls
-            .flat_map(|wall| [(wall, 1.0), (wall, -1.0)])
-            .map(|(wall, side)| {
-                Peak::of(stations.iter().filter_map(|s| {
-                    // F_x, as the growth of the coil has it.
-                    let force = s.axial_force * s.angle.cos() - s.shear_force * s.angle.sin();
-                    if !wall.covers(s.x, 0.0, &top) {
-                        return None;
-                    }
-                    let facing = wall.surface(s.x, force, compliance, &top);
-                    let depth = side * (s.y - facing.axis) - facing.clearance;
-                    let slope = side * (s.y_slope - facing.slope * s.x_slope);
-                    Some((s.place, depth, slope))
-                }))
-            })
-            .max_by(|a, b| a.value.total_cmp(&b.value))?;
-        depth.value.is_finite().then_some(Peak {
-            place: depth.place,
-            value: -depth.value,
-        })
-    }
-
-    /// How far a place slides along its guide, towards +x, from one state to the next.
-    fn slid(
-        &self,
-        leaning: &Leaning,
-        dragged: &Dragged,
-        states: [(&ColumnState, &TopSeat); 2],
-    ) -> f64 {
-        match dragged.slot {
-            Slot::Pad(e, k) => {
-                let [before, after] = states.map(|(state, top)| {
-                    let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
-                    let held = leaning.held(self, state, &a, &b, e);
-                    let x = held.means(&leaning.tables)[k][0];
-                    if dragged.rides { x - top.x } else { x }
-                });
-                after - before
-            }
-            Slot::Corner(wall, end) => {
-                let places = states.map(|(state, top)| {
-                    (0..self.elements.len()).find_map(|e| {
-                        let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
-                        let mut held = leaning.held(self, state, &a, &b, e);
-                        let x = leaning.walls[wall].corners(top)[end]?;
-                        if !held.passes(x) {
-                            return None;
-                        }
-                        let t = held.find_place(&leaning.tables, x);
-                        let rate = held.brink(t).mean[0];
-                        Some(((e as f64 + 0.5 * (1.0 + t)) * self.elements[e].length, rate))
-                    })
-                });
-                match places {
-                    [Some((before, rate)), Some((after, other))] => {
-                        -0.5 * (rate + other) * (after - before)
-                    }
-                    _ => 0.0,
-                }
-            }
-        }
-    }
-
-    /// Work of the friction on guides and swivels from one state to the next, in units of force ×
-    /// length; negative: it takes energy.
-    pub fn friction_work(&self, from: &ColumnState, to: &ColumnState) -> f64 {
-        let last = self.elements.len();
-        let mut work = 0.0;
-        for (which, seat) in self.seats.iter().enumerate() {
-            if let Touch::Swivel { .. } = seat.touch {
-                let turn = to.nodes[which * last][2] - from.nodes[which * last][2];
-                let moment = |state| self.end_actions(state)[which][2];
-                work += 0.5 * (moment(from) + moment(to)) * turn;
-            }
-        }
-        let Some(leaning) = &self.leaning else {
-            return work;
-        };
-        if leaning.symmetric {
-            return work;
-        }
-        // (drag, place, what carries the guide) of every place that leans, at both states.
-        let gather = |state: &ColumnState| {
-            let top = self.top_seat(state);
-            let mut found: Vec<Dragged> = Vec::new();
-            for e in 0..last {
-                self.in_element(leaning, state, &top, e, |k, pad, jump, corner| {
-                    let Pad::Leans { facing, .. } = pad else {
-                        return;
-                    };
-                    let slope = corner.map_or(facing.slope, |corner| corner.tilt);
-                    found.push(Dragged {
-                        slot: match corner {
-                            Some(corner) => Slot::Corner(corner.wall, corner.end),
-                            None => Slot::Pad(e, k),
-                        },
-                        drag: -(jump[0] + slope * jump[1]),
-                        rides: facing.from_top,
-                    });
-                });
-            }
-            (found, top)
-        };
-        let ((before, top_before), (after, top_after)) = (gather(from), gather(to));
-        let both = before
-            .iter()
-            .map(|d| (d, 0))
-            .chain(after.iter().map(|d| (d, 1)));
-        for (dragged, _) in both {
-            let moved = self.slid(leaning, dragged, [(from, &top_before), (to, &top_after)]);
-            work += 0.5 * dragged.drag * moved;
-        }
-        work
-    }
-
-    /// Whether friction acts on it.
-    pub fn has_friction(&self) -> bool {
-        !self.is_symmetric()
-            && (self
-                .seats
-                .iter()
-                .any(|seat| matches!(seat.touch, Touch::Swivel { .. }))
-                || self
-                    .leaning
-                    .as_ref()
-                    .is_some_and(|leaning| leaning.walls.iter().any(|wall| wall.friction > 0.0)))
-    }
-
-    /// Wave number q, in 1/L, of the waves into which the straight column bends freely under an axial
-    /// force: `q² = P (a + b)/EI`, a = 1 − P/EA, b = P/GA. A part of length ℓ that lies flat on a wall,
-    /// its ends held in place and slope, buckles away from it at `q ℓ = 2π`.
-    pub fn wave_number(&self, force: f64) -> f64 {
-        let law = &self.elements[0].points[0];
-        let open = 1.0 + force * (law.shear_compliance - law.axial_compliance);
-        (force * open / law.bending).max(0.0).sqrt()
     }
 }

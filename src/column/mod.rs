@@ -3,12 +3,15 @@
 
 mod assembly;
 mod basis;
+mod contact;
 mod corner;
 mod element;
 mod ends;
 mod guided;
+mod judge;
 mod layout;
 mod lean;
+mod nodes;
 mod pads;
 mod profile;
 mod seat;
@@ -17,9 +20,10 @@ mod support;
 mod wall;
 
 pub use basis::GAUSS_POINTS;
+pub use contact::Contact;
 pub use element::{Element, ElementForms, Lever, PointLaw};
 pub use ends::SeatPress;
-pub use guided::{Contact, Leaning};
+pub use guided::Leaning;
 pub use layout::{Column, ColumnState, EndLaws, Hold, NaturalShape, NodeLoad, Scale};
 pub use profile::{Peak, Station};
 pub use seat::{Seat, Touch};

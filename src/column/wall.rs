@@ -57,6 +57,8 @@ pub(super) struct Facing {
     pub friction: f64,
     /// Whether it rides on the top seat.
     pub from_top: bool,
+    /// Whether it may be touched.
+    pub may_touch: bool,
 }
 
 impl Wall {
@@ -115,6 +117,7 @@ impl Wall {
             by_force_bend: sense * bend * compliance * compliance,
             friction: self.friction,
             from_top: self.from_top,
+            may_touch: self.may_touch,
         }
     }
 

@@ -43,6 +43,8 @@ pub struct PathPoint {
     /// Smallest room between coil and guide, m, negative by what the discretisation leaves;
     /// `null` without a guide.
     pub guide_room_m: Option<Metre>,
+    /// Where that is, share of the deformable length from the bottom; `null` without a guide.
+    pub guide_tightest_place: Option<f64>,
     /// Forces with which the spring leans on its guides, added up, N.
     pub guide_force_n: Newton,
     /// The largest share of them on one coil: over any one pitch of the spring, N.

@@ -265,7 +265,7 @@ pub(super) fn at_distance<const B: usize, const I: usize>(
     };
     let mut iterations = 0;
     // The last step may go over a kink.
-    for _ in 0..MOST_AGAIN {
+    for again in 0..MOST_AGAIN {
         newton.solve_constrained(system, &mut state, &mut load, &constraint)?;
         iterations += newton.iterations;
         let point = complete(system, newton, state, load, &row, d);
@@ -277,7 +277,8 @@ pub(super) fn at_distance<const B: usize, const I: usize>(
                 last_step: apart,
             });
         }
-        if !system.changed() {
+        let within_round_off = again > 0 && newton.iterations == 1;
+        if !system.changed() || within_round_off {
             newton.iterations = iterations;
             return Ok(point);
         }

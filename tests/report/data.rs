@@ -162,7 +162,7 @@ fn the_table_reads_back_digit_for_digit() {
         let table = report::csv(&path).unwrap();
         let mut reader = csv::Reader::from_reader(table.as_slice());
         let columns = reader.headers().unwrap().clone();
-        assert_eq!(columns.len(), 29);
+        assert_eq!(columns.len(), 30);
         let rows: Vec<csv::StringRecord> = reader.records().map(|row| row.unwrap()).collect();
         assert_eq!(rows.len(), path.points.len());
         for (row, point) in rows.iter().zip(&path.points) {

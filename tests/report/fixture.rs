@@ -53,6 +53,7 @@ fn point(deflection_m: f64, force_n: f64, bow_m: f64) -> PathPoint {
         bottom_lift_rad: 0.0,
         top_lift_rad: 0.0,
         guide_room_m: None,
+        guide_tightest_place: None,
         guide_force_n: 0.0,
         guide_coil_force_n: 0.0,
         guide_coil_place: 0.0,
@@ -147,6 +148,7 @@ fn limit(name: LimitKind, at: Option<(f64, f64)>, note: &str) -> Limit {
             0.15
         },
         error_m: found.map(|_| 2.3e-12),
+        for_information: false,
         governs: false,
         beyond_solid: false,
         looked_up_to_m: None,

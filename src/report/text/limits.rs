@@ -55,7 +55,11 @@ pub fn limits(assessment: &Assessment, units: Units) -> String {
                         or_dash(limit.share_of_free_length.map(|s| percent_number(s, 1))),
                         or_dash(limit.force_n.map(|f| fixed(force.of(f), force_decimals))),
                         or_dash(limit.margin.map(|m| percent_number(m, 2))),
-                        shortest(100.0 * limit.required_margin),
+                        if limit.for_information {
+                            "-".into()
+                        } else {
+                            shortest(100.0 * limit.required_margin)
+                        },
                         or_dash(limit.error_m.map(|e| error(length.of(e)))),
                     ],
                 )
