@@ -201,11 +201,7 @@ impl Track<'_> {
             let watch = Watch::state(EventKind::Limit(LimitKind::Slide), |s| {
                 s.slides.unwrap_or(f64::INFINITY)
             });
-            events.extend(if self.seen[1].slides.is_some_and(|kept| kept <= 0.0) {
-                Some(self.event(watch.kind, &self.points[1], 0.0, 1.0))
-            } else {
-                self.first(&watch, 1)
-            });
+            events.extend(self.first(&watch, 1));
         }
     }
 
@@ -241,8 +237,8 @@ impl Track<'_> {
     /// The first point from index `from` on at which the watch turns from positive to not.
     fn first(&mut self, watch: &Watch<'_>, from: usize) -> Option<Event> {
         let value = |i: usize| (watch.function)(&self.seen[i]);
-        if from == 0 && !self.seen.is_empty() && value(0) <= 0.0 {
-            return Some(self.event(watch.kind, &self.points[0], 0.0, 0.0));
+        if from < self.seen.len() && value(from) <= 0.0 {
+            return Some(self.event(watch.kind, &self.points[from], 0.0, from as f64));
         }
         let after = (from..self.seen.len().saturating_sub(1))
             .find(|i| value(*i) > 0.0 && value(i + 1) <= 0.0)?;

@@ -98,27 +98,33 @@ fn spans(contacts: &[Contact], pitch: f64) -> Vec<(f64, f64)> {
     spans.iter().map(|(from, to, _)| (*from, *to)).collect()
 }
 
-/// The largest force over any stretch of one pitch, on one side.
+/// The largest force over any stretch of one pitch, on one side. As the force is even over each pad,
+/// the largest is over a stretch that begins or ends with one.
 fn on_one_coil(contacts: &[Contact], pitch: f64) -> Peak {
     let mut peak = Peak {
         place: 0.0,
         value: 0.0,
     };
-    for (i, first) in contacts.iter().enumerate() {
-        // A stretch that begins where this pad does.
-        let from = first.place - 0.5 * first.width;
-        let (mut force, mut moment) = (0.0, 0.0);
-        for contact in contacts[i..].iter().filter(|c| c.side == first.side) {
-            let start = contact.place - 0.5 * contact.width;
-            let share = ((from + pitch - start) / contact.width).clamp(0.0, 1.0);
-            force += share * contact.push;
-            moment += share * contact.push * contact.place;
-        }
-        if force > peak.value {
-            peak = Peak {
-                place: moment / force,
-                value: force,
-            };
+    for bound in contacts {
+        let (start, end) = (
+            bound.place - 0.5 * bound.width,
+            bound.place + 0.5 * bound.width,
+        );
+        for (from, to) in [(start, start + pitch), (end - pitch, end)] {
+            let (mut force, mut moment) = (0.0, 0.0);
+            for contact in contacts.iter().filter(|c| c.side == bound.side) {
+                let begins = contact.place - 0.5 * contact.width;
+                let inside = to.min(begins + contact.width) - from.max(begins);
+                let share = (inside / contact.width).clamp(0.0, 1.0);
+                force += share * contact.push;
+                moment += share * contact.push * contact.place;
+            }
+            if force > peak.value {
+                peak = Peak {
+                    place: moment / force,
+                    value: force,
+                };
+            }
         }
     }
     peak
@@ -161,7 +167,7 @@ mod tests {
             .map(|i| pad(0.005 + 0.01 * f64::from(i), f64::from(i), 1.0))
             .collect();
         let peak = on_one_coil(&contacts, 0.025);
-        // A stretch of two pads and a half that begins at a pad: 7 + 8 + 9/2 is the most.
-        approx::assert_abs_diff_eq!(peak.value, 7.0 + 8.0 + 4.5, epsilon = 1e-9);
+        // A stretch of two pads and a half that ends with the heaviest.
+        approx::assert_abs_diff_eq!(peak.value, 9.0 + 8.0 + 3.5, epsilon = 1e-9);
     }
 }

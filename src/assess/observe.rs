@@ -3,7 +3,7 @@
 use super::leaned::Leaned;
 use crate::column::{Column, Peak, SeatPress, Station};
 use crate::result::PathPoint;
-use crate::setup::{Contact, FixedTo, FlatSeat, Setup};
+use crate::setup::{Contact, FlatSeat, Setup};
 use crate::solve;
 use crate::spring::{Wire, compressed_radius, torsion_stress};
 use std::f64::consts::PI;
@@ -60,20 +60,9 @@ impl Observer {
         column.profile(&solved.state, &mut stations);
         let scale = column.scale;
         let last = column.elements();
-        // What the machine feels: a guide that the top seat carries pushes on the machine too, and
-        // the bottom seat alone is left to carry it all.
-        let carried = setup
-            .guides
-            .iter()
-            .any(|guide| guide.fixed_to == FixedTo::Top);
-        let (load, load_along) = if carried {
-            (-solved.state.inner[0][3], -solved.direction.inner[0][3])
-        } else {
-            (solved.load, solved.load_direction)
-        };
-        let force = load * scale.force;
+        let force = solved.load * scale.force;
         let shortening = (self.start_height - solved.state.nodes[last][0]) * scale.length;
-        let force_along = load_along * scale.force;
+        let force_along = solved.load_direction * scale.force;
         let (seats, seat_compliance) = setup.seats_give(force);
         let travel_along =
             -solved.direction.nodes[last][0] * scale.length + force_along * seat_compliance;
@@ -123,8 +112,8 @@ impl Observer {
                 bow_m: bow.value * scale.length,
                 bow_place: bow.place,
                 lateral_m: lateral * scale.length,
-                bottom_rotation_rad: solved.state.nodes[0][2],
-                top_rotation_rad: solved.state.nodes[last][2],
+                bottom_rotation_rad: seats_pressed[0].angle,
+                top_rotation_rad: seats_pressed[1].angle,
                 bottom_moment_n_m: actions[0][2] * scale.moment(),
                 top_moment_n_m: actions[1][2] * scale.moment(),
                 transverse_force_n: solved.state.inner[0][4] * scale.force,

@@ -5,6 +5,8 @@ use super::imperfect::Imperfect;
 use crate::result::{GuideAnswer, Limit, PathPoint, SeatLoad};
 use crate::setup::{LimitKind, Setup};
 
+/// Share of the working force below which the place of a force line means nothing.
+const CARRIES: f64 = 0.05;
 /// Limits that the column itself sets.
 const OF_THE_PATH: [LimitKind; 7] = [
     LimitKind::Bow,
@@ -127,9 +129,13 @@ pub(super) fn seats(setup: &Setup, imperfect: &Imperfect) -> Option<[SeatLoad; 2
     let way = up_to_working(imperfect);
     let working = *way.last()?;
     let installed = setup.duty.installed_deflection;
+    let start = imperfect.fine.event(EventKind::Installed).map(|e| e.point);
     let in_service: Vec<&PathPoint> = way
         .iter()
-        .filter(|point| point.deflection_m >= installed)
+        .chain(&start)
+        .filter(|point| {
+            point.deflection_m >= installed && point.force_n >= CARRIES * working.force_n
+        })
         .collect();
     let load = |thrust: fn(&PathPoint) -> f64, line: fn(&PathPoint) -> Option<f64>| {
         let worst = in_service

@@ -55,7 +55,7 @@ static FRICTION: Field = Field::new(
     "friction",
     Kind::Number(Range::BelowOne),
     "0.12",
-    "Coefficient of friction between coil and guide.",
+    "Coefficient of friction between coil and guide; not with fixed_to = \"top\".",
 )
 .or(Absent::Value("0"));
 static TOUCHING: Field = Field::new(
@@ -207,6 +207,15 @@ fn check_seat(
     seats: [Option<&Support>; 2],
     log: &mut Log,
 ) -> bool {
+    if guide.fixed_to == FixedTo::Top && guide.friction > 0.0 {
+        log.mistakes.push(Mistake::at(
+            row.at(&FRICTION),
+            "friction on a guide that the top seat carries is not computed: the guide moves along \
+             with the spring",
+            "turn the case over, so that the guide is fixed to the bottom; or leave its friction out",
+        ));
+        return false;
+    }
     let (seat, field) = match guide.fixed_to {
         FixedTo::Ground => return true,
         FixedTo::Bottom => (seats[0], &form::BOTTOM),

@@ -96,17 +96,19 @@ impl System<3, INNER> for Column {
         }
     }
 
-    fn ease(&mut self, share: f64, state: &ColumnState) {
+    fn ease(&mut self, share: Option<f64>, state: &ColumnState) {
         let Some(mut leaning) = self.leaning.take() else {
             return;
         };
-        leaning.eased = share >= 1.0;
-        let deepest = if share < 1.0 && share > 0.0 {
+        let entered = share.unwrap_or(0.0);
+        leaning.smooth = share.is_some();
+        leaning.eased = entered >= 1.0;
+        let deepest = if entered < 1.0 && entered > 0.0 {
             leaning.deepest(state, &self.top_seat(state))
         } else {
             0.0
         };
-        leaning.slack = share * deepest;
+        leaning.slack = entered * deepest;
         self.leaning = Some(leaning);
     }
 

@@ -223,7 +223,7 @@ impl Column {
             Slot::Pad(e, k) => {
                 let [before, after] = states.map(|(state, top)| {
                     let (a, b) = (self.pose_at(state, e), self.pose_at(state, e + 1));
-                    let held = leaning.held(self, state, &a, &b, e);
+                    let held = leaning.held_with_corner(self, state, &a, &b, e);
                     let x = held.means(&leaning.tables)[k][0];
                     if dragged.rides { x - top.x } else { x }
                 });

@@ -15,7 +15,9 @@
 //! ```
 //!
 //! or, where it sticks, S_e as it was. S_e is found for every state before anything else; its step
-//! is one of the unknowns eliminated, so that the tangent is exact. The wire is round, and its axis
+//! is one of the unknowns eliminated, so that the tangent is exact; but for a guide that the top seat
+//! carries, whose own motion is left out of it (Newton then converges a little slower, and slopes of
+//! the path are off by some 1e-4). The wire is round, and its axis
 //! would run around the corner on a circle of its radius d/2; at the slopes at which a spring leans
 //! that shifts the place by less than a tenth of d and is left out.
 

@@ -8,7 +8,7 @@ use super::lean::SLOTS;
 use super::seat::{Pose, Touch};
 use super::wall::TopSeat;
 use crate::solve::Assembled;
-use nalgebra::{Matrix3, Vector3};
+use nalgebra::Vector3;
 
 /// Rotation, rad, below which a flat end is flush: round-off.
 const FLUSH: f64 = 1e-13;
@@ -30,6 +30,8 @@ pub struct SeatPress {
     pub line: f64,
     /// Rotation of a flat end out of its seat, rad; 0 where it is flush.
     pub turned: f64,
+    /// Rotation of the end, rad.
+    pub angle: f64,
 }
 
 /// An end at a state: where it is, and what its seat makes of its rotation.
@@ -366,6 +368,19 @@ impl End {
     /// [`super::seat`], and lets friction act.
     pub fn seat_on(&self, node: usize, out: &mut Assembled<3>) {
         let tangent = &mut out.tangent;
+        // The row of F_x, at the pose: a swivel's friction is that of the force it bears.
+        let bears = (
+            out.residual[node][0],
+            tangent.diagonal[node].row(0) * self.pose.by,
+            if node == 0 {
+                tangent.right[0].row(0).into_owned()
+            } else {
+                match tangent.left.get(node - 1) {
+                    Some(left) => left.row(0).into_owned(),
+                    None => tangent.right[node - 1].column(0).transpose(),
+                }
+            },
+        );
         if !self.pose.is_plain() {
             let by = &self.pose.by;
             out.residual[node] = by.tr_mul(&out.residual[node]);
@@ -384,19 +399,20 @@ impl End {
             }
         }
         if let Turning::Drags { factor } = self.turning {
-            let push = out.residual[node][0];
+            let (push, own, across) = bears;
             out.residual[node][2] += factor * push;
-            let add = |block: &mut Matrix3<f64>| {
-                let row = block.row(0) * factor;
-                for (k, value) in row.iter().enumerate() {
-                    block[(2, k)] += value;
-                }
+            let coupling = if node == 0 {
+                tangent.right.get_mut(0)
+            } else {
+                tangent.left.get_mut(node - 1)
             };
-            add(&mut tangent.diagonal[node]);
-            if node == 0 {
-                add(&mut tangent.right[0]);
-            } else if let Some(left) = tangent.left.get_mut(node - 1) {
-                add(left);
+            for k in 0..3 {
+                tangent.diagonal[node][(2, k)] += factor * own[k];
+            }
+            if let Some(coupling) = coupling {
+                for k in 0..3 {
+                    coupling[(2, k)] += factor * across[k];
+                }
             }
         }
     }
@@ -437,6 +453,7 @@ impl Column {
             thrust,
             line: sense * moment / press,
             turned,
+            angle: at[2],
         }
     }
 }

@@ -26,6 +26,8 @@ pub struct Leaning {
     pub(super) symmetric: bool,
     search: f64,
     pub(super) eased: bool,
+    /// Whether friction is left out, at the beginning of a path.
+    pub(super) smooth: bool,
     /// By how much all clearances are widened, at the beginning of a path.
     pub(super) slack: f64,
     /// Whether one pad changes at a time, the one that is farthest from right: late in an iteration,
@@ -118,6 +120,7 @@ impl Leaning {
             symmetric,
             search: SEARCH,
             eased: false,
+            smooth: false,
             slack: 0.0,
             one_at_a_time: false,
             turn: None,
@@ -309,6 +312,7 @@ impl Leaning {
             search: self.search,
             symmetric: self.symmetric,
             slack: self.slack,
+            smooth: self.smooth,
         }
     }
 

@@ -16,6 +16,8 @@ pub(super) struct Judge<'a> {
     pub symmetric: bool,
     /// By how much all clearances are widened.
     pub slack: f64,
+    /// Whether friction is left out.
+    pub smooth: bool,
 }
 
 impl Judge<'_> {
@@ -51,7 +53,7 @@ impl Judge<'_> {
             if held_on <= 0.0 {
                 return (Pad::Away, -held_on);
             }
-            let (motion, by) = if self.symmetric || facing.friction == 0.0 {
+            let (motion, by) = if self.symmetric || self.smooth || facing.friction == 0.0 {
                 (Motion::Slips(0.0), held_on)
             } else {
                 let (slope, moved) = match (k, corner) {

@@ -27,6 +27,9 @@
 //! it. Otherwise the tangent is unsymmetric. (The clearance falls with F_x as the coil grows, and
 //! by the same energy the push shortens the coil a little: `−N ∂c/∂F_x` in the row of F_x.)
 //!
+//! (On a corner the cone of friction is taken about the wall instead of about the axis's own tangent: off by
+//! the square of the slope there, some per cent of μ.)
+//!
 //! Which of (5) holds is found by Newton's own iteration, as a semi-smooth one (Alart & Curnier,
 //! Comput. Methods Appl. Mech. Eng. 92 (1991); Hintermüller, Ito & Kunisch, SIAM J. Optim. 13 (2002);
 //! both from memory): leaning where `N − ρ gap > 0`, sticking where

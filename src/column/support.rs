@@ -64,6 +64,11 @@ fn seat(support: &Support, scale: Scale, start: f64, at_top: bool, real: bool) -
 fn wall(setup: &Setup, guide: &Guide, scale: Scale) -> Wall {
     let spring = &setup.spring;
     let length = |value: f64| value / scale.length;
+    // Its places are counted from the end plane; the column begins at the pivot.
+    let arm = match guide.fixed_to {
+        FixedTo::Ground | FixedTo::Bottom => setup.bottom.arm,
+        FixedTo::Top => setup.top.arm,
+    };
     let half_wire = 0.5 * spring.wire.radial_size();
     // A guide on a seat leans and stands aside with it. The top seat's own position is added there.
     let (offset, tilt) = match guide.fixed_to {
@@ -79,11 +84,11 @@ fn wall(setup: &Setup, guide: &Guide, scale: Scale) -> Wall {
         offset: length(offset),
         slope: tilt.tan(),
         from: if guide.from > 0.0 {
-            length(guide.from)
+            length(guide.from + arm)
         } else {
             f64::NEG_INFINITY
         },
-        to: length(guide.to),
+        to: length(guide.to + arm),
         from_top: guide.fixed_to == FixedTo::Top,
         friction: guide.friction,
         may_touch: guide.touching_allowed,

@@ -7,6 +7,8 @@ use nalgebra::SVector;
 const MOST_ITERATIONS: usize = 14;
 /// The same where one-sided laws may have to change one at a time.
 const MOST_WITH_KINKS: usize = 40;
+/// And where a path begins: a spring may lie on its guide all along.
+const MOST_AT_THE_START: usize = 150;
 /// A step below this is at round-off after it is taken, as convergence is quadratic.
 const SMALL_STEP: f64 = 1e-9;
 /// Where the next step, as quadratic convergence predicts it, is below this, it is not taken.
@@ -114,7 +116,9 @@ impl<const B: usize, const I: usize> Newton<B, I> {
         constraint: Option<&Constraint<'_, B, I>>,
     ) -> Result<f64, NotConverged> {
         let mut last = f64::INFINITY;
-        let most = if system.has_kinks() {
+        let most = if system.has_kinks() && constraint.is_none() {
+            MOST_AT_THE_START
+        } else if system.has_kinks() {
             MOST_WITH_KINKS
         } else {
             MOST_ITERATIONS

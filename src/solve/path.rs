@@ -175,7 +175,9 @@ pub fn follow<const B: usize, const I: usize>(
         }
         base.distance = step;
         walk.steps += 1;
-        if base.regime != next.regime && crosses_another(base, &next) {
+        let odd = base.negatives.abs_diff(next.negatives) % 2 == 1;
+        let same_way = (base.load_direction >= 0.0) == (next.load_direction >= 0.0);
+        if base.regime != next.regime && odd == same_way {
             // No other path is crossed: over the kink this one turns sharply round.
             next.direction.scale(-1.0);
             next.load_direction = -next.load_direction;
@@ -344,7 +346,8 @@ pub fn start<const B: usize, const I: usize>(
 }
 
 /// The state at `load` from a guess that may lie inside of what it must stay out of: without contacts
-/// first, then with contacts that are entered less and less.
+/// first, then with contacts that are entered less and less, and without friction: how a spring was put
+/// in is not known.
 fn begin<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,
@@ -352,19 +355,28 @@ fn begin<const B: usize, const I: usize>(
     load: f64,
 ) -> Result<(), NotConverged> {
     system.depart(state);
-    system.ease(1.0, state);
-    let near = newton.solve_at_load(system, state, load);
-    if near.is_err() {
-        system.ease(0.0, state);
-        return near;
-    }
+    system.ease(Some(1.0), state);
+    let found = newton
+        .solve_at_load(system, state, load)
+        .and_then(|()| take_in(system, newton, state, load));
+    system.ease(None, state);
+    found
+}
+
+/// Takes contacts in, less and less eased.
+fn take_in<const B: usize, const I: usize>(
+    system: &mut impl System<B, I>,
+    newton: &mut Newton<B, I>,
+    state: &mut Unknowns<B, I>,
+    load: f64,
+) -> Result<(), NotConverged> {
     let free = state.clone();
     let (mut share, mut step) = (1.0, 1.0);
     while share > 0.0 {
         let next: f64 = if step < share { share - step } else { 0.0 };
         let mut trial = state.clone();
         system.depart(state);
-        system.ease(next, &free);
+        system.ease(Some(next), &free);
         match newton.solve_at_load(system, &mut trial, load) {
             Ok(()) => {
                 state.copy_from(&trial);
@@ -374,7 +386,6 @@ fn begin<const B: usize, const I: usize>(
             Err(failed) => {
                 step *= 0.5;
                 if step < SMALLEST_EASING {
-                    system.ease(0.0, &free);
                     return Err(failed);
                 }
             }

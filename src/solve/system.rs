@@ -99,10 +99,10 @@ pub trait System<const B: usize, const I: usize> {
         None
     }
 
-    /// Sets how far contacts that come and go give way, to find a state to begin with: 1 leaves them
-    /// out of account, shares below let them be entered by that share of what `state`, found without
-    /// them, does; 0 takes them as they are.
-    fn ease(&mut self, _share: f64, _state: &Unknowns<B, I>) {}
+    /// Sets how far contacts that come and go give way, without friction, to find a state to begin
+    /// with: 1 leaves them out of account, shares below let them be entered by that share of what
+    /// `state`, found without them, does. `None`: they are as they are, and friction acts.
+    fn ease(&mut self, _share: Option<f64>, _state: &Unknowns<B, I>) {}
 
     /// Evaluates residual and tangent at `state` under the load `load`, and remembers what
     /// [`System::recover`] needs. Does not allocate.

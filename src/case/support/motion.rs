@@ -112,12 +112,24 @@ pub(in crate::case) fn check_reach(
     spring: &Spring,
     log: &mut Log,
 ) {
+    if top.motion.is_some() && [top, bottom].iter().any(|seat| seat.axial.gives()) {
+        let field = if filled.is_given(&LEVER) {
+            &LEVER
+        } else {
+            &MOTION
+        };
+        log.mistakes.push(Mistake::at(
+            filled.at(field),
+            "a seat that moves on an arc beside one that gives axially is not computed: the arc would \
+             be counted from the spring's shortening instead of the seat's travel",
+            "leave the axial stiffness rigid, or the arc out",
+        ));
+        return;
+    }
     let (Some(Motion::Lever(arc)), Some(lever)) = (top.motion, filled.table(&LEVER)) else {
         return;
     };
-    let force = spring.rate() * spring.solid_deflection();
-    let seats = top.axial.gives_under(force).0 + bottom.axial.gives_under(force).0;
-    let (largest, needed) = (arc.largest_travel(), spring.solid_deflection() + seats);
+    let (largest, needed) = (arc.largest_travel(), spring.solid_deflection());
     if largest <= needed {
         log.mistakes.push(Mistake::at(
             lever.at(&ACROSS),
