@@ -40,7 +40,7 @@ fn support(top: bool) -> impl Strategy<Value = Support> {
         });
     let link = (spread(0.02, 1.0), any::<bool>()).prop_map(|(length, hanging)| Support {
         link: Some(Link { length, hanging }),
-        ..Support::hinged()
+        ..Support::free()
     });
     let lever =
         (-0.02..0.02_f64, 0.15..0.6_f64, any::<bool>()).prop_map(|(along, across, left)| Support {

@@ -79,6 +79,7 @@ fn support(support: &Support) -> SupportEcho {
         offset_m: support.offset,
         contact: contact.to_owned(),
         seat_radius_m: seat.map(|seat| seat.radius),
+        seat_edge_m: seat.map(|seat| seat.edge()),
         ground_share: seat.map(|seat| seat.ground_share),
         friction: seat
             .and_then(|seat| seat.friction)

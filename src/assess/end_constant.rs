@@ -6,7 +6,7 @@ use crate::criteria::{
     handbook_cases, is_beyond_peak, nearest_case, never_critical_below,
 };
 use crate::result::{EffectiveEndConstant, StraightColumn};
-use crate::setup::Setup;
+use crate::setup::{Contact, Setup};
 
 /// From the straight column's critical state, by the closed form read backwards.
 pub(super) fn effective(setup: &Setup, column: &StraightColumn) -> EffectiveEndConstant {
@@ -46,7 +46,15 @@ pub(super) fn effective(setup: &Setup, column: &StraightColumn) -> EffectiveEndC
         handbook_constants: values(&case),
         is_handbook_case: own.is_some(),
         relative_difference: change,
-        sentence: sentence(value, &case, constant, own.is_some(), change, beyond_peak),
+        sentence: sentence(
+            value,
+            &case,
+            constant,
+            own.is_some(),
+            change,
+            beyond_peak,
+            unseen(setup),
+        ),
     }
 }
 
@@ -74,6 +82,19 @@ fn nearest_of(case: &HandbookCase, value: f64) -> EndConstant {
     nearest
 }
 
+/// What the straight path does not see of these supports.
+fn unseen(setup: &Setup) -> &'static str {
+    let swivels = [&setup.bottom, &setup.top]
+        .iter()
+        .any(|end| matches!(end.contact, Contact::Swivel(_)));
+    match (setup.top.motion.is_some(), swivels) {
+        (true, true) => " The arc of the seat and the friction of the ball are not in it.",
+        (true, false) => " The arc on which the seat moves is not in it.",
+        (false, true) => " The friction of the ball is not in it.",
+        (false, false) => "",
+    }
+}
+
 fn sentence(
     value: f64,
     case: &HandbookCase,
@@ -81,6 +102,7 @@ fn sentence(
     is_own: bool,
     change: Option<f64>,
     beyond_peak: bool,
+    unseen: &str,
 ) -> String {
     let whose = if is_own {
         format!("the ends are the handbook's own, {}", name(case))
@@ -109,6 +131,7 @@ fn sentence(
             constant.value
         ),
     };
+    text += unseen;
     if beyond_peak {
         text += " (It is critical beyond the deflection at which the load acts most, where a \
                  handbook case of that alpha would straighten again.)";

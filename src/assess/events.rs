@@ -139,7 +139,9 @@ impl Track<'_> {
         let rate = Watch::direction(limit(LimitKind::RateLost), |s| {
             s.along.0 - left_rate(s.point.force_n) * s.along.1
         });
-        events.extend(self.first(&rate, seated.unwrap_or(0)));
+        if let Some(from) = seated.or_else(|| self.is_worked().then_some(0)) {
+            events.extend(self.first(&rate, from));
+        }
         self.of_flat_ends(seated, &mut events);
         self.of_guides(&mut events);
         // After a load or a travel is lost: where the same is carried again.
@@ -161,6 +163,15 @@ impl Track<'_> {
         }
         account_for_jump(duty.loading, &mut events);
         events
+    }
+
+    /// Whether the path gets as far as the working deflection.
+    fn is_worked(&self) -> bool {
+        let duty = &self.setup.duty;
+        self.seen.iter().any(|seen| {
+            duty.reached(seen.point.deflection_m, seen.point.force_n)
+                >= duty.largest_working_deflection()
+        })
     }
 
     /// Index of the first point at which all flat ends sit flush; 0 without flat ends.
@@ -193,15 +204,21 @@ impl Track<'_> {
                     }
                     events.extend(self.first(&watch, index));
                 }
-                None => events.extend(self.first(&watch, 0)),
+                None if seated.is_some() || self.is_worked() => {
+                    events.extend(self.first(&watch, 0));
+                }
+                // Lost before it could sit down: not known.
+                None => {}
             }
         }
         if setup.has(LimitKind::Slide) && self.seen.len() > 1 {
-            // Unloaded there is neither thrust nor friction.
+            // Unloaded there is neither thrust nor friction; while it settles, an end finds its place.
             let watch = Watch::state(EventKind::Limit(LimitKind::Slide), |s| {
                 s.slides.unwrap_or(f64::INFINITY)
             });
-            events.extend(self.first(&watch, 1));
+            if let Some(from) = seated.or_else(|| self.is_worked().then_some(0)) {
+                events.extend(self.first(&watch, from.max(1)));
+            }
         }
     }
 

@@ -56,7 +56,7 @@ pub(super) fn guides(
         limits
             .iter()
             .filter(|limit| OF_THE_PATH.contains(&limit.name))
-            .find_map(|limit| Some((limit.name, limit.deflection_m?)))
+            .find_map(|limit| Some((limit.name, limit.deflection_m?, limit.share_of_free_length?)))
     };
     let (with, bare_first) = (first(limits), first(&bare_limits));
     Some(GuideAnswer {
@@ -81,18 +81,16 @@ pub(super) fn guides(
             .fold(0.0, |deepest: f64, room| deepest.max(-room)),
         without_first_limit: bare_first.map(|first| first.0),
         without_first_limit_m: bare_first.map(|first| first.1),
-        sentence: sentence(setup, touch.is_some(), with, bare_first),
+        sentence: sentence(touch.is_some(), with, bare_first) + told_of(imperfect),
     })
 }
 
+/// A limit, its deflection, m, and the spring's share of it in its free length.
+type FirstLimit = (LimitKind, f64, f64);
+
 /// What the guides did to the answer.
-fn sentence(
-    setup: &Setup,
-    touched: bool,
-    with: Option<(LimitKind, f64)>,
-    without: Option<(LimitKind, f64)>,
-) -> String {
-    let share = |deflection: f64| 100.0 * deflection / setup.spring.free_length;
+fn sentence(touched: bool, with: Option<FirstLimit>, without: Option<FirstLimit>) -> String {
+    let share = |share: f64| 100.0 * share;
     if !touched {
         return "The spring never touches its guide on the path computed: the guide changes nothing."
             .to_owned();
@@ -101,19 +99,19 @@ fn sentence(
         (None, None) => {
             "With the guide or without, the column sets no limit before solid.".to_owned()
         }
-        (Some((kind, at)), None) => format!(
+        (Some((kind, _, at)), None) => format!(
             "Without the guide the first limit of the column ({}) would come at {:.1} % of the free \
              length; with it none comes before solid.",
             kind.title(),
             share(at)
         ),
-        (None, Some((kind, at))) => format!(
+        (None, Some((kind, _, at))) => format!(
             "Without the guide the column would set no limit before solid; with it the first ({}) \
              comes at {:.1} % of the free length.",
             kind.title(),
             share(at)
         ),
-        (Some((bare, before)), Some((kind, at))) => format!(
+        (Some((bare, _, before)), Some((kind, _, at))) => format!(
             "Without the guide the first limit of the column ({}) would come at {:.1} % of the free \
              length; with it the first ({}) comes at {:.1} %.",
             bare.title(),
@@ -121,6 +119,15 @@ fn sentence(
             kind.title(),
             share(at)
         ),
+    }
+}
+
+/// Of which way to lie all this is told.
+fn told_of(imperfect: &Imperfect) -> &'static str {
+    if imperfect.orientations_tried > 1 {
+        " (Told of the worst way in which the deviations can lie; in others it may touch sooner.)"
+    } else {
+        ""
     }
 }
 

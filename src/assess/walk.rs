@@ -35,6 +35,8 @@ pub(super) const BRACKET: f64 = 1e-11;
 const PULLED: f64 = 0.02;
 /// Force, in those of the straight spring pressed solid, at which a path with contacts is left.
 const JAMMED: f64 = 2.0;
+/// Newton iterations of a path, those of refused steps among them: beyond, it leads nowhere.
+const MOST_ITERATIONS: usize = 6000;
 /// Points after the largest travel without regaining it before a path with contacts is left.
 const MOST_AFTER_LOSS: usize = 120;
 /// First step on a branch: so short that the slope there is that at the branch point but for its
@@ -83,7 +85,10 @@ pub(super) fn walk(
         nodes.iter().any(|node| node[2].abs() > reach.rotation)
             || point.load < -PULLED * column_scale
     };
-    let mut settings = PathSettings::default();
+    let mut settings = PathSettings {
+        most_iterations: MOST_ITERATIONS,
+        ..PathSettings::default()
+    };
     let has_kinks = column.has_kinks();
     let mut branches: Vec<(usize, Solved)> = Vec::new();
     let end = loop {
@@ -147,7 +152,7 @@ pub(super) fn walk(
             }
             Outcome::TooLong => {
                 break lost(format!(
-                    "the path did not end within {} points",
+                    "the path did not end within {} points and {MOST_ITERATIONS} iterations",
                     settings.most_points
                 ));
             }

@@ -61,6 +61,8 @@ pub struct SupportEcho {
     pub contact: String,
     /// Radius of the ring that bears on a flat seat.
     pub seat_radius_m: Option<f64>,
+    /// Distance from its centre to the nearest edge of what bears.
+    pub seat_edge_m: Option<f64>,
     /// Share of a turn that is ground, on a flat seat.
     pub ground_share: Option<f64>,
     /// Friction of flat seat or ball; `null`: the end does not slide or turns freely.

@@ -68,6 +68,8 @@ pub struct PathSettings {
     pub crossing_step: f64,
     /// Step down to which a sharp turn is not believed in a system whose paths have kinks.
     pub kink_step: f64,
+    /// Newton iterations altogether before giving up.
+    pub most_iterations: usize,
     /// Points before giving up.
     pub most_points: usize,
 }
@@ -81,6 +83,7 @@ impl Default for PathSettings {
             largest_turn: 0.15,
             crossing_step: 1e-5,
             kink_step: 1e-4,
+            most_iterations: 20_000,
             most_points: 1500,
         }
     }
@@ -104,8 +107,10 @@ pub struct Walk {
     pub steps: usize,
     /// Steps refused and halved.
     pub refused: usize,
-    /// Newton iterations altogether.
+    /// Newton iterations of the steps taken.
     pub iterations: usize,
+    /// Those of refused steps too.
+    pub spent: usize,
     /// Points at which the path turned round a kink: they stand at it, less than 1e-6 from the one before,
     /// with the direction behind it.
     pub corners: Vec<usize>,
@@ -130,7 +135,8 @@ pub fn follow<const B: usize, const I: usize>(
         if stop(points) {
             return (Outcome::Stopped, walk);
         }
-        if points.len() >= settings.most_points {
+        walk.spent += newton.iterations;
+        if points.len() >= settings.most_points || walk.spent > settings.most_iterations {
             return (Outcome::TooLong, walk);
         }
         let Some((base, earlier)) = points.split_last_mut() else {
@@ -346,8 +352,8 @@ pub fn start<const B: usize, const I: usize>(
 }
 
 /// The state at `load` from a guess that may lie inside of what it must stay out of: without contacts
-/// first, then with contacts that are entered less and less, and without friction: how a spring was put
-/// in is not known.
+/// first, then with contacts that are entered less and less, and without friction: how the state came about is not
+/// known.
 fn begin<const B: usize, const I: usize>(
     system: &mut impl System<B, I>,
     newton: &mut Newton<B, I>,

@@ -35,7 +35,7 @@ pub(super) static PILOTED: Field = Field::new(
 .or(Absent::Value("false"));
 pub(super) static FRICTION: Field = Field::new(
     "friction",
-    Kind::Number(Range::ProperShare),
+    Kind::Number(Range::BelowOne),
     "0.12",
     "Coefficient of friction. With kind = \"flat\": between end and seat; left out, sliding is not \
      checked. With kind = \"ball\": in the ball, beside ball_radius; left out, the ball turns freely.",
@@ -132,6 +132,7 @@ pub(super) fn ball(filled: &Filled, log: &mut Log) -> Option<Support> {
     let friction = filled.number(&FRICTION, log);
     let radius = filled.number(&BALL_RADIUS, log);
     let contact = match (friction, radius) {
+        (Some(0.0), Some(_)) => Contact::Joined,
         (Some(friction), Some(radius)) => Contact::Swivel(Swivel { friction, radius }),
         // One without the other, or one that cannot be read, is a mistake noted already.
         _ if filled.is_given(&FRICTION) || filled.is_given(&BALL_RADIUS) => return None,
@@ -152,6 +153,6 @@ pub(super) fn link(filled: &Filled, log: &mut Log) -> Option<Support> {
             length: length?,
             hanging: acts?.as_str() == "hanger",
         }),
-        ..Support::hinged()
+        ..Support::free()
     })
 }

@@ -238,12 +238,14 @@ pub fn seats(assessment: &Assessment, units: Units) -> String {
         &[row("bottom", &loads[0]), row("top", &loads[1])],
     );
     let ring = of_flat_ends(assessment, |support| {
-        Some(length.show_input(support.seat_radius_m?))
+        Some(length.show_input(support.seat_edge_m?))
     });
     let ring = if ring.is_empty() {
         String::new()
     } else {
-        format!(" A flat end can stand flush while the line passes within its ring{ring}.")
+        format!(
+            " A flat end can stand flush while the line passes within the edge of its ring{ring}."
+        )
     };
     out += &paragraph(
         "  ",

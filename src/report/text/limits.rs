@@ -212,7 +212,7 @@ pub(super) fn of_flat_ends(
 
 fn lift_off(assessment: &Assessment, limit: &Limit, units: Units) -> String {
     let radii = of_flat_ends(assessment, |support| {
-        let radius = support.seat_radius_m?;
+        let radius = support.seat_edge_m?;
         Some(units.length().show_input(radius))
     });
     let start = if limit.deflection_m == Some(0.0) {
@@ -222,8 +222,8 @@ fn lift_off(assessment: &Assessment, limit: &Limit, units: Units) -> String {
         ""
     };
     format!(
-        "the force line leaves the rigid ring on which a flat end bears{radii}, and the end stands \
-         on its edge; an elastic ring begins to open at half of that{start}"
+        "the force line comes to the edge of the rigid ring on which a flat end bears{radii}, which then stands \
+         on it; an elastic ring begins to open at half of that{start}"
     )
 }
 
