@@ -7,7 +7,7 @@ use nalgebra::SVector;
 const MOST_ITERATIONS: usize = 14;
 /// The same where one-sided laws may have to change one at a time.
 const MOST_WITH_KINKS: usize = 40;
-/// And where a path begins: a spring may lie on its guide all along.
+/// And where a path begins: much may be in contact at once.
 const MOST_AT_THE_START: usize = 150;
 /// A step below this is at round-off after it is taken, as convergence is quadratic.
 const SMALL_STEP: f64 = 1e-9;

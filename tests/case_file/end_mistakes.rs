@@ -132,15 +132,15 @@ fn seats_that_can_only_push() {
             "piloted = true",
         ),
         (
-            "kind = \"flat\"\nfriction = 0",
+            "kind = \"flat\"\nfriction = -0.1",
             (14, 12),
-            "between 0 and 1, both excluded",
+            "must be 0 or more, and below 1",
             "0.12",
         ),
         (
             "kind = \"flat\"\nfriction = 1.0",
             (14, 12),
-            "between 0 and 1, both excluded",
+            "must be 0 or more, and below 1",
             "0.12",
         ),
         (
