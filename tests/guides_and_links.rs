@@ -1,0 +1,135 @@
+//! Guides and links from the case file to the answer.
+
+mod reference;
+
+use coilstay::assess::assess;
+use coilstay::result::{Assessment, Limit, LimitKind};
+use reference::closed_form::clamped_link;
+
+fn answer(text: &str) -> Assessment {
+    let case = coilstay::case::parse("test.toml", text).expect("reads");
+    assess(&case.setup, "")
+}
+
+fn limit(answer: &Assessment, kind: LimitKind) -> &Limit {
+    let found = answer.limits.iter().find(|limit| limit.name == kind);
+    found.expect("listed")
+}
+
+fn shipped(name: &str) -> String {
+    let path = format!("{}/cases/{name}.toml", env!("CARGO_MANIFEST_DIR"));
+    std::fs::read_to_string(path).expect("shipped")
+}
+
+/// A clamped spring under a link: the critical share of the exact root, for every length. [C]
+#[test]
+fn a_link_in_a_case_file_has_its_length() {
+    for (length, acts) in [
+        (40.0, "hanger"),
+        (150.0, "hanger"),
+        (150.0, "strut"),
+        (900.0, "strut"),
+    ] {
+        let text = format!(
+            r#"
+            [spring]
+            wire = "8 mm"
+            mean_diameter = "60 mm"
+            free_length = "300 mm"
+            active_coils = 10
+            total_coils = 10
+            [material]
+            youngs_modulus = "206 GPa"
+            shear_modulus = "81.5 GPa"
+            [bottom]
+            kind = "clamped"
+            [top]
+            kind = "link"
+            link_length = "{length} mm"
+            link_acts = "{acts}"
+            [duty]
+            working_deflection = "20 mm"
+            "#
+        );
+        let share = answer(&text)
+            .straight_column
+            .critical
+            .map(|c| c.measure.share_of_free_length);
+        let exact = clamped_link(206.0 / 81.5, 5.0, length / 300.0, acts == "hanger");
+        match (share, exact) {
+            (Some(share), Some(exact)) => {
+                approx::assert_relative_eq!(share, exact, max_relative = 1e-8);
+            }
+            (found, exact) => assert_eq!(found.is_some(), exact.is_some(), "{length} {acts}"),
+        }
+    }
+}
+
+/// A rod that stops short and may not be touched: the limit is where its corner begins to bear.
+#[test]
+fn a_forbidden_corner_is_a_limit_where_it_begins_to_bear() {
+    let text = shipped("brake-pilot-rod")
+        .replace("touching = \"allowed\"", "touching = \"not-allowed\"")
+        .replace("squareness = \"5 mm\"", "squareness = \"2 mm\"");
+    let found = answer(&text);
+    let touch = limit(&found, LimitKind::GuideTouch)
+        .deflection_m
+        .expect("touches");
+    let path = &found.imperfect_column.as_ref().expect("a path").path.points;
+    let bears = |point: &&coilstay::result::PathPoint| point.guide_force_n > 0.0;
+    let first = path.iter().find(bears).expect("bears");
+    let before = path
+        .iter()
+        .take_while(|point| !bears(point))
+        .last()
+        .expect("free at first");
+    assert!(
+        before.deflection_m <= touch && touch <= first.deflection_m,
+        "{touch}"
+    );
+    assert!(
+        limit(&found, LimitKind::Critical)
+            .margin
+            .is_none_or(|m| m > 0.0)
+    );
+    assert!(!limit(&found, LimitKind::Critical).for_information);
+}
+
+/// A guide that may be leaned on makes the critical deflection of the perfect column information; what
+/// friction takes out of a stroke is counted two ways; a guide out of reach changes nothing.
+#[test]
+fn a_bore_that_may_be_leaned_on_carries_the_spring() {
+    let text = shipped("rubber-buffer");
+    let leaning = answer(&text);
+    assert!(limit(&leaning, LimitKind::Critical).for_information);
+    assert!(leaning.governing != Some(LimitKind::Critical));
+    let guides = leaning.guide_answer.as_ref().expect("guided");
+    assert!(guides.at_working.guide_force_n > 0.0 && !guides.leaning.is_empty());
+    let stroke = leaning.stroke.as_ref().expect("friction");
+    assert!(stroke.energy_lost_j > 0.0);
+    approx::assert_relative_eq!(
+        stroke.energy_lost_j,
+        stroke.friction_work_j,
+        max_relative = 1e-4
+    );
+    assert!(stroke.closes_within < 1e-9);
+    let far = answer(&text.replace("diameter = \"85 mm\"", "diameter = \"600 mm\""));
+    let guide = text.find("[[guide]]").expect("a guide");
+    let next = guide + 2 + text[guide + 2..].find("\n[").expect("another table");
+    let bare = answer(&format!("{}{}", &text[..guide], &text[next..]));
+    for kind in [
+        LimitKind::Bow,
+        LimitKind::Stress,
+        LimitKind::Clash,
+        LimitKind::RateLost,
+    ] {
+        let (one, two) = (limit(&far, kind), limit(&bare, kind));
+        match (one.deflection_m, two.deflection_m) {
+            (Some(a), Some(b)) => {
+                let error = one.error_m.unwrap_or(0.0) + two.error_m.unwrap_or(0.0);
+                assert!((a - b).abs() <= error, "{kind:?} {a} {b}");
+            }
+            (a, b) => assert_eq!(a, b, "{kind:?}"),
+        }
+    }
+}
