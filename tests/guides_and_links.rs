@@ -133,3 +133,13 @@ fn a_bore_that_may_be_leaned_on_carries_the_spring() {
         }
     }
 }
+
+/// What the discretisation lets the axis enter its guides, all along the path to solid.
+#[test]
+fn the_axis_stays_out_of_its_guides() {
+    for (name, clearance) in [("rubber-buffer", 2.5e-3), ("brake-pilot-rod", 1e-3)] {
+        let found = answer(&shipped(name));
+        let deepest = found.guide_answer.expect("guided").deepest_m;
+        assert!(deepest < 1e-4 * clearance, "{name}: {deepest:e}");
+    }
+}

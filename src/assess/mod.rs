@@ -31,7 +31,7 @@ use crate::setup::Setup;
 pub const MESHES: [usize; 2] = [16, 32];
 /// The same with guides, where the ends of a contact lie between the nodes; for longer springs more,
 /// as [`guided_meshes`] says.
-const GUIDED_MESH: usize = 64;
+const GUIDED_MESH: usize = 128;
 
 /// Coarser and finer mesh of the imperfect column. Between guides the axis may go into half waves
 /// as short as those that its force, at solid, lets bend freely: n = q/π, q² = ξ(1 − mξ) L²/K as in the
