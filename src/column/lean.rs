@@ -25,7 +25,9 @@
 //! Without friction on a straight wall, J = (−w_x, 1) R and (5) is the stationarity of
 //! `Π − Σ R (w − w_x X)` in R: symmetric, and every leaning pad takes one negative eigenvalue with
 //! it. Otherwise the tangent is unsymmetric. (The clearance falls with F_x as the coil grows, and
-//! by the same energy the push shortens the coil a little: `−N ∂c/∂F_x` in the row of F_x.)
+//! by the same energy the push shortens the coil a little: `−N ∂c/∂F_x` in the row of F_x.
+//! Only where all pads slip without friction: a stretch that sticks between pads would have a spring of
+//! the wrong sign in it. The shortening is below 1e-5 of the travel, and left out with friction.)
 //!
 //! (On a corner the cone of friction is taken about the wall instead of about the axis's own tangent: off by
 //! the square of the slope there, some per cent of μ.)

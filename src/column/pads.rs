@@ -95,9 +95,10 @@ impl PadForms {
             let slope = facing.slope;
             let push = side * jumps[k][1];
             let gap = y - facing.axis - side * facing.clearance;
-            self.forms.gap[0] -= push * facing.by_force;
-            self.forms.compliance[0] -= push * facing.by_force_bend;
             if symmetric {
+                // By the energy of the growth, the push acts on F_x the same way.
+                self.forms.gap[0] -= push * facing.by_force;
+                self.forms.compliance[0] -= push * facing.by_force_bend;
                 doing[first] = [-slope, 1.0];
                 looking[first] = [-slope, 1.0];
                 residual[first] = gap;
@@ -171,8 +172,9 @@ impl PadForms {
                 outer[(p, 5)] = vector[1];
             }
             inner_rows[(p, 3)] += by_force[p];
-            // By the energy of the growth, the push acts on F_x the same way.
-            inner_columns[(p, 3)] += by_force[p];
+            if symmetric {
+                inner_columns[(p, 3)] += by_force[p];
+            }
             for other in 0..PAD_UNKNOWNS {
                 own[(p, other)] += product(looking[p], &self.mutual[k][other / 2], doing[other]);
             }
