@@ -176,9 +176,11 @@ impl Track<'_> {
 
     /// Index of the first point at which all flat ends sit flush; 0 without flat ends.
     fn first_seated(&self) -> Option<usize> {
-        self.seen
-            .iter()
-            .position(|seen| seen.seated.is_none_or(|kept| kept > 0.0))
+        self.seen.iter().position(|seen| {
+            // Unloaded, an end stands as it happens to.
+            seen.seated
+                .is_none_or(|kept| kept > 0.0 && seen.point.force_n > 0.0)
+        })
     }
 
     /// Seating, lift-off and sliding of flat ends. One that has not sat down by the working

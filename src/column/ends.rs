@@ -10,6 +10,8 @@ use super::wall::TopSeat;
 use crate::solve::Assembled;
 use nalgebra::Vector3;
 
+/// Moment, EI/L, that is round-off: unloaded, a flat seat carries none at all.
+const NO_MOMENT: f64 = 1e-12;
 /// Rotation, rad, below which a flat end is flush: round-off.
 const FLUSH: f64 = 1e-13;
 /// Flat ends whose kinks lie as close together, as a share of the way looked ahead, pass at once.
@@ -283,7 +285,7 @@ impl Column {
         }
         for side in [1.0, -1.0] {
             let (pose, excess, most) = self.overturning(state, which, turned, side, &end.actions);
-            if excess > 1e-12 * most {
+            if excess > 1e-12 * most + NO_MOMENT {
                 end.pose = pose;
                 end.turning = Turning::Stands;
                 end.standing = Some(side);
