@@ -143,3 +143,29 @@ fn the_axis_stays_out_of_its_guides() {
         assert!(deepest < 1e-4 * clearance, "{name}: {deepest:e}");
     }
 }
+
+/// A rod that rubs on the top seat's side is the same rod at the bottom of the spring turned over.
+#[test]
+fn a_guide_that_rubs_on_top_is_computed_turned_over() {
+    let bottom = shipped("brake-pilot-rod");
+    let top = bottom.replace("fixed_to = \"bottom\"", "fixed_to = \"top\"");
+    assert_ne!(bottom, top);
+    let (one, other) = (answer(&bottom), answer(&top));
+    assert!(
+        other
+            .warnings
+            .iter()
+            .any(|warning| warning.contains("turned over"))
+    );
+    assert_eq!(one.verdict, other.verdict);
+    for (a, b) in one.limits.iter().zip(&other.limits) {
+        assert_eq!((a.name, a.deflection_m), (b.name, b.deflection_m));
+    }
+    let stroke = other.stroke.expect("friction");
+    assert!(stroke.energy_lost_j > 0.0 && stroke.friction_work_j > 0.0);
+    // Turned twice, a spring stands as it did.
+    let setup = coilstay::case::parse("t.toml", &bottom)
+        .expect("reads")
+        .setup;
+    assert_eq!(setup.clone().turned_over().turned_over(), setup);
+}

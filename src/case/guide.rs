@@ -55,7 +55,8 @@ static FRICTION: Field = Field::new(
     "friction",
     Kind::Number(Range::BelowOne),
     "0.12",
-    "Coefficient of friction between coil and guide; not with fixed_to = \"top\".",
+    "Coefficient of friction between coil and guide. With fixed_to = \"top\" the case is computed \
+     turned over, bottom and top exchanged.",
 )
 .or(Absent::Value("0"));
 static TOUCHING: Field = Field::new(
@@ -97,7 +98,34 @@ pub(super) fn guides(
             (reaches && fits && carried).then_some(guide)
         })
         .collect();
-    guides.into_iter().collect()
+    let guides: Option<Vec<Guide>> = guides.into_iter().collect();
+    let guides = guides?;
+    let rubbing = rows
+        .iter()
+        .zip(&guides)
+        .find(|(_, guide)| rubs_on_top(guide));
+    let stays = |guide: &Guide| match guide.fixed_to {
+        FixedTo::Top => false,
+        FixedTo::Bottom => guide.friction > 0.0,
+        FixedTo::Ground => true,
+    };
+    if let Some((row, _)) = rubbing
+        && guides.iter().any(stays)
+    {
+        log.mistakes.push(Mistake::at(
+            row.at(&FRICTION),
+            "friction on a guide that the top seat carries is not computed beside a guide that stays \
+             where it is",
+            "leave the friction of one of them out",
+        ));
+        return None;
+    }
+    Some(guides)
+}
+
+/// Whether a guide rubs that moves with the top seat: such a case is computed turned over.
+pub(super) fn rubs_on_top(guide: &Guide) -> bool {
+    guide.fixed_to == FixedTo::Top && guide.friction > 0.0
 }
 
 fn guide(row: &Filled, log: &mut Log) -> Option<Guide> {
@@ -207,12 +235,12 @@ fn check_seat(
     seats: [Option<&Support>; 2],
     log: &mut Log,
 ) -> bool {
-    if guide.fixed_to == FixedTo::Top && guide.friction > 0.0 {
+    let on_an_arc = seats[1].is_some_and(|top| top.motion.is_some());
+    if rubs_on_top(guide) && on_an_arc {
         log.mistakes.push(Mistake::at(
             row.at(&FRICTION),
-            "friction on a guide that the top seat carries is not computed: the guide moves along \
-             with the spring",
-            "turn the case over, so that the guide is fixed to the bottom; or leave its friction out",
+            "friction on a guide that a seat on an arc carries is not computed",
+            "leave its friction out, or fix it to the ground",
         ));
         return false;
     }

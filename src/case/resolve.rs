@@ -54,6 +54,14 @@ pub(super) fn resolve(
         defaulted: Vec::new(),
         warnings: Vec::new(),
     };
+    if setup.guides.iter().any(guide::rubs_on_top) {
+        setup = setup.turned_over();
+        log.warnings.push(
+            "a guide that the top seat carries has friction: the case is computed turned over, so \
+             that in all that follows bottom and top have changed places, and the sides with them"
+                .to_owned(),
+        );
+    }
     setup.defaulted = std::mem::take(&mut log.defaulted);
     setup.warnings = std::mem::take(&mut log.warnings);
     Some((setup, moduli.notes))

@@ -85,6 +85,34 @@ impl Setup {
         self.guides.iter().any(|guide| guide.touching_allowed)
     }
 
+    /// The same spring in the same seats, stood on its head: turned by half a turn in the plane of
+    /// bowing, so that angles stay and sideways positions change sign. For seats that move straight and
+    /// guides that the seats carry.
+    pub fn turned_over(self) -> Self {
+        let turned = |support: Support| Support {
+            offset: -support.offset,
+            other_plane: support.other_plane.map(|plane| Lateral {
+                offset: -plane.offset,
+                ..plane
+            }),
+            ..support
+        };
+        let guides = self.guides.iter().map(|guide| Guide {
+            fixed_to: match guide.fixed_to {
+                FixedTo::Top => FixedTo::Bottom,
+                FixedTo::Bottom => FixedTo::Top,
+                FixedTo::Ground => FixedTo::Ground,
+            },
+            ..*guide
+        });
+        Setup {
+            guides: guides.collect(),
+            bottom: turned(self.top),
+            top: turned(self.bottom),
+            ..self
+        }
+    }
+
     /// The largest deflection that any limit of this case must reach, m.
     pub fn farthest_needed(&self) -> Metre {
         LimitKind::ALL
