@@ -615,3 +615,42 @@ fn a_guide_out_of_reach_changes_nothing() {
         .map(|column| StraightScan::new(column).buckling().expect("buckles").load);
     assert_eq!(loads[0], loads[1]);
 }
+
+/// The slope of the path is that of its points, by differences, with friction along a guide and on the
+/// corner of one: the unsymmetric tangent, on which the measure of the rate rests, is exact.
+#[test]
+fn slopes_with_friction_are_those_of_the_path() {
+    for (mut case, to) in [
+        (spring(6.0, R, [true, false], 0.01, 0.015), f64::INFINITY),
+        (spring(5.0, R, [false, true], 0.03, 0.02), 0.15),
+    ] {
+        case.walls[0] = Wall {
+            friction: 0.3,
+            to,
+            ..case.walls[0]
+        };
+        let path = case.to(0.45, 0.001);
+        let last = case.elements;
+        let mut compared = 0;
+        for three in path.points.windows(3) {
+            let leans = three[1].state.side.iter().any(|push| *push != 0.0);
+            if !leans || three.iter().any(|point| point.regime != three[1].regime) {
+                continue;
+            }
+            let height = |point: &Point| point.state.nodes[last][0];
+            let (d0, d1) = (three[0].distance, three[1].distance);
+            if (d0 / d1 - 1.0).abs() > 1e-9 {
+                continue;
+            }
+            let rate = three[1].load_direction / three[1].direction.nodes[last][0];
+            let difference =
+                (three[2].load - three[0].load) / (height(&three[2]) - height(&three[0]));
+            assert!(
+                (rate / difference - 1.0).abs() < 1e-6,
+                "{rate} {difference}"
+            );
+            compared += 1;
+        }
+        assert!(compared > 10, "{compared}");
+    }
+}

@@ -420,9 +420,4 @@ impl Column {
         }
         self
     }
-
-    /// Whether it has guides.
-    pub fn is_guided(&self) -> bool {
-        self.leaning.is_some()
-    }
 }

@@ -197,12 +197,6 @@ impl Column {
         column
     }
 
-    /// The same column with its guides left away.
-    pub fn unguided(mut self) -> Self {
-        self.leaning = None;
-        self
-    }
-
     /// Adds a stress-free bow of the given height (share of the length) in the shape that the
     /// rotations of `mode` give: its axis without shear.
     fn add_bow(&mut self, mode: &ColumnState, height: f64) {
