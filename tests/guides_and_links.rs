@@ -169,3 +169,60 @@ fn a_guide_that_rubs_on_top_is_computed_turned_over() {
         .setup;
     assert_eq!(setup.clone().turned_over().turned_over(), setup);
 }
+
+/// A flat end slides where its thrust reaches friction times the force on its seat, counted from where
+/// the ends sit flush; with a hair more friction than the path ever asks for it never does.
+#[test]
+fn a_flat_end_slides_where_thrust_reaches_friction() {
+    let with = |friction: f64| {
+        let text =
+            shipped("flat-seats").replace("friction = 0.25", &format!("friction = {friction}"));
+        answer(&text)
+    };
+    let found = with(0.25);
+    let path = &found.imperfect_column.as_ref().expect("a path").path.points;
+    let flush = |p: &&coilstay::result::PathPoint| {
+        p.bottom_lift_rad == 0.0 && p.top_lift_rad == 0.0 && p.force_n > 0.0
+    };
+    let ratio = |p: &coilstay::result::PathPoint| {
+        p.bottom_thrust_n.abs().max(p.top_thrust_n.abs()) / p.force_n
+    };
+    let largest = path.iter().filter(flush).map(ratio).fold(0.0, f64::max);
+    assert!(
+        limit(&with(1.2 * largest), LimitKind::Slide)
+            .deflection_m
+            .is_none()
+    );
+    let friction = 0.8 * largest;
+    let sliding = with(friction);
+    let at = limit(&sliding, LimitKind::Slide)
+        .deflection_m
+        .expect("slides");
+    let points = &sliding
+        .imperfect_column
+        .as_ref()
+        .expect("a path")
+        .path
+        .points;
+    let first = points
+        .iter()
+        .find(|p| flush(p) && ratio(p) > friction * (1.0 + 1e-3));
+    assert!(at <= first.expect("above").deflection_m, "{at}");
+    let mark = sliding
+        .imperfect_column
+        .as_ref()
+        .expect("a path")
+        .path
+        .marks
+        .iter();
+    let slide = mark
+        .filter(|mark| mark.name == "slide")
+        .next_back()
+        .expect("marked")
+        .point;
+    assert!(
+        ratio(&slide) > friction * (1.0 - 1e-3),
+        "{} {friction}",
+        ratio(&slide)
+    );
+}
