@@ -208,16 +208,15 @@ fn a_flat_end_slides_where_thrust_reaches_friction() {
         .iter()
         .find(|p| flush(p) && ratio(p) > friction * (1.0 + 1e-3));
     assert!(at <= first.expect("above").deflection_m, "{at}");
-    let mark = sliding
+    let marks = &sliding
         .imperfect_column
         .as_ref()
         .expect("a path")
         .path
-        .marks
-        .iter();
-    let slide = mark
-        .filter(|mark| mark.name == "slide")
-        .next_back()
+        .marks;
+    let slide = marks
+        .iter()
+        .find(|mark| mark.name == "slide")
         .expect("marked")
         .point;
     assert!(
